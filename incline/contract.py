@@ -1,0 +1,124 @@
+"""The result as one JSON object for other programs: metres, tonnes, degrees where a key says so.
+
+``format`` is raised when a key changes its meaning; keys may be added without raising it.
+"""
+
+from __future__ import annotations
+
+import json
+import math
+from typing import TYPE_CHECKING, Any
+
+import incline
+
+if TYPE_CHECKING:
+    from incline.result import Estimate, Outcome, Reduction
+
+__all__ = ["FORMAT", "to_dict", "to_json"]
+
+FORMAT = 1
+
+
+def to_json(reduction: Reduction) -> str:
+    """The result as JSON text ending in a newline; the same reduction gives the same bytes."""
+    return json.dumps(to_dict(reduction), indent=2, ensure_ascii=False, allow_nan=False) + "\n"
+
+
+def to_dict(reduction: Reduction) -> dict[str, Any]:
+    """The result as plain dictionaries, lists, numbers and text."""
+    trial = reduction.trial
+    counted = reduction.with_excluded
+    return {
+        "format": FORMAT,
+        "program": {"name": "incline", "version": incline.__version__},
+        "trial": {
+            "name": trial.vessel.name,
+            "date": trial.occasion.date.isoformat(),
+            "digest": trial.digest,
+        },
+        **_outcome(reduction.outcome),
+        "checks": [],
+        "findings": [],
+        "excluded": [
+            {"shift": r.shift, "device": r.device, "reason": r.excluded}
+            for r in trial.readings
+            if r.excluded
+        ],
+        "with_excluded_readings": None if counted is None else _outcome(counted),
+        "remarks": list(reduction.remarks),
+    }
+
+
+def _outcome(outcome: Outcome) -> dict[str, Any]:
+    light = outcome.lightship
+    return {
+        "as_inclined": _as_inclined(outcome),
+        "heel": _heel(outcome),
+        "free_surface": {
+            "moment_tm": outcome.free_surface.moment,
+            "correction_m": outcome.free_surface.correction,
+        },
+        "ledger": {
+            "deduct_t": outcome.ledger.deduct,
+            "add_t": outcome.ledger.add,
+            "relocate_t": outcome.ledger.relocate,
+            "balance_residual_tm": outcome.ledger.balance,
+        },
+        "lightship": {
+            "displacement_t": _estimate(light.displacement),
+            "vcg_m": _estimate(light.vcg),
+            "lcg_m": _estimate(light.lcg),
+            "tcg_m": _estimate(light.tcg),
+        },
+        "covariance": [list(row) for row in outcome.covariance],
+    }
+
+
+def _as_inclined(outcome: Outcome) -> dict[str, Any]:
+    ship = outcome.as_inclined
+    return {
+        "density_t_m3": ship.density,
+        "draft_ap_m": ship.draft_ap,
+        "draft_fp_m": ship.draft_fp,
+        "trim_m": ship.trim,
+        "deflection_m": ship.waterline.deflection,
+        "list_deg": None if ship.list_tan is None else math.degrees(math.atan(ship.list_tan)),
+        "volume_m3": ship.volume,
+        "displacement_t": ship.displacement,
+        "lcb_m": ship.lcb,
+        "kb_m": ship.kb,
+        "bmt_m": ship.bmt,
+        "kmt_m": ship.kmt,
+        "vcg_m": ship.vcg,
+        "lcg_m": ship.lcg,
+        "tcg_m": ship.tcg,
+    }
+
+
+def _heel(outcome: Outcome) -> dict[str, Any]:
+    heel = outcome.heel
+    return {
+        "method": heel.method,
+        "gm_fluid_m": heel.gm_fluid,
+        "slope_per_tm": heel.slope,
+        "u_gm_fluid_m": heel.u_gm_fluid,
+        "degrees_of_freedom": heel.dof,
+        "residual_sd": heel.residual_sd,
+        "devices": [
+            {"id": d.id, "gm_m": d.gm, "u_gm_m": d.u_gm, "r_squared": d.r_squared}
+            for d in heel.devices
+        ],
+        "max_heel_deg_port": math.degrees(heel.max_heel_port),
+        "max_heel_deg_starboard": math.degrees(heel.max_heel_starboard),
+        "other_methods": [],
+    }
+
+
+def _estimate(estimate: Estimate) -> dict[str, float | None]:
+    return {
+        "value": estimate.value,
+        "u": estimate.u,
+        "U": estimate.U,
+        "k": estimate.k,
+        "degrees_of_freedom": estimate.dof,
+    }

@@ -1,0 +1,118 @@
+"""Heel against moment: the common line through all devices, and each device alone."""
+
+from __future__ import annotations
+
+import math
+from typing import TYPE_CHECKING
+
+from incline.regression import fit_grouped_line
+from incline.result import DeviceFit, HeelFit, HeelPoint, ShiftMoment
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    import numpy as np
+    from numpy.typing import NDArray
+
+    from incline.chain import Yield
+    from incline.observations import Observation, Observations
+    from incline.record import Trial
+    from incline.regression import GroupedLine
+
+    Floats = NDArray[np.float64]
+
+__all__ = ["describe_heel"]
+
+
+def describe_heel(trial: Trial, seen: Observations, found: Yield) -> HeelFit:
+    """The fit of record with every reading placed against it."""
+    import numpy as np
+
+    moments = found.moments[seen.shift]
+    line = fit_grouped_line(moments, seen.tangents, seen.device)
+    displacement, gm = float(found.condition.displacement), float(found.gm_fluid)
+    zero = {d.id: at for d, at in zip(seen.devices, line.intercepts, strict=True)}
+    at_shift = {s.number: float(found.moments[i]) for i, s in enumerate(trial.shifts)}
+    points = tuple(
+        _point(o, zero, at_shift[o.reading.shift], line.slope)
+        for o in seen.every
+        if o.reading.device in zero
+    )
+    upright = found.condition.list_tan
+    heels = _heels(points, zero, 0.0 if upright is None else float(upright))
+    return HeelFit(
+        method="straight-line",
+        slope=line.slope,
+        u_slope=line.u_slope,
+        gm_fluid=gm,
+        u_gm_fluid=None if line.u_slope is None else gm * line.u_slope / line.slope,
+        dof=line.dof,
+        residual_sd=line.sd,
+        devices=tuple(
+            _alone(
+                d.id,
+                moments[seen.device == j],
+                seen.tangents[seen.device == j],
+                zero[d.id],
+                displacement,
+            )
+            for j, d in enumerate(seen.devices)
+        ),
+        points=points,
+        shifts=tuple(
+            ShiftMoment(
+                shift=s.number,
+                time=s.time,
+                transverse=float(across),
+                vertical=float(up),
+            )
+            for s, across, up in zip(
+                trial.shifts,
+                found.transverse,
+                np.broadcast_to(found.vertical, found.transverse.shape),
+                strict=True,
+            )
+        ),
+        max_heel_port=max(0.0, -math.atan(min(heels))),
+        max_heel_starboard=max(0.0, math.atan(max(heels))),
+    )
+
+
+def _point(seen: Observation, zero: dict[str, float], moment: float, slope: float) -> HeelPoint:
+    return HeelPoint(
+        shift=seen.reading.shift,
+        device=seen.reading.device,
+        moment=moment,
+        tangent=seen.tangent,
+        fitted=zero[seen.reading.device] + slope * moment,
+        reading=seen.reduced,
+        excluded="" if seen.counts else seen.reading.excluded,
+    )
+
+
+def _heels(points: Sequence[HeelPoint], zero: dict[str, float], start: float) -> list[float]:
+    """Mean measured tangent of heel at each shift, zero offsets taken out, list added."""
+    shifts: dict[int, list[float]] = {}
+    for p in points:
+        if not p.excluded:
+            shifts.setdefault(p.shift, []).append(p.tangent - zero[p.device] + start)
+    return [sum(v) / len(v) for v in shifts.values()]
+
+
+def _alone(
+    name: str, moments: Floats, tangents: Floats, intercept: float, displacement: float
+) -> DeviceFit:
+    import numpy as np
+
+    line: GroupedLine = fit_grouped_line(moments, tangents, np.zeros(len(moments), dtype=np.intp))
+    gm = 1.0 / (line.slope * displacement)
+    return DeviceFit(
+        id=name,
+        readings=len(moments),
+        gm=gm,
+        u_gm=None if line.u_slope is None else gm * line.u_slope / line.slope,
+        slope=line.slope,
+        u_slope=line.u_slope,
+        intercept=intercept,
+        r_squared=line.r_squared,
+    )

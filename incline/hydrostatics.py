@@ -1,0 +1,198 @@
+"""Values of the hydrostatic table at a waterline; broadcasts over a leading axis of draws."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TYPE_CHECKING, Any, Literal
+
+if TYPE_CHECKING:
+    import numpy as np
+    from numpy.typing import NDArray
+
+    from incline.record import HydrostaticTable
+
+    Floats = NDArray[np.float64]
+
+__all__ = ["Buoyancy", "Curves", "TableValues"]
+
+_MOMENTS = frozenset({"lcb", "kb", "bmt", "bml"})
+"""Columns that are moments over the volume: the cubic rule interpolates the moments themselves,
+which are smoother than their ratios (and polynomials for a wall-sided hull)."""
+
+
+@dataclass(frozen=True, slots=True)
+class TableValues:
+    """Table columns at a draft and trim, and the derivatives by draft that the trim terms need."""
+
+    value: dict[str, Floats]
+    slope: dict[str, Floats]
+
+
+@dataclass(frozen=True, slots=True)
+class Buoyancy:
+    """What carries the ship at one waterline: volume [m3], centre and metacentric radius [m].
+
+    ``x`` is None where an even-keel table without BM_L meets a trimmed ship. ``entry`` [m] is the
+    draft at which the table was entered, ``trim_volume`` [m3] the second trim correction,
+    ``deflection_factor`` the share of the deflection that counts in the entry draft.
+    """
+
+    volume: Floats
+    x: Floats | None
+    z: Floats
+    bmt: Floats
+    entry: Floats
+    trim_volume: Floats
+    deflection_factor: Floats
+
+
+class Curves:
+    """A hydrostatic table made continuous in draft and trim.
+
+    ``rule`` "cubic" joins rows by not-a-knot cubic splines of volume and of its moments (a parabola
+    through three rows, a line through two); "linear" joins the tabulated columns by straight lines.
+    Across trims the rule is the same. Outside the table the last piece continues: `covers` tells.
+    """
+
+    def __init__(
+        self, table: HydrostaticTable, lpp: float, rule: Literal["cubic", "linear"]
+    ) -> None:
+        import numpy as np
+
+        self.lpp = lpp
+        self.rule = rule
+        self.drafts = (table.drafts[0], table.drafts[-1])
+        self.trims = (table.trims[0], table.trims[-1])
+        columns = {
+            name: np.asarray(getattr(table, name), dtype=float)
+            for name in ("volume", "lcb", "kb", "bmt", "lcf", "area", "bml")
+            if getattr(table, name) is not None
+        }
+        self.names = tuple(columns)
+        if rule == "cubic":
+            columns = {n: c * columns["volume"] if n in _MOMENTS else c for n, c in columns.items()}
+        stacked = np.stack(list(columns.values()), axis=-1)  # trim, draft, column
+        self._by_draft = _piecewise(np.asarray(table.drafts), np.moveaxis(stacked, 0, 1), rule)
+        self._by_draft_slope = self._by_draft.derivative()
+        self._across: Any = None
+        if len(table.trims) > 1:
+            weights = np.eye(len(table.trims))
+            self._across = _piecewise(np.asarray(table.trims), weights, rule)
+
+    @property
+    def even(self) -> bool:
+        """Whether the table is for a single trim."""
+        return self._across is None
+
+    def covers(self, draft: float, trim: float) -> bool:
+        """Whether a waterline lies inside the table (a single trim covers every trim)."""
+        slack = 1e-9  # metres: a waterline on the edge is inside
+        inside = self.drafts[0] - slack <= draft <= self.drafts[1] + slack
+        if not self.even:
+            inside = inside and self.trims[0] - slack <= trim <= self.trims[1] + slack
+        return inside
+
+    def at(self, draft: Floats, trim: Floats) -> TableValues:
+        """Columns at entry draft and trim [m]; arrays of one shape."""
+        import numpy as np
+
+        values, slopes = self._by_draft(draft), self._by_draft_slope(draft)
+        if self._across is None:
+            values, slopes = values[..., 0, :], slopes[..., 0, :]
+        else:
+            weights = self._across(trim)
+            values = np.einsum("...tc,...t->...c", values, weights)
+            slopes = np.einsum("...tc,...t->...c", slopes, weights)
+        value = {name: values[..., i] for i, name in enumerate(self.names)}
+        slope = {name: slopes[..., i] for i, name in enumerate(self.names)}
+        if self.rule == "cubic":
+            volume, by_draft = value["volume"], slope["volume"]
+            for name in _MOMENTS.intersection(self.names):
+                value[name] = value[name] / volume
+                slope[name] = (slope[name] - value[name] * by_draft) / volume
+        return TableValues(value, slope)
+
+    def buoyancy(self, mean: Floats, tau: Floats, deflection: Floats | None) -> Buoyancy:
+        """Volume and centre of buoyancy at a waterline.
+
+        ``mean`` [m] is the mean of the drafts at the perpendiculars, ``tau`` trim over length,
+        ``deflection`` [m] the extra draft amidships. A table with several trims is entered at the
+        draft amidships. A table for one trim is entered at the draft at the centre of flotation,
+        with the second trim correction and the travel of B where BM_L is tabulated.
+        """
+        import numpy as np
+
+        trim = tau * self.lpp
+        bend = np.zeros_like(mean) if deflection is None else deflection
+        if not self.even:
+            share = self._deflection_factor(self.at(mean, trim), mean)
+            entry = mean + share * bend
+            found = self.at(entry, trim)
+            v = found.value
+            nothing = np.zeros_like(entry)
+            return Buoyancy(v["volume"], v["lcb"], v["kb"], v["bmt"], entry, nothing, share)
+        return self._even_keel(mean, tau, bend)
+
+    def _even_keel(self, mean: Floats, tau: Floats, bend: Floats) -> Buoyancy:
+        import numpy as np
+
+        table_tau = self.trims[0] / self.lpp
+        more = tau - table_tau
+        at_ap = mean + more * self.lpp / 2.0
+        entry, share = mean, np.full_like(mean, 0.75)
+        for _ in range(4):  # Newton on entry + more x lcf(entry) = draft at AP: quadratic
+            found = self.at(entry, entry)
+            share = self._deflection_factor(found, entry)
+            if "lcf" in found.value:
+                miss = entry + more * found.value["lcf"] - at_ap - share * bend
+                entry = entry - miss / (1.0 + more * found.slope["lcf"])
+            else:
+                entry = mean + share * bend
+        found = self.at(entry, entry)
+        v, s = found.value, found.slope
+        if "bml" not in v:
+            level = bool(np.all(np.abs(more) * self.lpp < LEVEL))
+            return Buoyancy(
+                v["volume"], v["lcb"] if level else None, v["kb"], v["bmt"], entry,
+                np.zeros_like(entry), share,
+            )  # fmt: skip
+        inertia_slope = s["volume"] * v["bml"] + v["volume"] * s["bml"]
+        square = tau**2 - table_tau**2
+        trim_volume = 0.5 * square * inertia_slope
+        volume = v["volume"] + trim_volume
+        return Buoyancy(
+            volume,
+            v["lcb"] - v["bml"] * more,
+            v["kb"] + 0.5 * v["bml"] * square,
+            v["bmt"],
+            entry,
+            trim_volume,
+            share,
+        )
+
+    def _deflection_factor(self, found: TableValues, like: Floats) -> Floats:
+        """Share of the midship deflection that adds volume: 1 - 4 I_mid / (L^2 Aw), or 3/4."""
+        import numpy as np
+
+        v = found.value
+        if not {"bml", "lcf"} <= v.keys():
+            return np.full_like(like, 0.75)
+        area = v.get("area", found.slope["volume"])
+        about_mid = v["bml"] * v["volume"] + area * (v["lcf"] - self.lpp / 2.0) ** 2
+        share: Floats = 1.0 - 4.0 * about_mid / (self.lpp**2 * area)
+        return share
+
+
+LEVEL = 0.0005
+"""A trim [m] below which a ship counts as being at the table's own trim: half a millimetre."""
+
+
+def _piecewise(x: Floats, y: Floats, rule: Literal["cubic", "linear"]) -> Any:  # noqa: ANN401 - untyped library
+    """Piecewise polynomial through the points, first axis of y."""
+    import numpy as np
+    from scipy.interpolate import CubicSpline, PPoly
+
+    if rule == "cubic":
+        return CubicSpline(x, y, bc_type="not-a-knot")
+    steps = np.diff(x).reshape(-1, *(1,) * (y.ndim - 1))
+    return PPoly(np.stack([np.diff(y, axis=0) / steps, y[:-1]]), x)

@@ -1,0 +1,78 @@
+"""Where each test weight stands at each shift, and the moments that follow."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    import numpy as np
+    from numpy.typing import NDArray
+
+    from incline.record import Trial
+
+    Floats = NDArray[np.float64]
+
+__all__ = ["Placing", "place_weights"]
+
+
+@dataclass(frozen=True, slots=True, eq=False)
+class Placing:
+    """Distinct places of the test weights, and who stands where at each shift.
+
+    ``owner`` (K,) is the weight of each place, ``y`` and ``z`` (K,) its position [m], ``change``
+    (K, n) is +1 where a place is taken at a shift and -1 where it was the start, so that
+    (mass y) @ change is the moment about the start. ``start`` (W,) is each weight's first place,
+    ``start_x`` (W,) its x there. ``given`` (n,) replaces all of it when moments were recorded.
+    """
+
+    owner: NDArray[np.intp]
+    y: Floats
+    z: Floats
+    change: Floats
+    start: NDArray[np.intp]
+    start_x: Floats
+    given: Floats | None
+
+    def about_start(self, mass: Floats, arm: Floats) -> Floats:
+        """Moments about the start [t m], (..., n); mass (..., W) [t], arm (..., K) [m]."""
+        moments: Floats = (mass[..., self.owner] * arm) @ self.change
+        return moments
+
+
+def place_weights(trial: Trial) -> Placing:
+    """Follow the shifts of a trial; the reader has made sure that every weight has a start."""
+    import numpy as np
+
+    index = {w.id: i for i, w in enumerate(trial.weights)}
+    heights = {w.id: w.z for w in trial.weights}
+    along = {w.id: w.x for w in trial.weights}
+    places: dict[tuple[str, float, float], int] = {}
+    standing: dict[str, int] = {}
+    start: dict[str, int] = {}
+    start_x: dict[str, float] = {}
+    held: list[dict[str, int]] = []
+    for shift in trial.shifts:
+        for move in shift.moves:
+            heights[move.weight] = heights[move.weight] if move.z is None else move.z
+            along[move.weight] = along[move.weight] if move.x is None else move.x
+            key = (move.weight, move.y, heights[move.weight])
+            standing[move.weight] = places.setdefault(key, len(places))
+            start.setdefault(move.weight, standing[move.weight])
+            start_x.setdefault(move.weight, along[move.weight])
+        held.append(dict(standing))
+    change = np.zeros((len(places), len(held)))
+    for n, where in enumerate(held):
+        for weight, place in where.items():
+            change[place, n] += 1.0
+            change[start[weight], n] -= 1.0
+    given = [s.moment for s in trial.shifts if s.moment is not None]
+    return Placing(
+        owner=np.array([index[w] for w, _, _ in places], dtype=np.intp),
+        y=np.array([y for _, y, _ in places]),
+        z=np.array([z for _, _, z in places]),
+        change=change,
+        start=np.array([start[w.id] for w in trial.weights], dtype=np.intp),
+        start_x=np.array([start_x[w.id] for w in trial.weights]),
+        given=np.array(given) if given else None,
+    )

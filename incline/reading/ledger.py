@@ -1,0 +1,119 @@
+"""``ledger.csv`` and ``changes.csv``: what is not lightship, and what came or went meanwhile."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING, Literal
+
+from incline.errors import Where
+from incline.reading.cells import Column
+from incline.reading.collect import Sign, quoted
+from incline.record import Change, Item, Point
+from incline.units import LENGTH, MASS
+
+if TYPE_CHECKING:
+    from collections.abc import Iterable, Mapping
+
+    from incline.reading.cells import Row, Sheet
+    from incline.reading.settings import Frame
+
+__all__ = ["CHANGE_COLUMNS", "ITEM_COLUMNS", "check_names", "read_changes", "read_items"]
+
+_CENTRE = (
+    Column("mass", MASS, required=True, sign=Sign.POSITIVE),
+    Column("x", LENGTH, required=True),
+    Column("y", LENGTH, required=True, transverse=True),
+    Column("z", LENGTH, required=True),
+)
+ITEM_COLUMNS = (
+    Column("action", required=True),
+    Column("item", required=True),
+    *_CENTRE,
+    Column("to x", LENGTH),
+    Column("to y", LENGTH, transverse=True),
+    Column("to z", LENGTH),
+    Column("basis"),
+)
+CHANGE_COLUMNS = (Column("change", required=True), Column("item", required=True), *_CENTRE)
+_TO = ("to x", "to y", "to z")
+
+
+def read_items(sheet: Sheet, frame: Frame) -> tuple[Item, ...]:
+    """The ledger's own lines; an item stands in it once, whatever is done with it."""
+    actions: tuple[Literal["deduct", "add", "relocate"], ...] = ("deduct", "add", "relocate")
+    items: list[Item] = []
+    seen: dict[str, int] = {}
+    for row in sheet.rows:
+        action = row.choice("action", actions)
+        name = row.text("item", required=True)
+        _check_once(row, name, name.casefold(), seen)
+        items.append(
+            Item(
+                action=action or "deduct",
+                name=name,
+                mass=row.need("mass"),
+                centre=_centre(row, ("x", "y", "z"), frame),
+                to=_destination(row, action, frame),
+                basis=row.text("basis"),
+                where=row.where(),
+            )
+        )
+    return tuple(items)
+
+
+def _check_once(row: Row, name: str, key: str, seen: dict[str, int]) -> None:
+    before = seen.setdefault(key, row.number)
+    if before != row.number and name:
+        expected = f"each item once; row {before} has it already"
+        row.fault("item", "item-listed-twice", quoted(name), expected)
+
+
+def _centre(row: Row, columns: tuple[str, str, str], frame: Frame) -> Point:
+    x, y, z = (row.need(c) for c in columns)
+    return Point(x + frame.x_shift, y, z)
+
+
+def _destination(row: Row, action: str | None, frame: Frame) -> Point | None:
+    """Where a relocated item goes; for the others the cells must be blank."""
+    if action == "relocate":
+        return _centre(row, _TO, frame)
+    for column in _TO if action else ():
+        if row.raw(column):
+            expected = f"nothing here for an item to {action}"
+            row.fault(column, "value-wrong", quoted(row.raw(column)), expected)
+    return None
+
+
+def read_changes(sheet: Sheet, frame: Frame) -> tuple[Change, ...]:
+    """What came aboard or went ashore between the drafts and the shifts."""
+    kinds: tuple[Literal["aboard", "ashore"], ...] = ("aboard", "ashore")
+    changes: list[Change] = []
+    seen: dict[str, int] = {}
+    for row in sheet.rows:
+        change = row.choice("change", kinds)
+        name = row.text("item", required=True)
+        _check_once(row, name, f"{change} {name}".casefold(), seen)
+        changes.append(
+            Change(
+                change=change or "aboard",
+                name=name,
+                mass=row.need("mass"),
+                centre=_centre(row, ("x", "y", "z"), frame),
+                where=row.where(),
+            )
+        )
+    return tuple(changes)
+
+
+def check_names(sheet: Sheet, items: Iterable[Item], others: Mapping[str, str]) -> None:
+    """What comes into the ledger by itself must not be listed again; ``others``: name -> file."""
+    taken = {name.casefold(): place for name, place in others.items() if name}
+    for item in items:
+        place = taken.get(item.name.casefold())
+        if place:
+            sheet.collector.add(
+                Where(sheet.file, item.where.row, "item"),
+                "item-listed-twice",
+                quoted(item.name),
+                f"an item that is not in {place}",
+                f"{place} comes into the ledger by itself; another thing needs another name",
+            )

@@ -1,0 +1,234 @@
+"""``trial.toml``: the vessel, the occasion, the choices, the devices and the people."""
+
+from __future__ import annotations
+
+import datetime
+import re
+from dataclasses import dataclass
+from typing import TYPE_CHECKING
+
+from incline.errors import Where
+from incline.reading.collect import BAD, Sign, quoted
+from incline.reading.tomlfile import FILE, Document, shown
+from incline.record import Device, Occasion, Person, Point, Settings, Vessel
+from incline.units import DENSITY, FRACTION, LENGTH, MASS
+
+if TYPE_CHECKING:
+    from typing import Literal
+
+    from incline.reading.collect import Collector
+    from incline.reading.tomlfile import Section
+
+__all__ = ["LENGTH_KEYS", "Frame", "Head", "read_head"]
+
+_BASE, _KEEL = "baseline", "underside of keel"
+_SECTIONS = (
+    "vessel", "test", "axes", "output", "rules", "method", "drafts", "hydrostatics", "density",
+    "devices", "people",
+)  # fmt: skip
+LENGTH_KEYS = {"pendulum": "length", "u-tube": "span", "inclinometer": ""}
+"""The key that gives the length by which a device's readings are divided."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Frame:
+    """What the tables need from ``trial.toml``; BAD where it could not be read.
+
+    ``x_shift`` [m] is added to every x. ``marks_down`` and ``table_down`` [m] are taken off drafts
+    read at the marks and drafts of the hydrostatic table. ``table_density`` and ``relative_to``
+    [t/m3] are None when not given.
+    """
+
+    lpp: float
+    beam: float
+    x_shift: float
+    marks_down: float
+    table_down: float
+    table_density: float | None
+    relative_to: float | None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Head:
+    """All of ``trial.toml``. ``complete`` is False when the devices could not be looked at."""
+
+    vessel: Vessel
+    occasion: Occasion
+    settings: Settings
+    devices: tuple[Device, ...]
+    people: tuple[Person, ...]
+    frame: Frame
+    complete: bool
+
+
+def read_head(data: bytes | None, collector: Collector) -> Head:
+    """Read ``trial.toml``; ``None`` when there is no such file, which is the caller's defect."""
+    document = Document(data, collector)
+    vessel = _vessel(document.section("vessel"))
+    settings, frame = _choices(document, vessel)
+    devices = tuple(_device(s) for s in document.sections("devices"))
+    if document.readable and not document.has("devices"):
+        where, expected = Where(FILE, 0, "devices"), "a section [[devices]] for each device"
+        collector.add(where, "key-missing", "no devices", expected)
+    people = tuple(_person(s, frame.x_shift) for s in document.sections("people"))
+    head = Head(
+        vessel=vessel,
+        occasion=_occasion(document.section("test")),
+        settings=settings,
+        devices=devices,
+        people=people,
+        frame=frame,
+        complete=bool(devices),
+    )
+    document.close(_SECTIONS)
+    return head
+
+
+def _vessel(section: Section) -> Vessel:
+    vessel = Vessel(
+        name=section.text("name", required=True),
+        number=section.text("number", required=True),
+        lpp=section.need("lpp", LENGTH, Sign.POSITIVE),
+        beam=section.need("beam", LENGTH, Sign.POSITIVE),
+        depth=section.need("depth", LENGTH, Sign.POSITIVE),
+        kind=section.text("kind"),
+        flag=section.text("flag"),
+        builder=section.text("builder"),
+    )
+    section.close()
+    return vessel
+
+
+def _occasion(section: Section) -> Occasion:
+    occasion = Occasion(
+        date=_date(section),
+        place=section.text("place", required=True),
+        berth=section.text("berth"),
+        weather=section.text("weather"),
+        water_depth=section.maybe("water_depth", LENGTH, Sign.POSITIVE),
+        notes=section.text("notes"),
+    )
+    section.close()
+    return occasion
+
+
+def _date(section: Section) -> datetime.date:
+    found = section.value("date")
+    expected = "a date written year-month-day, such as 2026-03-14"
+    if found is None:
+        section.missing("date", expected)
+    elif type(found) is datetime.date:  # a date with a time of day is a subclass
+        return found
+    else:
+        text = found.strip() if isinstance(found, str) else ""
+        try:
+            if re.fullmatch(r"[0-9]{4}-[0-9]{2}-[0-9]{2}", text):
+                return datetime.date.fromisoformat(text)
+        except ValueError:  # such as the 30th of February
+            pass
+        section.fault("date", "value-wrong", quoted(shown(found)), expected)
+    return datetime.date.min
+
+
+def _choices(document: Document, vessel: Vessel) -> tuple[Settings, Frame]:
+    axes, output = document.section("axes"), document.section("output")
+    rules, method = document.section("rules"), document.section("method")
+    drafts, table = document.section("drafts"), document.section("hydrostatics")
+    density = document.section("density")
+    marks_from = drafts.choice("marks_from", (_BASE, _KEEL))
+    table_from = table.choice("drafts_from", (_BASE, _KEEL), _BASE)
+    keel = _keel_thickness(drafts, needed=_KEEL in (marks_from, table_from))
+    x_origin: Literal["after perpendicular", "amidships"] = axes.choice(
+        "x_origin", ("after perpendicular", "amidships")
+    )
+    settings = Settings(
+        x_origin=x_origin,
+        units=output.choice("units", ("metric", "us")),
+        rule_set=rules.text("set"),
+        method=method.choice("heel", ("straight-line",), "straight-line"),
+        allowance=_allowance(table),
+        keel_thickness=keel if marks_from == _KEEL else 0.0,
+        interpolation=method.choice("interpolation", ("cubic", "linear"), "cubic"),
+    )
+    frame = Frame(
+        lpp=vessel.lpp,
+        beam=vessel.beam,
+        x_shift=vessel.lpp / 2.0 if x_origin == "amidships" else 0.0,
+        marks_down=settings.keel_thickness,
+        table_down=keel if table_from == _KEEL else 0.0,
+        table_density=_given(table, "density"),
+        relative_to=_given(density, "relative_to"),
+    )
+    for section in (axes, output, rules, method, drafts, table, density):
+        section.close()
+    return settings, frame
+
+
+def _given(section: Section, key: str) -> float | None:
+    """A density; BAD also when its section cannot be looked at."""
+    value = section.maybe(key, DENSITY, Sign.POSITIVE)
+    return value if section.readable else BAD
+
+
+def _keel_thickness(section: Section, *, needed: bool) -> float:
+    if needed:
+        return section.need("keel_thickness", LENGTH, Sign.NOT_NEGATIVE)
+    value = section.maybe("keel_thickness", LENGTH, Sign.NOT_NEGATIVE)
+    if value is not None and value > 0.0 and "marks_from" not in section.failed:
+        expected = f'no keel thickness, since every draft is from the "{_BASE}"'
+        section.fault(
+            "keel_thickness", "value-wrong", quoted(section.text("keel_thickness")), expected
+        )
+    return 0.0
+
+
+def _allowance(section: Section) -> float | None:
+    """Allowance for shell and appendages on a moulded volume; None when the volume is extreme."""
+    moulded = section.choice("volume", ("moulded", "extreme")) == "moulded"
+    if "volume" in section.failed:
+        return section.maybe("allowance", FRACTION, Sign.NOT_NEGATIVE)
+    if moulded:
+        return section.need("allowance", FRACTION, Sign.NOT_NEGATIVE)
+    if section.value("allowance") is not None:
+        found, expected = (
+            quoted(shown(section.value("allowance"))),
+            "no allowance on an extreme volume",
+        )
+        section.fault("allowance", "value-wrong", found, expected)
+    return None
+
+
+def _device(section: Section) -> Device:
+    kind: Literal["pendulum", "u-tube", "inclinometer"] = section.choice(
+        "kind", ("pendulum", "u-tube", "inclinometer")
+    )
+    keys = tuple(LENGTH_KEYS.values()) if "kind" in section.failed else (LENGTH_KEYS[kind],)
+    lengths = [section.maybe(k, LENGTH, Sign.POSITIVE) for k in keys if k]
+    device = Device(
+        id=section.text("id", required=True),
+        kind=kind,
+        length=lengths[0] if lengths else None,
+        place=section.text("place"),
+        calibration=section.text("calibration"),
+        where=Where(FILE, 0, section.path),
+    )
+    section.close()
+    return device
+
+
+def _person(section: Section, x_shift: float) -> Person:
+    name = section.text("name", required=True)
+    role = section.text("role", required=True)
+    aboard = [k for k in ("mass", "x", "y", "z") if section.value(k) is not None]
+    mass, centre = None, None
+    if aboard:
+        mass = section.need("mass", MASS, Sign.POSITIVE)
+        centre = Point(
+            section.need("x", LENGTH) + x_shift,
+            section.need("y", LENGTH, transverse=True),
+            section.need("z", LENGTH),
+        )
+    section.close()
+    return Person(
+        name=name, role=role, mass=mass, centre=centre, where=Where(FILE, 0, section.path)
+    )

@@ -1,0 +1,161 @@
+"""``drafts.csv`` and ``density.csv``: how the ship floated, and in what water."""
+
+from __future__ import annotations
+
+import itertools
+from typing import TYPE_CHECKING
+
+from incline.errors import Where
+from incline.reading.cells import Column
+from incline.reading.collect import BAD, NOTHING, Sign, quoted
+from incline.record import DraftReading, Sample
+from incline.units import DENSITY, FRACTION, LENGTH, TEMPERATURE
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+    from typing import Literal
+
+    from incline.reading.cells import Row, Sheet
+    from incline.reading.settings import Frame
+
+    Side = Literal["P", "S", "C"]
+
+__all__ = ["DRAFT_COLUMNS", "SAMPLE_COLUMNS", "check_drafts", "read_drafts", "read_samples"]
+
+DRAFT_COLUMNS = (
+    Column("x", LENGTH, required=True),
+    Column("side", required=True),
+    Column("draft", LENGTH, sign=Sign.POSITIVE),
+    Column("freeboard", LENGTH),
+    Column("point height", LENGTH),
+    Column("y", LENGTH, transverse=True),
+)
+SAMPLE_COLUMNS = (
+    Column("place", required=True),
+    Column("depth", LENGTH, sign=Sign.NOT_NEGATIVE),
+    Column("density", DENSITY, sign=Sign.POSITIVE),
+    Column("relative density", FRACTION, sign=Sign.POSITIVE),
+    Column("temperature", TEMPERATURE),
+    Column("share", FRACTION, sign=Sign.POSITIVE, bare=True),
+)
+_APART = 0.01
+"""Marks closer than this share of the length stand at one place."""
+
+
+def read_drafts(sheet: Sheet, frame: Frame) -> tuple[tuple[DraftReading, ...], list[str]]:
+    """Drafts above the baseline, and a remark when marks were taken to be half the beam off."""
+    if not sheet.has("draft") and not sheet.has("freeboard"):
+        sheet.lack("draft", "a column draft or freeboard")
+    readings: list[DraftReading] = []
+    assumed = 0
+    sides: tuple[Side, ...] = ("P", "S", "C")
+    for row in sheet.rows:
+        side = row.choice("side", sides)
+        y = _off_centre(row, side)
+        if y is None:
+            assumed += 1
+            y = frame.beam / 2.0 if side == "S" else -frame.beam / 2.0
+        draft, freeboard = _draft(row, frame)
+        readings.append(
+            DraftReading(
+                x=row.need("x") + frame.x_shift,
+                side=side or "C",
+                y=y,
+                draft=draft,
+                freeboard=freeboard,
+                where=row.where(),
+            )
+        )
+    remarks = [
+        f"{assumed} of {len(readings)} draft readings have no distance off the centreplane:"
+        " half the beam was taken."
+    ]
+    return tuple(readings), remarks if assumed else []
+
+
+def _off_centre(row: Row, side: Side | None) -> float | None:
+    """Y of a mark [m], to starboard; None when it must be assumed."""
+    y = row.maybe("y")
+    if side == "C" or side is None:
+        if y:
+            expected = "no distance off the centreplane with side C"
+            if side == "C" and abs(y) > 0.0:
+                row.fault("y", "value-wrong", quoted(row.raw("y")), expected)
+        return 0.0
+    if y is None:
+        return None
+    text = row.raw("y").lower()
+    says_port = y < 0.0
+    says_starboard = y > 0.0 and (text.endswith("s") or text.startswith("+"))
+    if (side == "S" and says_port) or (side == "P" and says_starboard):
+        row.fault("y", "side-and-sign", quoted(row.raw("y")), f"a distance to side {side}")
+    return -abs(y) if side == "P" else abs(y)
+
+
+def _draft(row: Row, frame: Frame) -> tuple[float, float | None]:
+    """Draft above the baseline and the freeboard it came from [m]."""
+    if row.raw("draft") and row.raw("freeboard"):
+        expected = "a draft or a freeboard, not both"
+        row.fault("freeboard", "value-wrong", quoted(row.raw("freeboard")), expected)
+        return BAD, None
+    freeboard = row.maybe("freeboard")
+    if freeboard is None:
+        draft = row.maybe("draft")
+        if draft is None:
+            column = "draft" if row.sheet.has("draft") else "freeboard"
+            row.missing(column, "a draft or a freeboard")
+            return BAD, None
+        found = draft - frame.marks_down
+        if found <= 0.0:
+            expected = "a draft greater than the thickness of the keel"
+            row.fault("draft", "number-not-positive", quoted(row.raw("draft")), expected)
+        return found, None
+    height = row.maybe("point height")
+    if height is None:
+        row.missing(
+            "point height", "height above baseline of the point the freeboard is taken from"
+        )
+        return BAD, freeboard
+    if height - freeboard <= 0.0:
+        expected = "a freeboard less than the height of its point"
+        row.fault("freeboard", "number-not-positive", quoted(row.raw("freeboard")), expected)
+    return height - freeboard, freeboard
+
+
+def check_drafts(sheet: Sheet, drafts: Sequence[DraftReading], frame: Frame) -> None:
+    """Trim needs drafts at two places along the length."""
+    x = sorted(d.x for d in drafts)
+    together = [b - a <= _APART * frame.lpp for a, b in itertools.pairwise(x)]
+    if x and all(together):
+        found, expected = "drafts at 1 place along the length", "drafts at two places at least"
+        sheet.collector.add(Where(sheet.file), "drafts-too-few", found, expected)
+
+
+def read_samples(sheet: Sheet, frame: Frame) -> tuple[Sample, ...]:
+    """Water samples; a relative density is multiplied by the density it is relative to."""
+    column = sheet.one_of(("density", "relative density"), required=True)
+    relative_to = 1.0
+    if column == "relative density":
+        relative_to = BAD if frame.relative_to is None else frame.relative_to
+        if frame.relative_to is None:
+            sheet.collector.add(
+                Where("trial.toml", 0, "density.relative_to"),
+                "key-missing",
+                NOTHING,
+                "the density of the water that the hydrometer calls 1, since density.csv gives"
+                " relative densities",
+            )
+    samples: list[Sample] = []
+    for row in sheet.rows:
+        share = row.maybe("share")
+        samples.append(
+            Sample(
+                place=row.text("place", required=True),
+                depth=row.maybe("depth"),
+                density=row.need(column) * relative_to if column else BAD,
+                temperature=row.maybe("temperature"),
+                share=1.0 if share is None else share,
+                where=row.where(),
+            )
+        )
+    return tuple(samples)

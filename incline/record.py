@@ -1,0 +1,257 @@
+"""The trial as recorded: frozen records in metres, tonnes, radians, whatever the files used.
+
+x is forward from the after perpendicular, y positive to starboard, z up from the baseline. A
+reading or moment is positive when it belongs to heel to starboard.
+"""
+
+from __future__ import annotations
+
+import datetime
+from dataclasses import dataclass
+from typing import Literal
+
+from incline.errors import Where
+
+__all__ = [
+    "Change", "Device", "DraftReading", "HydrostaticTable", "Item", "Move", "Occasion", "Person",
+    "Point", "Reading", "Sample", "Settings", "Shift", "Tank", "Trial", "Vessel", "Weight",
+]  # fmt: skip
+
+
+@dataclass(frozen=True, slots=True)
+class Point:
+    """A position: x forward of the after perpendicular, y to starboard, z above baseline [m]."""
+
+    x: float
+    y: float
+    z: float
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Vessel:
+    """The vessel: name, identity number, length between perpendiculars, beam, depth [m]."""
+
+    name: str
+    number: str
+    lpp: float
+    beam: float
+    depth: float
+    kind: str = ""
+    flag: str = ""
+    builder: str = ""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Person:
+    """Someone at the test; with ``mass`` [t] and ``centre`` when aboard during the shifts."""
+
+    name: str
+    role: str
+    mass: float | None = None
+    centre: Point | None = None
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Occasion:
+    """When and where the test was held; ``water_depth`` [m]. Empty text: not recorded."""
+
+    date: datetime.date
+    place: str
+    berth: str = ""
+    weather: str = ""
+    water_depth: float | None = None
+    notes: str = ""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Device:
+    """A device that shows heel. ``length`` [m]: pendulum length or U-tube span; None for angles."""
+
+    id: str
+    kind: Literal["pendulum", "u-tube", "inclinometer"]
+    length: float | None
+    place: str = ""
+    calibration: str = ""
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Weight:
+    """A test weight: mass [t] and the x and z of its centre where it starts [m]."""
+
+    id: str
+    mass: float
+    certificate: str
+    x: float
+    z: float
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Move:
+    """New position of one weight at a shift [m]; x and z are None where they did not change."""
+
+    weight: str
+    y: float
+    x: float | None
+    z: float | None
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Shift:
+    """One state of the test weights; ``moment`` [t m] to starboard when given directly."""
+
+    number: int
+    time: str
+    moves: tuple[Move, ...]
+    moment: float | None
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Reading:
+    """Readings of one device at one shift: lengths [m], angles [rad] or tangents, as ``quantity``.
+
+    ``kind`` says how several values belong together: repeats, or successive swing extremes.
+    ``excluded`` is the surveyor's reason for leaving it out; empty when it counts.
+    """
+
+    shift: int
+    device: str
+    kind: Literal["single", "repeats", "swings"]
+    values: tuple[float, ...]
+    quantity: Literal["length", "angle", "tangent"]
+    note: str
+    excluded: str
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class DraftReading:
+    """Draft at (x, y) above the moulded baseline [m]: keel and freeboard already allowed for."""
+
+    x: float
+    side: Literal["P", "S", "C"]
+    y: float
+    draft: float
+    freeboard: float | None
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Sample:
+    """A water sample: place, depth [m], density [t/m3], temperature [C], weight in the mean."""
+
+    place: str
+    depth: float | None
+    density: float
+    temperature: float | None
+    share: float
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Tank:
+    """A tank: liquid mass [t], centre, and free-surface moment [t m] (zero unless slack)."""
+
+    name: str
+    contents: str
+    state: Literal["empty", "pressed full", "slack"]
+    density: float | None
+    level: float | None
+    volume: float | None
+    mass: float
+    centre: Point | None
+    fsm: float
+    fsm_basis: str
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Item:
+    """A ledger item: mass [t] and centre; ``to`` is the new position of a relocated item."""
+
+    action: Literal["deduct", "add", "relocate"]
+    name: str
+    mass: float
+    centre: Point
+    to: Point | None
+    basis: str
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Change:
+    """Something that came aboard or went ashore between the draft readings and the shifts."""
+
+    change: Literal["aboard", "ashore"]
+    name: str
+    mass: float
+    centre: Point
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class HydrostaticTable:
+    """Hydrostatics by draft and, where ``trims`` has more than one value, by trim.
+
+    Arrays are nested tuples [trim][draft]: volume [m3], lcb, kb, bmt [m], lcf [m], area [m2],
+    bml [m]. Drafts [m] are above the moulded baseline, amidships between perpendiculars; trims [m]
+    are over the length between perpendiculars, positive by the stern. None: not tabulated.
+    """
+
+    drafts: tuple[float, ...]
+    trims: tuple[float, ...]
+    volume: tuple[tuple[float, ...], ...]
+    lcb: tuple[tuple[float, ...], ...]
+    kb: tuple[tuple[float, ...], ...]
+    bmt: tuple[tuple[float, ...], ...]
+    lcf: tuple[tuple[float, ...], ...] | None
+    area: tuple[tuple[float, ...], ...] | None
+    bml: tuple[tuple[float, ...], ...] | None
+    bml_basis: str
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Settings:
+    """Choices of the trial: axes, output units, rule set, method, and how drafts and tables count.
+
+    ``allowance`` multiplies a moulded volume by (1 + allowance) for shell and appendages; None
+    means the table is extreme. ``keel_thickness`` [m] is taken off drafts whose marks start at the
+    underside of keel.
+    """
+
+    x_origin: Literal["after perpendicular", "amidships"]
+    units: Literal["metric", "us"]
+    rule_set: str
+    method: Literal["straight-line"]
+    allowance: float | None
+    keel_thickness: float
+    interpolation: Literal["cubic", "linear"]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Trial:
+    """One inclining test as recorded. ``digest`` is the sha256 over its files."""
+
+    folder: str
+    digest: str
+    vessel: Vessel
+    occasion: Occasion
+    settings: Settings
+    people: tuple[Person, ...]
+    devices: tuple[Device, ...]
+    weights: tuple[Weight, ...]
+    shifts: tuple[Shift, ...]
+    readings: tuple[Reading, ...]
+    drafts: tuple[DraftReading, ...]
+    samples: tuple[Sample, ...]
+    tanks: tuple[Tank, ...]
+    items: tuple[Item, ...]
+    changes: tuple[Change, ...]
+    table: HydrostaticTable
+    remarks: tuple[str, ...] = ()
+    """Assumptions made while reading that a reviewer should see, one sentence each."""

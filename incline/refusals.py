@@ -1,0 +1,111 @@
+"""What makes a result impossible although every record reads well."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from incline.errors import Defect, FieldDataError, Where
+from incline.hydrostatics import LEVEL
+from incline.observations import distinct
+
+if TYPE_CHECKING:
+    from incline.chain import Plan, Yield
+    from incline.observations import Observations
+    from incline.record import Trial
+
+__all__ = ["refuse"]
+
+_FLAT = 1e-6
+"""A line that rises by less than this tangent over the whole range of moments is flat."""
+
+
+def refuse(trial: Trial, plan: Plan, seen: Observations, found: Yield) -> None:
+    """Raise FieldDataError with every reason why the trial gives no result."""
+    defects = [*_line_defects(seen, found), *_table_defects(trial, plan, found)]
+    light = float(found.light_displacement)
+    if not light > 0.0:
+        defects.append(
+            Defect(
+                Where("ledger.csv"),
+                "lightship-none",
+                f"{light:.3f} t left after the ledger",
+                "a lightship displacement above zero",
+            )
+        )
+    if defects:
+        raise FieldDataError(defects)
+
+
+def _line_defects(seen: Observations, found: Yield) -> list[Defect]:
+    """Readings through which no sensible line goes."""
+    moments = found.transverse[seen.shift]
+    span = float(moments.max() - moments.min()) or 1.0
+    near = 1e-9 * span
+    defects: list[Defect] = []
+    if distinct(moments.tolist(), near) < 3:
+        what = f"{distinct(moments.tolist(), near)} distinct moments in the readings that count"
+        defects.append(_defect("moments-too-few", "", what, "three at least"))
+    slopes: dict[str, float] = {}
+    for j, device in enumerate(seen.devices):
+        mine = seen.device == j
+        if distinct(moments[mine].tolist(), near) < 2:
+            what, wanted = f"device {device.id} read at one moment only", "readings at two or more"
+            defects.append(_defect("moments-too-few", device.id, what, wanted))
+            continue
+        centred = moments[mine] - moments[mine].mean()
+        slopes[device.id] = float(centred @ seen.tangents[mine] / (centred @ centred))
+        if abs(slopes[device.id]) * span < _FLAT:
+            what = f"device {device.id} does not move with the moment"
+            wanted = "readings that change when weights are shifted"
+            defects.append(_defect("slope-zero", device.id, what, wanted))
+    return defects or _sign_defects(slopes)
+
+
+def _sign_defects(slopes: dict[str, float]) -> list[Defect]:
+    wrong = [d for d, slope in slopes.items() if slope < 0.0]
+    expected = "positive readings for heel to starboard, positive y to starboard"
+    if wrong and len(wrong) == len(slopes):
+        hint = (
+            "check the sign of y and of the readings; a ship that truly does this has no positive"
+            " GM: stop the test"
+        )
+        return [_defect("sign-all", "", "every device heels away from the moment", expected, hint)]
+    hint = "its readings seem to be positive to port"
+    return [
+        _defect("sign-device", d, f"device {d} heels against the others", expected, hint)
+        for d in wrong
+    ]
+
+
+def _defect(code: str, device: str, found: str, expected: str, hint: str = "") -> Defect:
+    column = f"device {device}" if device else "reading"
+    return Defect(Where("readings.csv", 0, column), code, found, expected, hint)
+
+
+def _table_defects(trial: Trial, plan: Plan, found: Yield) -> list[Defect]:
+    now, curves = found.condition, plan.curves
+    trim, draft = float(now.tau) * trial.vessel.lpp, float(now.buoyancy.entry)
+    defects = []
+    if not curves.covers(draft, trim):
+        reach = f"drafts {curves.drafts[0]:.3f} to {curves.drafts[1]:.3f} m"
+        if not curves.even:
+            reach += f" and trims {curves.trims[0]:.3f} to {curves.trims[1]:.3f} m"
+        defects.append(
+            Defect(
+                Where("hydrostatics.csv"),
+                "waterline-outside-table",
+                f"a waterline at {draft:.3f} m with trim {trim:.3f} m",
+                f"a waterline inside the table: {reach}",
+                "a table is never extrapolated",
+            )
+        )
+    if curves.even and "lcf" not in curves.names and abs(trim - curves.trims[0]) >= LEVEL:
+        defects.append(
+            Defect(
+                Where("hydrostatics.csv", 0, "lcf"),
+                "column-missing",
+                f"no lcf for a ship trimmed {trim:.3f} m",
+                "lcf, so that the table is entered at the draft at the centre of flotation",
+            )
+        )
+    return defects

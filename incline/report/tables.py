@@ -1,0 +1,148 @@
+"""Tables of the report: quiet rules, header rows that repeat, cells that wrap and split."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TYPE_CHECKING, Any, Literal
+
+from reportlab.lib.colors import Color
+from reportlab.platypus import Paragraph, Table
+
+from incline.report.fonts import REGULAR
+from incline.report.styles import INK, RULE, STYLES
+from incline.report.text import markup
+
+if TYPE_CHECKING:
+    from collections.abc import Iterable, Sequence
+
+__all__ = ["Column", "Row", "facts", "grid", "steps"]
+
+_SHADE = Color(0.93, 0.93, 0.93)
+_PAD = 1.6
+
+
+@dataclass(frozen=True, slots=True)
+class Column:
+    """A column: its heading, its share of the width, and how its cells stand."""
+
+    title: str
+    share: float
+    align: Literal["left", "right"] = "right"
+
+
+@dataclass(frozen=True, slots=True)
+class Row:
+    """Cells of a row; ``look`` sets off totals, and headings that span the table."""
+
+    cells: tuple[str, ...]
+    look: Literal["plain", "total", "band"] = "plain"
+
+
+def _cell(text: str, align: str, *, bold: bool) -> Paragraph:
+    name = f"{'head' if bold else 'cell'}_{align}"
+    return Paragraph(markup(text), STYLES[name])
+
+
+def _row_cells(columns: Sequence[Column], row: Row) -> list[Any]:
+    aligns = [c.align for c in columns]
+    if row.look == "band":
+        return [_cell(row.cells[0], "left", bold=True), *("" for _ in aligns[1:])]
+    bold = row.look == "total"
+    return [_cell(t, a, bold=bold) for t, a in zip(row.cells, aligns, strict=True)]
+
+
+def _looks(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
+    commands: list[tuple[Any, ...]] = []
+    for i, row in enumerate(rows, start=1):
+        if row.look == "band":
+            commands += [("SPAN", (0, i), (-1, i)), ("BACKGROUND", (0, i), (-1, i), _SHADE)]
+        elif row.look == "total":
+            commands.append(("LINEABOVE", (0, i), (-1, i), 0.6, INK))
+    return commands
+
+
+def _gaps(columns: Sequence[Column]) -> list[tuple[Any, ...]]:
+    """Room before a left-hand column that follows a right-hand one."""
+    return [
+        ("LEFTPADDING", (i, 0), (i, -1), 9)
+        for i in range(1, len(columns))
+        if (columns[i - 1].align, columns[i].align) == ("right", "left")
+    ]
+
+
+def grid(columns: Sequence[Column], rows: Iterable[Row | Sequence[str]], width: float) -> Table:
+    """A table of ``width`` points under one header row; a cell taller than a page splits."""
+    listed = [r if isinstance(r, Row) else Row(tuple(r)) for r in rows]
+    head = [_cell(c.title, c.align, bold=True) for c in columns]
+    total = sum(c.share for c in columns)
+    style: list[tuple[Any, ...]] = [
+        ("FONT", (0, 0), (-1, -1), REGULAR, 1, 1),  # empty cells take no height
+        ("VALIGN", (0, 0), (-1, -1), "TOP"),
+        ("VALIGN", (0, 0), (-1, 0), "BOTTOM"),
+        ("LEFTPADDING", (0, 0), (-1, -1), 2.5),
+        ("RIGHTPADDING", (0, 0), (-1, -1), 2.5),
+        ("TOPPADDING", (0, 0), (-1, -1), _PAD),
+        ("BOTTOMPADDING", (0, 0), (-1, -1), _PAD),
+        ("LINEABOVE", (0, 0), (-1, 0), 0.8, INK),
+        ("LINEBELOW", (0, 0), (-1, 0), 0.5, INK),
+        ("LINEBELOW", (0, 1), (-1, -2), 0.25, RULE),
+        ("LINEBELOW", (0, -1), (-1, -1), 0.5, INK),
+        *_looks(listed),
+        *_gaps(columns),
+    ]
+    return Table(
+        [head, *(_row_cells(columns, r) for r in listed)],
+        colWidths=[width * c.share / total for c in columns],
+        repeatRows=1,
+        splitInRow=1,
+        style=style,
+        hAlign="LEFT",
+        spaceBefore=3,
+        spaceAfter=7,
+    )
+
+
+def facts(pairs: Sequence[tuple[str, str]], width: float, *, abreast: int = 1) -> Table:
+    """Label and value; ``abreast`` pairs on a line, read down the first column first."""
+    high = -(-len(pairs) // abreast)
+    rows: list[list[Any]] = [
+        [
+            _cell(text, "left", bold=bold)
+            for n in range(abreast)
+            for bold, text in _pair(pairs, i + n * high)
+        ]
+        for i in range(high)
+    ]
+    label = 0.26 if abreast == 1 else 0.40
+    shares = [label / abreast, (1.0 - label) / abreast] * abreast
+    return Table(
+        rows,
+        colWidths=[width * s for s in shares],
+        splitInRow=1,
+        style=[
+            ("FONT", (0, 0), (-1, -1), REGULAR, 1, 1),
+            ("VALIGN", (0, 0), (-1, -1), "TOP"),
+            ("LEFTPADDING", (0, 0), (-1, -1), 2.5),
+            ("TOPPADDING", (0, 0), (-1, -1), 1.3),
+            ("BOTTOMPADDING", (0, 0), (-1, -1), 1.3),
+            ("LINEBELOW", (0, 0), (-1, -1), 0.25, RULE),
+        ],
+        hAlign="LEFT",
+        spaceBefore=2,
+        spaceAfter=7,
+    )
+
+
+def _pair(pairs: Sequence[tuple[str, str]], index: int) -> tuple[tuple[bool, str], ...]:
+    label, value = pairs[index] if index < len(pairs) else ("", "")
+    return (True, label), (False, value)
+
+
+def steps(lines: Iterable[tuple[str, str, str]], width: float) -> Table:
+    """Lines of a calculation: formula, the values put in, the result."""
+    columns = (
+        Column("formula", 0.40, "left"),
+        Column("values put in", 0.38, "left"),
+        Column("result", 0.22, "right"),
+    )
+    return grid(columns, lines, width)

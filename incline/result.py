@@ -1,0 +1,267 @@
+"""What a reduction yields: one frozen record per stage, in metres, tonnes and tangents."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Literal
+
+from incline.record import Point, Trial
+
+__all__ = [
+    "AsInclined",
+    "DeviceFit",
+    "DraftResidual",
+    "Estimate",
+    "FreeSurface",
+    "HeelFit",
+    "HeelPoint",
+    "Ledger",
+    "LedgerLine",
+    "Lightship",
+    "Outcome",
+    "ReducedReading",
+    "Reduction",
+    "ShiftMoment",
+    "TableEntry",
+    "Waterline",
+]  # fmt: skip
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Estimate:
+    """A value with its standard uncertainty ``u``, expanded ``U`` = k u, and degrees of freedom.
+
+    ``value`` is None when the quantity could not be found; a remark says why.
+    """
+
+    value: float | None
+    u: float | None = None
+    U: float | None = None
+    k: float | None = None
+    dof: float | None = None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class DraftResidual:
+    """One draft reading against the fitted waterline [m]; ``studentised`` None without spread."""
+
+    x: float
+    side: Literal["P", "S", "C"]
+    draft: float
+    fitted: float
+    residual: float
+    studentised: float | None
+    flagged: bool
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Waterline:
+    """Least-squares waterline through the drafts.
+
+    Drafts at the perpendiculars and amidships [m] above baseline; ``trim`` = aft - forward [m];
+    ``tau`` = trim / length between perpendiculars; ``deflection`` [m], positive when amidships is
+    deeper (sag); ``list_tan`` positive starboard down. ``deflection`` and ``list_tan`` are None
+    when the drafts cannot tell them. ``sd`` is the residual standard deviation [m].
+    """
+
+    draft_ap: float
+    draft_fp: float
+    draft_mid: float
+    trim: float
+    tau: float
+    deflection: float | None
+    list_tan: float | None
+    residuals: tuple[DraftResidual, ...]
+    sd: float | None
+    dof: int
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class TableEntry:
+    """How the hydrostatic table was entered.
+
+    ``draft`` [m] is the entry draft; ``at_lcf`` when it is the draft at the centre of flotation of
+    an even-keel table; ``deflection_factor`` and its basis; ``trim_volume`` [m3] the second trim
+    correction; ``linear_km`` [m] is KM by straight-line interpolation between rows.
+    """
+
+    draft: float
+    at_lcf: bool
+    deflection_factor: float
+    deflection_basis: str
+    trim_volume: float
+    linear_km: float
+    table_drafts: tuple[float, float]
+    table_trims: tuple[float, float]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class AsInclined:
+    """The ship as inclined, test weights at their start [m, t, m3]. kmt = kb + bmt.
+
+    ``vcg`` is solid (free surface taken out). ``lcg`` is None when the table cannot give it for a
+    trimmed ship, ``tcg`` when the drafts cannot give the list. Drafts, ``trim`` and ``list_tan``
+    are those of the shifts: what came aboard or left since the drafts were read is allowed for.
+    """
+
+    waterline: Waterline
+    entry: TableEntry
+    density: float
+    volume: float
+    displacement: float
+    lcb: float | None
+    kb: float
+    bmt: float
+    kmt: float
+    vcg: float
+    lcg: float | None
+    tcg: float | None
+    draft_ap: float
+    draft_fp: float
+    draft_mid: float
+    trim: float
+    list_tan: float | None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class ShiftMoment:
+    """Moments of the test weights about their start [t m]: transverse (to starboard), vertical."""
+
+    shift: int
+    time: str
+    transverse: float
+    vertical: float
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class ReducedReading:
+    """A reading brought to one value (``quantity`` as recorded) with its standard uncertainty."""
+
+    value: float
+    u: float | None
+    count: int
+    how: str
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class HeelPoint:
+    """One reading against the line: moment [t m], tangents; ``excluded`` gives the reason."""
+
+    shift: int
+    device: str
+    moment: float
+    tangent: float
+    fitted: float
+    reading: ReducedReading
+    excluded: str
+
+    @property
+    def residual(self) -> float:
+        """Tangent less fitted tangent."""
+        return self.tangent - self.fitted
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class DeviceFit:
+    """A device alone, its own line; ``intercept`` is its zero in the common fit [tangent]."""
+
+    id: str
+    readings: int
+    gm: float
+    u_gm: float | None
+    slope: float
+    u_slope: float | None
+    intercept: float
+    r_squared: float | None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class HeelFit:
+    """Common line through all devices: slope [1/(t m)], GM of the ship with its liquids free [m].
+
+    ``residual_sd`` is in tangents. ``max_heel_port`` and ``max_heel_starboard`` [rad, positive]
+    are measured from the start, with the list from the drafts added where it is known.
+    """
+
+    method: Literal["straight-line"]
+    slope: float
+    u_slope: float | None
+    gm_fluid: float
+    u_gm_fluid: float | None
+    dof: int
+    residual_sd: float | None
+    devices: tuple[DeviceFit, ...]
+    points: tuple[HeelPoint, ...]
+    shifts: tuple[ShiftMoment, ...]
+    max_heel_port: float
+    max_heel_starboard: float
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class FreeSurface:
+    """Sum of free-surface moments [t m] and the rise of G they are worth [m]."""
+
+    moment: float
+    correction: float
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class LedgerLine:
+    """One line of the ledger. ``source``: the table it came from; ``to`` for a relocated item."""
+
+    action: Literal["deduct", "add", "relocate"]
+    name: str
+    mass: float
+    centre: Point
+    to: Point | None
+    source: Literal["ledger", "test weights", "tanks", "people"]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Ledger:
+    """All lines, sums by action [t], and the self-check.
+
+    ``balance`` [t m] is the largest of the three sums of moments about the resulting centre of
+    gravity (as-inclined, less deductions, plus additions, plus relocations): zero to rounding.
+    """
+
+    lines: tuple[LedgerLine, ...]
+    deduct: float
+    add: float
+    relocate: float
+    balance: float
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Lightship:
+    """Lightship displacement [t], VCG (KG), LCG and TCG [m]."""
+
+    displacement: Estimate
+    vcg: Estimate
+    lcg: Estimate
+    tcg: Estimate
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Outcome:
+    """One pass through the whole chain."""
+
+    as_inclined: AsInclined
+    heel: HeelFit
+    free_surface: FreeSurface
+    ledger: Ledger
+    lightship: Lightship
+    covariance: tuple[tuple[float | None, ...], ...]
+    """4 x 4 over displacement, vcg, lcg, tcg [t, m]."""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Reduction:
+    """The reduction of a trial: its outcome, and what it would be with the excluded readings."""
+
+    trial: Trial
+    outcome: Outcome
+    with_excluded: Outcome | None
+    """The outcome with every reading counted; None when nothing is excluded."""
+    remarks: tuple[str, ...]
+    """Assumptions and refusals that a reviewer should see, one sentence each."""

@@ -1,0 +1,168 @@
+"""The result as plain text for a terminal, in the trial's units."""
+
+from __future__ import annotations
+
+import math
+from typing import TYPE_CHECKING
+
+from incline.units import LENGTH, MASS, MOMENT, SYSTEMS, VOLUME
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    from incline.record import Trial
+    from incline.result import Estimate, Outcome, Reduction
+    from incline.units import UnitSystem
+
+__all__ = ["show", "summary"]
+
+_RULE = "-" * 72
+
+
+def summary(trial: Trial) -> str:
+    """What was read from a trial without defects."""
+    excluded = sum(1 for r in trial.readings if r.excluded)
+    lines = [
+        f"{trial.vessel.name}, {trial.occasion.date.isoformat()}, {trial.occasion.place}",
+        f"  {len(trial.weights)} test weights, {len(trial.shifts)} shifts,"
+        f" {len(trial.devices)} devices, {len(trial.readings)} readings ({excluded} excluded)",
+        f"  {len(trial.drafts)} draft readings, {len(trial.samples)} water samples,"
+        f" {len(trial.tanks)} tanks, {len(trial.items)} ledger items",
+        *(f"  Note: {remark}" for remark in trial.remarks),
+        "No problems found in the records.",
+    ]
+    return "\n".join(lines)
+
+
+def show(reduction: Reduction) -> str:
+    """The whole result, a screenful or two."""
+    trial, outcome = reduction.trial, reduction.outcome
+    system = SYSTEMS[trial.settings.units]
+    parts = [
+        f"{trial.vessel.name}, {trial.occasion.date.isoformat()}, {trial.occasion.place}",
+        _RULE,
+        *_as_inclined(outcome, system),
+        "",
+        *_heel(outcome, system),
+        "",
+        *_ledger(outcome, system),
+        "",
+        *_lightship(outcome, system),
+    ]
+    if reduction.with_excluded is not None:
+        excluded = sum(1 for r in trial.readings if r.excluded)
+        parts += [
+            "",
+            f"With the {excluded} excluded reading(s) counted, for comparison:",
+            *_lightship(reduction.with_excluded, system)[1:],
+        ]
+    if reduction.remarks:
+        parts += ["", "Remarks", *(f"  - {r}" for r in reduction.remarks)]
+    parts += [
+        "",
+        "The standard uncertainties cover the scatter of readings, drafts and water samples only.",
+        "Acceptance rests with the flag administration or its recognised organisation.",
+    ]
+    return "\n".join(parts)
+
+
+def _row(label: str, value: str, unit: str, note: str = "") -> str:
+    return f"  {label:<34}{value:>12} {unit:<7}{note}".rstrip()
+
+
+def _length(system: UnitSystem, value: float | None, decimals: int = 3) -> str:
+    if value is None:
+        return "-"
+    return system.show(value, LENGTH, system.length, decimals)
+
+
+def _as_inclined(outcome: Outcome, system: UnitSystem) -> list[str]:
+    ship, water = outcome.as_inclined, outcome.as_inclined.waterline
+    tilt = None if ship.list_tan is None else math.degrees(math.atan(ship.list_tan))
+    sag = _length(system, water.deflection)
+    tonnes = system.show(ship.displacement, MASS, system.mass, 2)
+    cubic = system.show(ship.volume, VOLUME, system.volume, 2)
+    return [
+        "As inclined (test weights at their start; x from the after perpendicular)",
+        _row("draft at after perpendicular", _length(system, ship.draft_ap), system.length),
+        _row("draft at forward perpendicular", _length(system, ship.draft_fp), system.length),
+        _row("trim, positive by the stern", _length(system, ship.trim), system.length),
+        _row("deflection, positive sagging", sag, system.length),
+        _row("list, positive to starboard", "-" if tilt is None else f"{tilt:.2f}", "deg"),
+        _row("density of the water", f"{ship.density:.4f}", "t/m3"),
+        _row("volume from the table", cubic, system.volume),
+        _row("displacement", tonnes, system.mass),
+        _row("LCB", _length(system, ship.lcb), system.length),
+        _row("KB", _length(system, ship.kb), system.length),
+        _row("BM", _length(system, ship.bmt), system.length),
+        _row("KM", _length(system, ship.kmt), system.length),
+    ]
+
+
+def _heel(outcome: Outcome, system: UnitSystem) -> list[str]:
+    heel, free, ship = outcome.heel, outcome.free_surface, outcome.as_inclined
+    port, starboard = (math.degrees(a) for a in (heel.max_heel_port, heel.max_heel_starboard))
+    lines = [
+        f"Heel: {heel.method} method, {len([p for p in heel.points if not p.excluded])} readings,"
+        f" up to {port:.2f} deg to port and {starboard:.2f} deg to starboard",
+        f"  {'device':<12}{'readings':>9}{'GM alone':>11}{'std. error':>12}"
+        f"  {system.length:<4} R squared",
+    ]
+    for d in heel.devices:
+        r2 = "-" if d.r_squared is None else f"{d.r_squared:.6f}"
+        lines.append(
+            f"  {d.id:<12}{d.readings:>9}{_length(system, d.gm, 4):>11}"
+            f"{_length(system, d.u_gm, 4):>12}       {r2}"
+        )
+    moment = system.show(free.moment, MOMENT, system.moment, 2)
+    error = f"standard error {_length(system, heel.u_gm_fluid, 4)}, {heel.dof} degrees of freedom"
+    return [
+        *lines,
+        _row("GM as measured (liquids free)", _length(system, heel.gm_fluid), system.length, error),
+        _row("free-surface moment", moment, system.moment),
+        _row("free-surface correction", _length(system, free.correction), system.length),
+        _row("KG as inclined", _length(system, ship.vcg), system.length),
+        _row("LCG as inclined", _length(system, ship.lcg), system.length),
+        _row("TCG as inclined", _length(system, ship.tcg), system.length),
+    ]
+
+
+def _ledger(outcome: Outcome, system: UnitSystem) -> list[str]:
+    ledger = outcome.ledger
+
+    def count(action: str) -> str:
+        return f"{sum(1 for line in ledger.lines if line.action == action)} line(s)"
+
+    def mass(value: float) -> str:
+        return system.show(value, MASS, system.mass, 3)
+
+    return [
+        "Ledger",
+        _row("to deduct", mass(ledger.deduct), system.mass, count("deduct")),
+        _row("to add", mass(ledger.add), system.mass, count("add")),
+        _row("to relocate", mass(ledger.relocate), system.mass, count("relocate")),
+        _row("moments about G sum to", f"{ledger.balance:.1e}", "t m", "zero to rounding"),
+    ]
+
+
+def _lightship(outcome: Outcome, system: UnitSystem) -> list[str]:
+    light = outcome.lightship
+    rows: Sequence[tuple[str, Estimate, bool]] = (
+        ("displacement", light.displacement, True),
+        ("KG", light.vcg, False),
+        ("LCG from after perpendicular", light.lcg, False),
+        ("TCG, positive to starboard", light.tcg, False),
+    )
+    lines = ["LIGHTSHIP"]
+    for label, estimate, is_mass in rows:
+        if estimate.value is None:
+            lines.append(_row(label, "not determined", ""))
+            continue
+        kind, unit = (MASS, system.mass) if is_mass else (LENGTH, system.length)
+        places = 2 if is_mass else 3
+        note = "" if estimate.u is None else f"u {system.show(estimate.u, kind, unit, places + 1)}"
+        if estimate.U is not None and estimate.k is not None:
+            expanded = system.show(estimate.U, kind, unit, places + 1)
+            note += f", U {expanded} (95 %, k = {estimate.k:.2f})"
+        lines.append(_row(label, system.show(estimate.value, kind, unit, places), unit, note))
+    return lines

@@ -1,0 +1,165 @@
+"""A small valid trial as text: a box-shaped barge, two weights, four shifts, two devices.
+
+The barge is 60 m long, 12 m wide and floats upright and level at 3 m in water of 1.025 t/m3, so
+that its displacement is 2214 t, KB 1.5 m and BM 4 m; the readings are those of GM 1.3 m. Every
+optional table is there. Lengths along the ship are multiples of a half metre, which binary
+fractions hold exactly.
+"""
+
+from __future__ import annotations
+
+import csv
+import io
+import re
+from typing import TYPE_CHECKING
+
+if TYPE_CHECKING:
+    from collections.abc import Callable, Mapping
+    from pathlib import Path
+
+SMALL: dict[str, str] = {
+    "trial.toml": """\
+[vessel]
+name = "Test Barge"
+number = "TB-1"
+lpp = "60 m"
+beam = "12 m"
+depth = "5 m"
+
+[test]
+date = 2026-02-03
+place = "Basin"
+
+[axes]
+x_origin = "after perpendicular"
+
+[output]
+units = "metric"
+
+[drafts]
+marks_from = "baseline"
+
+[hydrostatics]
+volume = "moulded"
+allowance = "0 %"
+
+[[devices]]
+id = "P1"
+kind = "pendulum"
+length = "4 m"
+
+[[devices]]
+id = "I1"
+kind = "inclinometer"
+
+[[people]]
+name = "A. Surveyor"
+role = "in charge"
+mass = "80 kg"
+x = "20 m"
+y = "1.5 m P"
+z = "6 m"
+""",
+    "weights.csv": """\
+id,mass [t],certificate,x [m],z [m]
+A,10,"CAL 1, sheet 2",29.5,5.5
+B,10,CAL 2,30.5,5.5
+""",
+    "shifts.csv": """\
+# positions of the centres
+shift,time,weight,y [m],x [m],z [m]
+0,9:00,A,4.00 P,,
+0,,B,4.00 S,,
+1,09:10,A,4,,
+2,09:20,A,-4,29.5,5.5
+3,09:30,B,-4,,
+""",
+    "readings.csv": """\
+shift,device,kind,reading,reading 2,reading 3,unit,note,exclude
+0,P1,repeats,0,0.2,,mm,,
+0,I1,,0.00,,,deg,,
+1,P1,swings,120,102.5,118,mm,,
+1,I1,single,1.592,,,deg,,
+2,P1,,0,,,mm,"calm, no wash",
+2,I1,,0.01 P,,,deg,,
+3,P1,,111 P,,,mm,,
+3,I1,,-1.592,,,deg,,bumped
+""",
+    "drafts.csv": """\
+x [m],side,draft [m],freeboard [m],point height [m],y [m]
+1.5,P,3.00,,,6
+1.5,S,3.00,,,6
+30,P,,2.00,5.00,6
+30,S,,2.00,5.00,6
+58.5,C,3.00,,,
+""",
+    "density.csv": """\
+place,depth [m],density [kg/m3],temperature [C],share
+forward,1,1025,9.5,1
+aft,2,1025,9.5,2
+""",
+    "tanks.csv": """\
+tank,contents,state,density [t/m3],level [m],volume [m3],mass [t],x [m],y [m],z [m],fsm [t m],second moment [m4],length [m],breadth [m],shape
+1 P,water,slack,1.000,0.5,,,10,-2,0.25,,,4,3,box
+2 C,gas oil,pressed full,0.85,,10,8.5,20,0,1,,,,,
+3 S,,empty,,,,,,,,,,,,
+4 S,ballast,slack,1.025,,,4.1,40,2,0.5,2.05,2,,,
+""",
+    "ledger.csv": """\
+action,item,mass [t],x [m],y [m],z [m],to x [m],to y [m],to z [m],basis
+deduct,staging,0.5,10,2.5 P,6,,,,weighed
+add,hatch cover,1.5,40,0,5.5,,,,drawing 7
+relocate,anchor,2,5,0,5.5,55,0,5.5,
+""",
+    "changes.csv": """\
+change,item,mass [t],x [m],y [m],z [m]
+aboard,crane mat,1.5,30,0,5
+ashore,skip,0.5,30,1,5
+""",
+    "hydrostatics.csv": """\
+draft [m],volume [m3],lcb [m],kb [m],km [m],lcf [m],area [m2],bml [m]
+2.5,1800,30,1.25,6.05,30,720,120
+3.0,2160,30,1.5,5.5,30,720,100
+3.5,2520,30,1.75,5.178571,30,720,85.714286
+""",
+}
+"""File name -> text of the trial."""
+
+
+def write(folder: Path, files: Mapping[str, str | bytes | None]) -> Path:
+    """Write files into a new folder, leaving out those that are None."""
+    folder.mkdir(parents=True, exist_ok=True)
+    for name, content in files.items():
+        if content is not None:
+            data = content.encode() if isinstance(content, str) else content
+            (folder / name).write_bytes(data)
+    return folder
+
+
+def changed(file: str, old: str, new: str, files: Mapping[str, str] = SMALL) -> dict[str, str]:
+    """The trial with one passage of one file put differently; the passage must be there once."""
+    assert files[file].count(old) == 1, f"{old!r} stands {files[file].count(old)} times in {file}"
+    return {**files, file: files[file].replace(old, new)}
+
+
+def table_rows(text: str) -> list[list[str]]:
+    """Cells of a table, comments left out (read by Python's own csv module)."""
+    lines = [line for line in text.splitlines() if line and not line.startswith("#")]
+    return list(csv.reader(lines))
+
+
+def table_text(rows: list[list[str]], mark: str = ",") -> str:
+    """A table as a spreadsheet writes it."""
+    out = io.StringIO()
+    csv.writer(out, delimiter=mark, lineterminator="\n").writerows(rows)
+    return out.getvalue()
+
+
+def map_columns(text: str, pattern: str, change: Callable[[str], str]) -> str:
+    """A table with the filled cells of the columns whose heading fits ``pattern`` changed."""
+    rows = table_rows(text)
+    chosen = [i for i, heading in enumerate(rows[0]) if re.fullmatch(pattern, heading)]
+    for row in rows[1:]:
+        for i in chosen:
+            row[i] = change(row[i]) if row[i] else ""
+    return table_text(rows)
