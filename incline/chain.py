@@ -31,9 +31,9 @@ class Inputs:
     their places and ``weight_x`` (W) [m]; ``lengths`` (J) [m], 1 for angles and tangents; ``fsm``
     (T) [t m]; ``mass`` (N) [t], ``x``, ``y``, ``z`` (N) [m] of ledger lines other than test
     weights, ``to_x``... of relocations; ``changes`` (C) masses [t], minus for what went ashore, and
-    ``change_x``... [m]. The scalars
-    ``volume_factor`` (1), ``km_shift`` (0 m) and ``slope_shift`` (0 per t m) carry uncertainty of
-    the hydrostatics and of the fitted slope.
+    ``change_x``... [m]. The scalars ``volume_factor`` (1), ``km_shift`` and ``lcb_shift`` (0 m),
+    ``moment_factor`` (1, of moments given directly) and ``slope_shift`` (0 per t m) carry the
+    uncertainty of the hydrostatics, of an old report's moments and of the fitted slope.
     """
 
     drafts: Floats
@@ -57,6 +57,8 @@ class Inputs:
     change_z: Floats
     volume_factor: Floats
     km_shift: Floats
+    lcb_shift: Floats
+    moment_factor: Floats
     slope_shift: Floats
 
 
@@ -130,7 +132,7 @@ def run(plan: Plan, given: Inputs) -> Yield:
     b, displacement = now.buoyancy, now.displacement
     km = b.z + b.bmt + given.km_shift
     vcg = km - stiffness / displacement
-    lcg = None if b.x is None else b.x + now.tau * (vcg - b.z)
+    lcg = None if b.x is None else b.x + given.lcb_shift + now.tau * (vcg - b.z)
     tcg = None if now.list_tan is None else now.list_tan / (slope * displacement)
     light, centres = _ledger(plan, given, displacement, (lcg, tcg, vcg))
     return Yield(
@@ -175,7 +177,8 @@ def _moments(plan: Plan, given: Inputs) -> tuple[Floats, Floats]:
     """Transverse and vertical moments by shift."""
     placing = plan.placing
     if placing.given is not None:
-        return placing.given, 0.0 * placing.given
+        moments = placing.given * given.moment_factor[..., None]
+        return moments, 0.0 * moments
     return (
         placing.about_start(given.weights, given.place_y),
         placing.about_start(given.weights, given.place_z),
@@ -278,8 +281,8 @@ def _ledger(
     start = plan.placing.start
     columns = (
         (centre[0], given.weight_x, given.x, given.to_x),
-        (centre[1], given.place_y[..., start], given.y, given.to_y),
-        (centre[2], given.place_z[..., start], given.z, given.to_z),
+        (centre[1], given.place_y @ start, given.y, given.to_y),
+        (centre[2], given.place_z @ start, given.z, given.to_z),
     )
     found: list[Floats | None] = []
     for at, weight_at, frm, to in columns:

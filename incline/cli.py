@@ -6,7 +6,7 @@ import datetime
 import sys
 from enum import StrEnum
 from pathlib import Path
-from typing import Annotated
+from typing import Annotated, TypeAlias
 
 import typer
 
@@ -25,6 +25,12 @@ app = typer.Typer(
 )
 
 Trial = Annotated[Path, typer.Argument(help="Folder with the records of one trial.")]
+Draws: TypeAlias = Annotated[
+    int | None,
+    typer.Option(
+        min=10_000, max=5_000_000, help="Monte Carlo draws; without it, until the figures settle."
+    ),
+]
 Force = Annotated[bool, typer.Option("--force", help="Replace a file that exists.")]
 
 
@@ -104,6 +110,10 @@ def reduce(
         str | None,
         typer.Option(metavar="FILE|-", help="Write the result as JSON (- : to the screen)."),
     ] = None,
+    monte_carlo: Annotated[
+        bool, typer.Option("--monte-carlo", help="Check the uncertainty by Monte Carlo too.")
+    ] = False,
+    draws: Draws = None,
     force: Force = False,
 ) -> None:
     """Work out a trial and print the result.
@@ -113,13 +123,14 @@ def reduce(
     from incline import read_trial, to_json
     from incline import reduce as work_out
     from incline.files import refuse_existing, write_whole
-    from incline.progress import step
+    from incline.progress import Step
 
     target = None if json in (None, "-") else Path(str(json))
     if target is not None:
         refuse_existing(target, force=force)
-    with step("Reducing the trial"):
-        result = work_out(read_trial(trial))
+    record = read_trial(trial)
+    with Step("Reducing the trial") as step:
+        result = work_out(record, monte_carlo=monte_carlo, draws=draws, progress=step)
     if json == "-":
         sys.stdout.buffer.write(to_json(result).encode())
         return
@@ -137,6 +148,7 @@ def report(
     output: Annotated[
         Path | None, typer.Option("--output", "-o", metavar="FILE", help="Name of the PDF.")
     ] = None,
+    draws: Draws = None,
     force: Force = False,
 ) -> None:
     """Work out a trial and write the dated PDF report.
@@ -146,15 +158,15 @@ def report(
     from incline import __version__, read_trial, write_pdf
     from incline import reduce as work_out
     from incline.files import file_stem, refuse_existing
-    from incline.progress import step
+    from incline.progress import Step
 
     record = read_trial(trial)
     stem = file_stem(record.vessel.name, record.occasion.date.isoformat())
     target = output or Path(f"{stem}.pdf")
     refuse_existing(target, force=force)
-    with step("Reducing the trial"):
-        result = work_out(record)
-    with step("Writing the report"):
+    with Step("Reducing the trial") as step:
+        result = work_out(record, monte_carlo=True, draws=draws, progress=step)
+    with Step("Writing the report"):
         write_pdf(result, target, _report_date(), __version__)
     print(f"Report written to {target}")
 

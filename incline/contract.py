@@ -12,7 +12,14 @@ from typing import TYPE_CHECKING, Any
 import incline
 
 if TYPE_CHECKING:
-    from incline.result import Estimate, Outcome, Reduction
+    from incline.result import (
+        Budget,
+        Estimate,
+        Outcome,
+        Reduction,
+        Simulation,
+        SlopeUncertainty,
+    )
 
 __all__ = ["FORMAT", "to_dict", "to_json"]
 
@@ -44,6 +51,7 @@ def to_dict(reduction: Reduction) -> dict[str, Any]:
             for r in trial.readings
             if r.excluded
         ],
+        "monte_carlo": None if reduction.simulation is None else _monte_carlo(reduction.simulation),
         "with_excluded_readings": None if counted is None else _outcome(counted),
         "remarks": list(reduction.remarks),
     }
@@ -71,6 +79,11 @@ def _outcome(outcome: Outcome) -> dict[str, Any]:
             "tcg_m": _estimate(light.tcg),
         },
         "covariance": [list(row) for row in outcome.covariance],
+        "uncertainty": {
+            "slope": _slope(outcome.slope_uncertainty),
+            "budgets": {b.key: _budget(b) for b in outcome.budgets},
+            "kg_above_limit_probability": outcome.kg_above_limit,
+        },
     }
 
 
@@ -121,4 +134,57 @@ def _estimate(estimate: Estimate) -> dict[str, float | None]:
         "U": estimate.U,
         "k": estimate.k,
         "degrees_of_freedom": estimate.dof,
+    }
+
+
+def _slope(slope: SlopeUncertainty) -> dict[str, Any]:
+    return {
+        "u_per_tm": slope.u,
+        "degrees_of_freedom": slope.dof,
+        "u_ship_per_tm": slope.ship,
+        "u_devices_per_tm": slope.device,
+        "u_readings_per_tm": slope.reading,
+        "reason": slope.reason,
+    }
+
+
+def _budget(budget: Budget) -> dict[str, Any]:
+    """Estimate and lines; u, sensitivity and contribution are in metres, tonnes and fractions."""
+    return {
+        **_estimate(budget.estimate),
+        "inputs": [
+            {
+                "name": line.name,
+                "u": line.u,
+                "kind": "slope" if line.quantity is None else line.quantity.name,
+                "basis": line.basis,
+                "distribution": line.shape,
+                "degrees_of_freedom": line.dof if math.isfinite(line.dof) else None,
+                "sensitivity": line.sensitivity,
+                "contribution": line.part,
+                "share": line.share,
+            }
+            for line in budget.lines
+        ],
+    }
+
+
+def _monte_carlo(simulation: Simulation) -> dict[str, Any]:
+    return {
+        "draws": simulation.draws,
+        "seed": simulation.seed,
+        "settled": simulation.stable,
+        "results": {
+            r.key: {
+                "mean": r.mean,
+                "u": r.u,
+                "symmetric_95": list(r.symmetric),
+                "shortest_95": list(r.shortest),
+                "tolerance": r.tolerance,
+                "first_order_validated": r.agrees,
+            }
+            for r in simulation.results
+        },
+        "covariance": [list(row) for row in simulation.covariance],
+        "kg_above_limit_probability": simulation.kg_above_limit,
     }

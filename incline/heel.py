@@ -29,7 +29,7 @@ def describe_heel(trial: Trial, seen: Observations, found: Yield) -> HeelFit:
     import numpy as np
 
     moments = found.moments[seen.shift]
-    line = fit_grouped_line(moments, seen.tangents, seen.device)
+    line = fit_grouped_line(moments, seen.tangents, seen.device, seen.weight)
     displacement, gm = float(found.condition.displacement), float(found.gm_fluid)
     zero = {d.id: at for d, at in zip(seen.devices, line.intercepts, strict=True)}
     at_shift = {s.number: float(found.moments[i]) for i, s in enumerate(trial.shifts)}
@@ -75,6 +75,7 @@ def describe_heel(trial: Trial, seen: Observations, found: Yield) -> HeelFit:
         ),
         max_heel_port=max(0.0, -math.atan(min(heels))),
         max_heel_starboard=max(0.0, math.atan(max(heels))),
+        curvature_kg=_curvature(heels, float(found.condition.buoyancy.bmt)),
     )
 
 
@@ -97,6 +98,12 @@ def _heels(points: Sequence[HeelPoint], zero: dict[str, float], start: float) ->
         if not p.excluded:
             shifts.setdefault(p.shift, []).append(p.tangent - zero[p.device] + start)
     return [sum(v) / len(v) for v in shifts.values()]
+
+
+def _curvature(heels: list[float], bmt: float) -> float:
+    """How low a straight line puts KG [m] on a wall-sided hull: the cubic term it leaves out."""
+    squares = math.fsum(t**2 for t in heels)
+    return 0.5 * bmt * math.fsum(t**4 for t in heels) / squares if squares > 0.0 else 0.0
 
 
 def _alone(

@@ -92,25 +92,31 @@ class Curves:
             inside = inside and self.trims[0] - slack <= trim <= self.trims[1] + slack
         return inside
 
-    def at(self, draft: Floats, trim: Floats) -> TableValues:
+    def at(self, draft: Floats, trim: Floats, *, slopes: bool = True) -> TableValues:
         """Columns at entry draft and trim [m]; arrays of one shape."""
-        import numpy as np
-
-        values, slopes = self._by_draft(draft), self._by_draft_slope(draft)
-        if self._across is None:
-            values, slopes = values[..., 0, :], slopes[..., 0, :]
-        else:
-            weights = self._across(trim)
-            values = np.einsum("...tc,...t->...c", values, weights)
-            slopes = np.einsum("...tc,...t->...c", slopes, weights)
+        values = self._across_trims(self._by_draft(draft), trim)
         value = {name: values[..., i] for i, name in enumerate(self.names)}
-        slope = {name: slopes[..., i] for i, name in enumerate(self.names)}
+        slope: dict[str, Floats] = {}
+        if slopes:
+            changes = self._across_trims(self._by_draft_slope(draft), trim)
+            slope = {name: changes[..., i] for i, name in enumerate(self.names)}
         if self.rule == "cubic":
-            volume, by_draft = value["volume"], slope["volume"]
+            volume = value["volume"]
             for name in _MOMENTS.intersection(self.names):
                 value[name] = value[name] / volume
-                slope[name] = (slope[name] - value[name] * by_draft) / volume
+                if slopes:
+                    slope[name] = (slope[name] - value[name] * slope["volume"]) / volume
         return TableValues(value, slope)
+
+    def _across_trims(self, values: Floats, trim: Floats) -> Floats:
+        """Columns (..., column) at a trim, from columns at every tabulated trim."""
+        import numpy as np
+
+        if self._across is None:
+            single: Floats = values[..., 0, :]
+            return single
+        blended: Floats = np.einsum("...tc,...t->...c", values, self._across(trim))
+        return blended
 
     def buoyancy(self, mean: Floats, tau: Floats, deflection: Floats | None) -> Buoyancy:
         """Volume and centre of buoyancy at a waterline.
@@ -123,24 +129,26 @@ class Curves:
         import numpy as np
 
         trim = tau * self.lpp
-        bend = np.zeros_like(mean) if deflection is None else deflection
-        if not self.even:
-            share = self._deflection_factor(self.at(mean, trim), mean)
-            entry = mean + share * bend
-            found = self.at(entry, trim)
-            v = found.value
-            nothing = np.zeros_like(entry)
-            return Buoyancy(v["volume"], v["lcb"], v["kb"], v["bmt"], entry, nothing, share)
-        return self._even_keel(mean, tau, bend)
+        if self.even:
+            return self._even_keel(mean, tau, deflection)
+        share, entry = np.full_like(mean, 0.75), mean
+        if deflection is not None:
+            if {"bml", "lcf"} <= set(self.names):
+                share = self._deflection_factor(self.at(mean, trim), mean)
+            entry = mean + share * deflection
+        v = self.at(entry, trim, slopes=False).value
+        nothing = np.zeros_like(entry)
+        return Buoyancy(v["volume"], v["lcb"], v["kb"], v["bmt"], entry, nothing, share)
 
-    def _even_keel(self, mean: Floats, tau: Floats, bend: Floats) -> Buoyancy:
+    def _even_keel(self, mean: Floats, tau: Floats, deflection: Floats | None) -> Buoyancy:
         import numpy as np
 
+        bend = np.zeros_like(mean) if deflection is None else deflection
         table_tau = self.trims[0] / self.lpp
         more = tau - table_tau
         at_ap = mean + more * self.lpp / 2.0
         entry, share = mean, np.full_like(mean, 0.75)
-        for _ in range(4):  # Newton on entry + more x lcf(entry) = draft at AP: quadratic
+        for _ in range(3):  # Newton on entry + more x lcf(entry) = draft at AP: quadratic
             found = self.at(entry, entry)
             share = self._deflection_factor(found, entry)
             if "lcf" in found.value:

@@ -18,21 +18,39 @@ def lines_of(trial: Trial) -> tuple[LedgerLine, ...]:
     """Ledger lines other than test weights: tank liquids and people (off), then the items."""
     tanks = [
         LedgerLine(
-            action="deduct", name=t.name, mass=t.mass, centre=t.centre, to=None, source="tanks"
+            action="deduct",
+            name=t.name,
+            mass=t.mass,
+            centre=t.centre,
+            to=None,
+            source="tanks",
+            stated=t.stated,
         )
         for t in trial.tanks
         if t.centre is not None and t.mass > 0.0
     ]
     people = [
         LedgerLine(
-            action="deduct", name=p.name, mass=p.mass, centre=p.centre, to=None, source="people"
+            action="deduct",
+            name=p.name,
+            mass=p.mass,
+            centre=p.centre,
+            to=None,
+            source="people",
+            stated=p.stated,
         )
         for p in trial.people
         if p.mass is not None and p.centre is not None
     ]
     items = [
         LedgerLine(
-            action=i.action, name=i.name, mass=i.mass, centre=i.centre, to=i.to, source="ledger"
+            action=i.action,
+            name=i.name,
+            mass=i.mass,
+            centre=i.centre,
+            to=i.to,
+            source="ledger",
+            stated=i.stated,
         )
         for i in trial.items
     ]
@@ -46,11 +64,17 @@ def test_weight_lines(trial: Trial, placing: Placing) -> tuple[LedgerLine, ...]:
             action="deduct",
             name=w.id,
             mass=w.mass,
-            centre=Point(float(x), float(placing.y[place]), float(placing.z[place])),
+            centre=Point(float(x), float(y), float(z)),
             to=None,
             source="test weights",
         )
-        for w, place, x in zip(trial.weights, placing.start, placing.start_x, strict=True)
+        for w, x, y, z in zip(
+            trial.weights,
+            placing.start_x,
+            placing.y @ placing.start,
+            placing.z @ placing.start,
+            strict=True,
+        )
     )
 
 

@@ -20,23 +20,25 @@ __all__ = ["Placing", "place_weights"]
 class Placing:
     """Distinct places of the test weights, and who stands where at each shift.
 
-    ``owner`` (K,) is the weight of each place, ``y`` and ``z`` (K,) its position [m], ``change``
-    (K, n) is +1 where a place is taken at a shift and -1 where it was the start, so that
-    (mass y) @ change is the moment about the start. ``start`` (W,) is each weight's first place,
-    ``start_x`` (W,) its x there. ``given`` (n,) replaces all of it when moments were recorded.
+    ``owner`` (W, K) is 1 where a weight has a place, ``y`` and ``z`` (K,) the places [m],
+    ``change`` (K, n) is +1 where a place is taken at a shift and -1 where it was the start, so that
+    (mass @ owner y) @ change is the moment about the start. ``start`` (K, W) is 1 at each weight's
+    first place, ``start_x`` (W,) its x there. ``names`` (K,) says whose place it is and the shift
+    at which it is first taken. ``given`` (n,) replaces all of it when moments were recorded.
     """
 
-    owner: NDArray[np.intp]
+    owner: Floats
+    names: tuple[tuple[str, int], ...]
     y: Floats
     z: Floats
     change: Floats
-    start: NDArray[np.intp]
+    start: Floats
     start_x: Floats
     given: Floats | None
 
     def about_start(self, mass: Floats, arm: Floats) -> Floats:
         """Moments about the start [t m], (..., n); mass (..., W) [t], arm (..., K) [m]."""
-        moments: Floats = (mass[..., self.owner] * arm) @ self.change
+        moments: Floats = ((mass @ self.owner) * arm) @ self.change
         return moments
 
 
@@ -48,6 +50,7 @@ def place_weights(trial: Trial) -> Placing:
     heights = {w.id: w.z for w in trial.weights}
     along = {w.id: w.x for w in trial.weights}
     places: dict[tuple[str, float, float], int] = {}
+    names: list[tuple[str, int]] = []
     standing: dict[str, int] = {}
     start: dict[str, int] = {}
     start_x: dict[str, float] = {}
@@ -57,7 +60,10 @@ def place_weights(trial: Trial) -> Placing:
             heights[move.weight] = heights[move.weight] if move.z is None else move.z
             along[move.weight] = along[move.weight] if move.x is None else move.x
             key = (move.weight, move.y, heights[move.weight])
-            standing[move.weight] = places.setdefault(key, len(places))
+            if key not in places:
+                places[key] = len(places)
+                names.append((move.weight, shift.number))
+            standing[move.weight] = places[key]
             start.setdefault(move.weight, standing[move.weight])
             start_x.setdefault(move.weight, along[move.weight])
         held.append(dict(standing))
@@ -66,13 +72,19 @@ def place_weights(trial: Trial) -> Placing:
         for weight, place in where.items():
             change[place, n] += 1.0
             change[start[weight], n] -= 1.0
+    owner, first = np.zeros((len(index), len(places))), np.zeros((len(places), len(index)))
+    for (weight, _, _), place in places.items():
+        owner[index[weight], place] = 1.0
+    for weight, place in start.items():
+        first[place, index[weight]] = 1.0
     given = [s.moment for s in trial.shifts if s.moment is not None]
     return Placing(
-        owner=np.array([index[w] for w, _, _ in places], dtype=np.intp),
+        owner=owner,
+        names=tuple(names),
         y=np.array([y for _, y, _ in places]),
         z=np.array([z for _, _, z in places]),
         change=change,
-        start=np.array([start[w.id] for w in trial.weights], dtype=np.intp),
+        start=first,
         start_x=np.array([start_x[w.id] for w in trial.weights]),
         given=np.array(given) if given else None,
     )

@@ -38,6 +38,7 @@ class Observations:
 
     ``shift`` and ``device`` are indices into the trial's shifts and into ``devices``, the devices
     with readings that count. ``lengths`` (J) [m] is 1 for a device read in angles or tangents.
+    ``weight`` (R) follows the resolution of the devices in tangents; None unless all state theirs.
     """
 
     every: tuple[Observation, ...]
@@ -46,6 +47,7 @@ class Observations:
     device: NDArray[np.intp]
     tangents: Floats
     lengths: Floats
+    weight: Floats | None
 
     @property
     def counted(self) -> list[Observation]:
@@ -67,15 +69,29 @@ def observe(trial: Trial, *, with_excluded: bool = False) -> Observations:
     devices = tuple(d for d in trial.devices if any(o.reading.device == d.id for o in counted))
     names = [d.id for d in devices]
     numbers = [s.number for s in trial.shifts]
+    device = np.array([names.index(o.reading.device) for o in counted], dtype=np.intp)
     direct = {o.reading.device for o in counted if o.reading.quantity != "length"}
     return Observations(
         every=tuple(every),
         devices=devices,
         shift=np.array([numbers.index(o.reading.shift) for o in counted], dtype=np.intp),
-        device=np.array([names.index(o.reading.device) for o in counted], dtype=np.intp),
+        device=device,
         tangents=np.array([o.tangent for o in counted]),
         lengths=np.array([1.0 if d.id in direct else d.length or 1.0 for d in devices]),
+        weight=_weights(devices, device),
     )
+
+
+def _weights(devices: Sequence[Device], device: NDArray[np.intp]) -> Floats | None:
+    """Relative weights of the readings: one over the squared resolution in tangents."""
+    import numpy as np
+
+    steps = [None if d.resolution is None else d.resolution / (d.length or 1.0) for d in devices]
+    if any(s is None or s <= 0.0 for s in steps):
+        return None
+    by_device = np.array([1.0 / float(s or 1.0) ** 2 for s in steps])
+    weight: Floats = by_device[device] / by_device[device].mean()
+    return weight
 
 
 def _tangent(reading: Reading, value: float, length: float | None) -> float:

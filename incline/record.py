@@ -7,14 +7,16 @@ reading or moment is positive when it belongs to heel to starboard.
 from __future__ import annotations
 
 import datetime
-from dataclasses import dataclass
+from collections.abc import Mapping
+from dataclasses import dataclass, field
 from typing import Literal
 
 from incline.errors import Where
 
 __all__ = [
-    "Change", "Device", "DraftReading", "HydrostaticTable", "Item", "Move", "Occasion", "Person",
-    "Point", "Reading", "Sample", "Settings", "Shift", "Tank", "Trial", "Vessel", "Weight",
+    "Change", "Correlation", "Device", "DraftReading", "HydrostaticTable", "Item", "Move",
+    "Occasion", "Person", "Point", "Reading", "Sample", "Settings", "Shift", "Stated",
+    "Statements", "Tank", "Trial", "Vessel", "Weight",
 ]  # fmt: skip
 
 
@@ -25,6 +27,31 @@ class Point:
     x: float
     y: float
     z: float
+
+
+@dataclass(frozen=True, slots=True)
+class Stated:
+    """A standard uncertainty that the trial states, in its quantity's own unit.
+
+    ``shape`` is rectangular for a tolerance or a resolution, normal for a standard uncertainty.
+    """
+
+    u: float
+    shape: Literal["normal", "rectangular"]
+
+
+Statements = Mapping[str, Stated]
+"""Stated uncertainties by quantity: ``mass``, ``x``, ``to_z``, ``draft``, ``length`` ..."""
+
+
+@dataclass(frozen=True, slots=True)
+class Correlation:
+    """A correlation coefficient stated between two inputs, named as the budget prints them."""
+
+    a: str
+    b: str
+    r: float
+    where: Where
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -50,6 +77,7 @@ class Person:
     mass: float | None = None
     centre: Point | None = None
     where: Where
+    stated: Statements = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -66,7 +94,10 @@ class Occasion:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Device:
-    """A device that shows heel. ``length`` [m]: pendulum length or U-tube span; None for angles."""
+    """A device that shows heel. ``length`` [m]: pendulum length or U-tube span; None for angles.
+
+    ``resolution`` is the step of its readings [m] or [rad]; None when not stated.
+    """
 
     id: str
     kind: Literal["pendulum", "u-tube", "inclinometer"]
@@ -74,6 +105,8 @@ class Device:
     place: str = ""
     calibration: str = ""
     where: Where
+    resolution: float | None = None
+    stated: Statements = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -86,6 +119,7 @@ class Weight:
     x: float
     z: float
     where: Where
+    stated: Statements = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -97,6 +131,7 @@ class Move:
     x: float | None
     z: float | None
     where: Where
+    stated: Statements = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -108,6 +143,7 @@ class Shift:
     moves: tuple[Move, ...]
     moment: float | None
     where: Where
+    stated: Statements = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -138,6 +174,7 @@ class DraftReading:
     draft: float
     freeboard: float | None
     where: Where
+    stated: Statements = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -150,6 +187,7 @@ class Sample:
     temperature: float | None
     share: float
     where: Where
+    stated: Statements = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -167,6 +205,7 @@ class Tank:
     fsm: float
     fsm_basis: str
     where: Where
+    stated: Statements = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -180,6 +219,7 @@ class Item:
     to: Point | None
     basis: str
     where: Where
+    stated: Statements = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -191,6 +231,7 @@ class Change:
     mass: float
     centre: Point
     where: Where
+    stated: Statements = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -213,6 +254,7 @@ class HydrostaticTable:
     bml: tuple[tuple[float, ...], ...] | None
     bml_basis: str
     where: Where
+    stated: Statements = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -221,7 +263,8 @@ class Settings:
 
     ``allowance`` multiplies a moulded volume by (1 + allowance) for shell and appendages; None
     means the table is extreme. ``keel_thickness`` [m] is taken off drafts whose marks start at the
-    underside of keel.
+    underside of keel. ``kg_limit`` [m] is a KG not to be exceeded; ``assumed`` replaces the
+    program's default uncertainties by name (see `incline.defaults`).
     """
 
     x_origin: Literal["after perpendicular", "amidships"]
@@ -231,6 +274,9 @@ class Settings:
     allowance: float | None
     keel_thickness: float
     interpolation: Literal["cubic", "linear"]
+    kg_limit: float | None = None
+    assumed: Mapping[str, float] = field(default_factory=dict)
+    correlations: tuple[Correlation, ...] = ()
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

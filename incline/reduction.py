@@ -3,102 +3,121 @@
 from __future__ import annotations
 
 import math
+from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
+from incline.budget import budgets_of, probability_above
 from incline.chain import run
+from incline.correlation import blocks_of
 from incline.errors import InclineError
 from incline.flotation import describe_waterline
 from incline.heel import describe_heel
 from incline.hydrostatics import Curves
 from incline.ledger import balance, lines_of, summarise, test_weight_lines
+from incline.model import KEYS, TrialModel
+from incline.montecarlo import seed_of, simulate
 from incline.observations import observe
 from incline.refusals import refuse
-from incline.remarks import remarks_on
+from incline.remarks import remarks_on, remarks_on_simulation
 from incline.result import AsInclined, FreeSurface, Lightship, Outcome, Reduction, TableEntry
 from incline.setup import inputs_of, plan_of
-from incline.uncertainty import Scatter, propagate
+from incline.sources import list_sources
+from incline.variance import slope_uncertainty
 
 if TYPE_CHECKING:
+    from collections.abc import Callable
+
     from incline.chain import Inputs, Plan, Yield
+    from incline.correlation import Block
     from incline.observations import Observations
     from incline.record import Trial
-    from incline.result import HeelFit, Waterline
+    from incline.result import Waterline
 
 __all__ = ["reduce"]
 
 
-def reduce(trial: Trial) -> Reduction:
-    """Reduce a trial; raises FieldDataError listing everything that stands in the way."""
-    outcome = _outcome(trial, observe(trial))
-    remarks = remarks_on(trial, outcome)
+def reduce(
+    trial: Trial,
+    *,
+    monte_carlo: bool = False,
+    draws: int | None = None,
+    progress: Callable[[float], None] | None = None,
+) -> Reduction:
+    """Reduce a trial; raises FieldDataError listing everything that stands in the way.
+
+    ``monte_carlo`` also sends the inputs through the chain by Monte Carlo until its figures settle,
+    or exactly ``draws`` times; ``progress`` is told the share done.
+    """
+    stage = _work_out(trial, observe(trial))
+    remarks = remarks_on(trial, stage.outcome)
     with_excluded = None
     if any(r.excluded for r in trial.readings):
         try:
-            with_excluded = _outcome(trial, observe(trial, with_excluded=True))
+            with_excluded = _work_out(trial, observe(trial, with_excluded=True)).outcome
         except InclineError as error:
             remarks.append(f"With the excluded readings counted there is no result: {error}.")
+    simulation = None
+    if monte_carlo or draws is not None:
+        simulation = simulate(
+            stage.model, stage.model.sources, stage.blocks, stage.outcome.budgets,
+            seed=seed_of(trial.digest), draws=draws, kg_limit=trial.settings.kg_limit,
+            progress=progress,
+        )  # fmt: skip
+        remarks.extend(remarks_on_simulation(simulation))
     return Reduction(
-        trial=trial, outcome=outcome, with_excluded=with_excluded, remarks=tuple(remarks)
+        trial=trial,
+        outcome=stage.outcome,
+        with_excluded=with_excluded,
+        simulation=simulation,
+        remarks=tuple(remarks),
     )
 
 
-def _outcome(trial: Trial, seen: Observations) -> Outcome:
+@dataclass(frozen=True, slots=True, eq=False)
+class _Stage:
+    """An outcome, and what a Monte Carlo run needs to go through the same chain."""
+
+    outcome: Outcome
+    model: TrialModel
+    blocks: tuple[Block, ...]
+
+
+def _work_out(trial: Trial, seen: Observations) -> _Stage:
     plan = plan_of(trial, seen)
     given = inputs_of(trial, plan, seen)
     found = run(plan, given)
     refuse(trial, plan, seen, found)
     heel = describe_heel(trial, seen, found)
     waterline = describe_waterline(plan.waterline, trial.drafts, trial.vessel.lpp)
-    estimates, covariance = propagate(plan, given, _scatter(trial, heel, waterline))
+    slope = slope_uncertainty(seen, found.moments[seen.shift])
+    sources = list_sources(trial, plan, given, seen, waterline, heel, slope)
+    blocks = blocks_of(sources, trial.settings.correlations)
+    model = TrialModel(plan, given, sources)
+    budgets, covariance = budgets_of(model, KEYS, sources, blocks)
+    displacement, vcg, lcg, tcg, _ = (b.estimate for b in budgets)
     lines = (*test_weight_lines(trial, plan.placing), *lines_of(trial))
     inclined = _as_inclined(trial, plan, waterline, given, found)
     residual = balance(
         lines,
         inclined.displacement,
         (inclined.lcg, inclined.tcg, inclined.vcg),
-        (estimates[2].value, estimates[3].value, estimates[1].value),
+        (lcg.value, tcg.value, vcg.value),
     )
     fsm = float(found.fsm)
-    return Outcome(
+    outcome = Outcome(
         as_inclined=inclined,
         heel=heel,
         free_surface=FreeSurface(moment=fsm, correction=fsm / inclined.displacement),
         ledger=summarise(lines, residual),
-        lightship=Lightship(
-            displacement=estimates[0], vcg=estimates[1], lcg=estimates[2], tcg=estimates[3]
+        lightship=Lightship(displacement=displacement, vcg=vcg, lcg=lcg, tcg=tcg),
+        covariance=tuple(
+            tuple(None if math.isnan(c) else float(c) for c in row[:4]) for row in covariance[:4]
         ),
-        covariance=covariance,
+        slope_uncertainty=slope,
+        budgets=budgets,
+        kg_above_limit=probability_above(vcg, trial.settings.kg_limit),
     )
-
-
-def _scatter(trial: Trial, heel: HeelFit, waterline: Waterline) -> list[Scatter]:
-    """What the test's own scatter tells: slope, drafts, density samples."""
-    found: list[Scatter] = []
-    if heel.u_slope is not None:
-        found.append(
-            Scatter(field="slope_shift", item=None, u=heel.u_slope, dof=heel.dof, pool="slope")
-        )
-    if waterline.sd is not None:
-        found.extend(
-            Scatter(field="drafts", item=i, u=waterline.sd, dof=waterline.dof, pool="drafts")
-            for i in range(len(trial.drafts))
-        )
-    u_density = _density_scatter(trial)
-    if u_density is not None:
-        dof = len(trial.samples) - 1
-        found.append(Scatter(field="density", item=None, u=u_density, dof=dof, pool="density"))
-    return found
-
-
-def _density_scatter(trial: Trial) -> float | None:
-    """Standard uncertainty of the weighted mean density from the spread of its samples [t/m3]."""
-    samples = trial.samples
-    if len(samples) < 2:
-        return None
-    total = sum(s.share for s in samples)
-    mean = sum(s.share * s.density for s in samples) / total
-    squares = sum(s.share * (s.density - mean) ** 2 for s in samples) / total
-    return math.sqrt(squares / (len(samples) - 1))
+    return _Stage(outcome, model, blocks)
 
 
 def _as_inclined(

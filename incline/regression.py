@@ -78,14 +78,20 @@ def slope_form(
     )
 
 
-def fit_grouped_line(x: Floats, y: Floats, group: NDArray[np.intp]) -> GroupedLine:
-    """Ordinary least squares by statsmodels; x, y, group are (n,), groups numbered from 0."""
+def fit_grouped_line(
+    x: Floats, y: Floats, group: NDArray[np.intp], weight: Floats | None = None
+) -> GroupedLine:
+    """Least squares by statsmodels; x, y, group, weight are (n,), groups numbered from 0.
+
+    ``weight`` are relative weights with a mean of one; ``sd`` is that of a reading of weight one.
+    """
     import numpy as np
-    from statsmodels.regression.linear_model import OLS
+    from statsmodels.regression.linear_model import WLS
 
     scale = float(np.abs(x).max())  # a design of order one keeps the pseudo-inverse exact
     member = (group[:, None] == np.arange(group.max() + 1)).astype(float)
-    fit: Any = OLS(y, np.column_stack([x / scale, member])).fit()
+    weights = np.ones(len(x)) if weight is None else weight
+    fit: Any = WLS(y, np.column_stack([x / scale, member]), weights=weights).fit()
     dof = round(float(fit.df_resid))
     about_mean = float(((y - y.mean()) ** 2).sum())
     return GroupedLine(

@@ -5,25 +5,32 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from incline.swings import alternates
+from incline.units import LENGTH, SYSTEMS
 
 if TYPE_CHECKING:
     from incline.record import Trial
-    from incline.result import Outcome
+    from incline.result import Outcome, Simulation
+    from incline.units import UnitSystem
 
-__all__ = ["remarks_on"]
+__all__ = ["NAMES", "remarks_on", "remarks_on_simulation"]
 
 
 def remarks_on(trial: Trial, outcome: Outcome) -> list[str]:
     """Remarks of the reading first, then of the waterline, the water and the devices."""
     counted = {p.device for p in outcome.heel.points if not p.excluded}
+    system = SYSTEMS[trial.settings.units]
     return [
         *trial.remarks,
-        *_waterline(outcome),
+        *_waterline(outcome, system),
         *(
             ["One water sample: the scatter of the density cannot be seen."]
             if len(trial.samples) < 2
             else []
         ),
+        *_slope(outcome),
+        "A straight line through heel and moment puts KG low by about"
+        f" {_small(outcome.heel.curvature_kg, system)} at these heels if the hull is wall-sided."
+        " KG is not corrected for it; its uncertainty includes it.",
         *(
             f"Every reading of device {d.id} is excluded."
             for d in trial.devices
@@ -37,7 +44,13 @@ def remarks_on(trial: Trial, outcome: Outcome) -> list[str]:
     ]
 
 
-def _waterline(outcome: Outcome) -> list[str]:
+def _small(length: float, system: UnitSystem) -> str:
+    """A length in the unit of readings: 4.2 mm, 0.17 in."""
+    places = 1 if system.name == "metric" else 2
+    return f"{system.show(length, LENGTH, system.reading, places)} {system.reading}"
+
+
+def _waterline(outcome: Outcome, system: UnitSystem) -> list[str]:
     inclined = outcome.as_inclined
     said = []
     if inclined.lcg is None:
@@ -46,7 +59,7 @@ def _waterline(outcome: Outcome) -> list[str]:
         said.append(
             "LCG is not determined: the ship is trimmed and the hydrostatic table has neither"
             " several trims nor BM_L or MCT. The rise of B by trim is left out of KM too; for a box"
-            f" of this length and draft it would raise KG by {1000.0 * rise:.1f} mm."
+            f" of this length and draft it would raise KG by {_small(rise, system)}."
         )
     if inclined.tcg is None:
         said.append("TCG is not determined: the drafts do not show the list.")
@@ -55,9 +68,36 @@ def _waterline(outcome: Outcome) -> list[str]:
             "There are no more draft readings than unknowns: errors of the drafts cannot be seen."
         )
     said.extend(
-        f"Draft reading at x = {r.x:.3f} m, side {r.side}, is {1000.0 * r.residual:+.0f} mm off the"
-        " fitted waterline, more than the others allow: read it again."
+        f"The draft reading at x = {system.show(r.x, LENGTH, system.length, 2)} {system.length},"
+        f" side {r.side}, is {_small(r.residual, system)} off the fitted waterline, more than the"
+        " others allow: read it again."
         for r in inclined.waterline.residuals
         if r.flagged
     )
+    return said
+
+
+def _slope(outcome: Outcome) -> list[str]:
+    slope = outcome.slope_uncertainty
+    if slope.u is None:
+        return ["The readings leave no scatter to judge the slope by: its uncertainty is left out."]
+    return [f"Scatter of the readings: {slope.reason}."] if slope.reason else []
+
+
+NAMES = {
+    "displacement": "displacement", "vcg": "KG", "lcg": "LCG", "tcg": "TCG", "gm_fluid": "GM",
+}  # fmt: skip
+
+
+def remarks_on_simulation(simulation: Simulation) -> list[str]:
+    """What the Monte Carlo run says against the first-order figures, if anything."""
+    said = []
+    odd = [NAMES[r.key] for r in simulation.results if not r.agrees]
+    if odd:
+        said.append(
+            f"The first-order interval is not validated by Monte Carlo for {', '.join(odd)}"
+            " (JCGM 101, clause 8): take the simulated interval there."
+        )
+    if not simulation.stable:
+        said.append(f"Monte Carlo stopped at {simulation.draws} draws before its figures settled.")
     return said

@@ -2,27 +2,16 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, field
 from typing import Literal
 
-from incline.record import Point, Trial
+from incline.record import Point, Statements, Trial
+from incline.units import Quantity
 
 __all__ = [
-    "AsInclined",
-    "DeviceFit",
-    "DraftResidual",
-    "Estimate",
-    "FreeSurface",
-    "HeelFit",
-    "HeelPoint",
-    "Ledger",
-    "LedgerLine",
-    "Lightship",
-    "Outcome",
-    "ReducedReading",
-    "Reduction",
-    "ShiftMoment",
-    "TableEntry",
+    "AsInclined", "Budget", "BudgetLine", "DeviceFit", "DraftResidual", "Estimate", "FreeSurface",
+    "HeelFit", "HeelPoint", "Ledger", "LedgerLine", "Lightship", "Outcome", "ReducedReading",
+    "Reduction", "ShiftMoment", "Simulated", "Simulation", "SlopeUncertainty", "TableEntry",
     "Waterline",
 ]  # fmt: skip
 
@@ -195,6 +184,9 @@ class HeelFit:
     shifts: tuple[ShiftMoment, ...]
     max_heel_port: float
     max_heel_starboard: float
+    curvature_kg: float
+    """What KG is low by [m] for the curvature that a straight line leaves out, as for a wall-sided
+    hull: half of BM times sum(t^4) / sum(t^2)."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -215,6 +207,7 @@ class LedgerLine:
     centre: Point
     to: Point | None
     source: Literal["ledger", "test weights", "tanks", "people"]
+    stated: Statements = field(default_factory=dict)
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -243,6 +236,92 @@ class Lightship:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class SlopeUncertainty:
+    """Standard uncertainty of the common slope from the scatter of the readings [1/(t m)].
+
+    ``ship``, ``device``, ``reading`` are the standard uncertainties that each part of the scatter
+    would give alone; ``lengths_seen`` tells whether disagreement between devices stands for the
+    errors of their lengths. ``u`` is None when there is no scatter to go by; ``reason`` says what
+    this trial cannot tell.
+    """
+
+    u: float | None
+    dof: float
+    ship: float
+    device: float
+    reading: float
+    lengths_seen: bool
+    reason: str
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class BudgetLine:
+    """One input's part in one result.
+
+    ``u`` is its standard uncertainty, ``sensitivity`` the result's change per unit of it (both in
+    inside units; ``quantity`` None is a slope), ``part`` their product in the result's unit, and
+    ``share`` its share of the variance, correlations included.
+    """
+
+    name: str
+    u: float
+    quantity: Quantity | None
+    basis: str
+    shape: str
+    dof: float
+    sensitivity: float
+    part: float
+    share: float
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Budget:
+    """Uncertainty budget of one result, largest share first.
+
+    ``key`` is displacement, vcg, lcg, tcg (of the lightship) or gm_fluid.
+    """
+
+    key: str
+    estimate: Estimate
+    lines: tuple[BudgetLine, ...]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Simulated:
+    """One result by Monte Carlo: mean, standard uncertainty, 95 % intervals, and JCGM 101 clause 8.
+
+    ``agrees`` tells whether the first-order interval is validated: both ends within ``tolerance``
+    of the simulated probabilistically symmetric ones.
+    """
+
+    key: str
+    mean: float
+    u: float
+    symmetric: tuple[float, float]
+    shortest: tuple[float, float]
+    tolerance: float
+    agrees: bool
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Simulation:
+    """A Monte Carlo run through the chain.
+
+    ``stable`` is False when the run stopped at its largest number of draws before its figures
+    settled. ``kg_edges`` and ``kg_counts`` are a histogram of KG.
+    """
+
+    draws: int
+    seed: int
+    stable: bool
+    results: tuple[Simulated, ...]
+    covariance: tuple[tuple[float | None, ...], ...]
+    kg_above_limit: float | None
+    kg_edges: tuple[float, ...]
+    kg_counts: tuple[int, ...]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Outcome:
     """One pass through the whole chain."""
 
@@ -253,6 +332,10 @@ class Outcome:
     lightship: Lightship
     covariance: tuple[tuple[float | None, ...], ...]
     """4 x 4 over displacement, vcg, lcg, tcg [t, m]."""
+    slope_uncertainty: SlopeUncertainty
+    budgets: tuple[Budget, ...]
+    kg_above_limit: float | None
+    """Probability, first order, that lightship KG is above the trial's limit; None without one."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -263,5 +346,7 @@ class Reduction:
     outcome: Outcome
     with_excluded: Outcome | None
     """The outcome with every reading counted; None when nothing is excluded."""
+    simulation: Simulation | None
+    """Monte Carlo through the same chain; None when it was not asked for."""
     remarks: tuple[str, ...]
     """Assumptions and refusals that a reviewer should see, one sentence each."""

@@ -3,15 +3,18 @@
 from __future__ import annotations
 
 import math
+import textwrap
+from functools import partial
 from typing import TYPE_CHECKING
 
+from incline.remarks import NAMES
 from incline.units import LENGTH, MASS, MOMENT, SYSTEMS, VOLUME
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from incline.record import Trial
-    from incline.result import Estimate, Outcome, Reduction
+    from incline.result import Estimate, Outcome, Reduction, Simulation
     from incline.units import UnitSystem
 
 __all__ = ["show", "summary"]
@@ -49,6 +52,7 @@ def show(reduction: Reduction) -> str:
         "",
         *_lightship(outcome, system),
     ]
+    parts += _uncertainty(reduction, system)
     if reduction.with_excluded is not None:
         excluded = sum(1 for r in trial.readings if r.excluded)
         parts += [
@@ -57,10 +61,11 @@ def show(reduction: Reduction) -> str:
             *_lightship(reduction.with_excluded, system)[1:],
         ]
     if reduction.remarks:
-        parts += ["", "Remarks", *(f"  - {r}" for r in reduction.remarks)]
+        wrap = partial(textwrap.fill, width=92, initial_indent="  - ", subsequent_indent="    ")
+        parts += ["", "Remarks", *(wrap(r) for r in reduction.remarks)]
     parts += [
         "",
-        "The standard uncertainties cover the scatter of readings, drafts and water samples only.",
+        "U covers every input at 95 %; assumed ones are engineering judgement, not measured.",
         "Acceptance rests with the flag administration or its recognised organisation.",
     ]
     return "\n".join(parts)
@@ -165,4 +170,41 @@ def _lightship(outcome: Outcome, system: UnitSystem) -> list[str]:
             expanded = system.show(estimate.U, kind, unit, places + 1)
             note += f", U {expanded} (95 %, k = {estimate.k:.2f})"
         lines.append(_row(label, system.show(estimate.value, kind, unit, places), unit, note))
+    return lines
+
+
+_SHOWN = 6  # budget lines on the screen; the report has them all
+
+
+def _uncertainty(reduction: Reduction, system: UnitSystem) -> list[str]:
+    """Largest inputs of KG, the limit if there is one, and the Monte Carlo verdict."""
+    outcome, simulation = reduction.outcome, reduction.simulation
+    kg = next(b for b in outcome.budgets if b.key == "vcg")
+    assumed = sum(line.share for line in kg.lines if line.basis.startswith("assumed"))
+    share = f"{100.0 * assumed:.0f} % of its variance from assumed figures"
+    lines = ["", f"What the uncertainty of KG comes from ({share})"]
+    lines += [
+        f"  {100.0 * line.share:5.1f} %  {line.name} ({line.basis})" for line in kg.lines[:_SHOWN]
+    ]
+    rest = kg.lines[_SHOWN:]
+    if rest:
+        lines.append(f"  {100.0 * sum(r.share for r in rest):5.1f} %  {len(rest)} further inputs")
+    limit = reduction.trial.settings.kg_limit
+    if limit is not None and outcome.kg_above_limit is not None:
+        chance = outcome.kg_above_limit if simulation is None else simulation.kg_above_limit
+        lines.append(
+            f"  KG above the limit of {_length(system, limit)} {system.length}:"
+            f" probability {100.0 * (chance or 0.0):.2g} %"
+        )
+    return lines if simulation is None else [*lines, *_monte_carlo(simulation, system)]
+
+
+def _monte_carlo(simulation: Simulation, system: UnitSystem) -> list[str]:
+    lines = ["", f"Monte Carlo, {simulation.draws} draws: 95 % intervals"]
+    for r in simulation.results:
+        kind, unit = (MASS, system.mass) if r.key == "displacement" else (LENGTH, system.length)
+        places = 2 if r.key == "displacement" else 4
+        low, high = (system.show(v, kind, unit, places) for v in r.symmetric)
+        verdict = "agrees with first order" if r.agrees else "first order NOT validated: use this"
+        lines.append(f"  {NAMES[r.key]:<14}{low:>10} to {high:>10} {unit:<4} {verdict}")
     return lines

@@ -35,7 +35,11 @@ def plan_of(trial: Trial, seen: Observations) -> Plan:
         curves=Curves(trial.table, trial.vessel.lpp, trial.settings.interpolation),
         placing=place_weights(trial),
         line=slope_form(
-            seen.shift, seen.device, seen.tangents * seen.lengths[seen.device], len(trial.shifts)
+            seen.shift,
+            seen.device,
+            seen.tangents * seen.lengths[seen.device],
+            len(trial.shifts),
+            seen.weight,
         ),
         sign=np.array([{"deduct": -1.0, "add": 1.0}.get(line.action, 0.0) for line in lines]),
         moved=np.array([float(line.action == "relocate") for line in lines]),
@@ -71,5 +75,7 @@ def inputs_of(trial: Trial, plan: Plan, seen: Observations) -> Inputs:
         **{f"change_{n}": axis(gone, n) for n in "xyz"},
         volume_factor=np.asarray(1.0),
         km_shift=np.asarray(0.0),
+        lcb_shift=np.asarray(0.0),
+        moment_factor=np.asarray(1.0),
         slope_shift=np.asarray(0.0),
     )

@@ -133,14 +133,18 @@ DEMOS = {
 
 
 def demo_files(
-    name: str, *, exact: bool = False, units: str = "", semicolon: bool = False
+    name: str,
+    *,
+    rounded: bool = True,
+    noisy: bool = True,
+    units: str = "",
+    semicolon: bool = False,
 ) -> dict[str, str]:
-    """Files of a demo as shipped; ``exact`` leaves out noise and rounding."""
+    """Files of a demo as shipped, or without the rounding of its figures or the noise in them."""
     scene, style, head, places = DEMOS[name]
-    if exact:
-        style = replace(
-            style, decimals={}, feet_inches=False, reading_fraction=0,
-            noise_reading=0.0, noise_draft=0.0, noise_density=0.0,
-        )  # fmt: skip
+    if not rounded:
+        style = replace(style, decimals={}, feet_inches=False, reading_fraction=0)
+    if not noisy:
+        style = replace(style, noise_reading=0.0, noise_draft=0.0, noise_density=0.0)
     style = replace(style, units=units or style.units, semicolon=semicolon)
     return {"trial.toml": trial_toml(scene, style, head), **trial_tables(scene, style, places)}

@@ -126,6 +126,19 @@ draft [m],volume [m3],lcb [m],kb [m],km [m],lcf [m],area [m2],bml [m]
 """File name -> text of the trial."""
 
 
+def beside(file: str, columns: Mapping[str, str]) -> str:
+    """A table of the small trial with columns added: heading -> the cells, spaces between them.
+
+    A full stop stands for a blank cell.
+    """
+    rows = table_rows(SMALL[file])
+    width = len(rows[0])
+    added = zip(*([heading, *cells.split()] for heading, cells in columns.items()), strict=True)
+    for row, more in zip(rows, added, strict=True):
+        row += [""] * (width - len(row)) + ["" if cell == "." else cell for cell in more]
+    return table_text(rows)
+
+
 def write(folder: Path, files: Mapping[str, str | bytes | None]) -> Path:
     """Write files into a new folder, leaving out those that are None."""
     folder.mkdir(parents=True, exist_ok=True)
@@ -163,3 +176,72 @@ def map_columns(text: str, pattern: str, change: Callable[[str], str]) -> str:
         for i in chosen:
             row[i] = change(row[i]) if row[i] else ""
     return table_text(rows)
+
+
+_STATED_KEYS = {
+    'length = "4 m"': 'tolerance_length = "3 mm"\nresolution = "1 mm"',
+    'kind = "inclinometer"': 'u_scale = "0.1 %"\nresolution = "0.01 deg"',
+    'mass = "80 kg"': 'u_mass = "10 %"\nu_x = "0.1 m"\ntolerance_y = "5 %"\nresolution_z = "1 m"',
+    'allowance = "0 %"': 'u_volume = "0.2 %"\nu_km = "5 mm"\ntolerance_lcb = "12 mm"',
+}
+_SECTIONS = """
+[limits]
+kg = "5.40 m"
+
+[uncertainty]
+draft = "8 mm"
+tank_mass = "2 %"
+draft_shared = 0.4
+arm_shared = "25 %"
+
+[[correlations]]
+between = ["test weight A, mass", "tank 1 P, mass"]
+r = -0.5
+"""
+
+
+def _stated_toml() -> str:
+    text = SMALL["trial.toml"]
+    for line, more in _STATED_KEYS.items():
+        assert text.count(f"\n{line}\n") == 1
+        text = text.replace(f"\n{line}\n", f"\n{line}\n{more}\n")
+    return text + _SECTIONS
+
+
+STATED: dict[str, str] = {
+    **SMALL,
+    "trial.toml": _stated_toml(),
+    "weights.csv": beside(
+        "weights.csv",
+        {"u mass [t]": "0.02 .", "tolerance mass [%]": ". 0.5", "resolution x [m]": "0.01 0.01"},
+    ),
+    "shifts.csv": beside(
+        "shifts.csv", {"tolerance y [m]": "0.01 0.01 0.01 0.01 .", "u z [m]": ". . . 0.03 ."}
+    ),
+    "drafts.csv": beside(
+        "drafts.csv",
+        {
+            "u draft [m]": "0.01 . . . .",
+            "tolerance draft [%]": ". 0.5 . . .",
+            "resolution freeboard [m]": ". . 0.02 0.02 .",
+            "u point height [m]": ". . 0.008 . .",
+        },
+    ),
+    "density.csv": beside("density.csv", {"resolution density [kg/m3]": "0.5 0.5"}),
+    "tanks.csv": beside(
+        "tanks.csv",
+        {
+            "u volume [m3]": ". 0.3 . .",
+            "tolerance density [t/m3]": ". 0.01 . .",
+            "u mass [t]": "0.1 . . 0.2",
+            "u fsm [%]": "5 . . 10",
+            "tolerance y [m]": ". 0.1 . .",
+        },
+    ),
+    "ledger.csv": beside(
+        "ledger.csv",
+        {"u mass [%]": "10 . 2", "u to x [m]": ". . 0.5", "tolerance to y [m]": ". . 0.06"},
+    ),
+    "changes.csv": beside("changes.csv", {"resolution mass [t]": "0.5 0.1", "u y [m]": "0.1 ."}),
+}
+"""The small trial with uncertainties stated in every way and in every table that has them."""

@@ -33,6 +33,6 @@ def test_reduce_draws_nothing():
 
 
 def test_package_import_loads_nothing_heavy():
-    code = "import sys, incline; print([m for m in sys.modules if m in %r])" % sorted(HEAVY)
+    code = f"import sys, incline; print([m for m in sys.modules if m in {sorted(HEAVY)!r}])"
     run = subprocess.run([sys.executable, "-c", code], capture_output=True, text=True, check=True)
     assert run.stdout.strip() == "[]"

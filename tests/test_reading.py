@@ -5,6 +5,7 @@ from __future__ import annotations
 import dataclasses
 import hashlib
 import math
+import re
 from typing import TYPE_CHECKING, Any
 
 import pytest
@@ -109,16 +110,13 @@ def test_liquids(tmp_path: Path) -> None:
         pytest.param(
             lambda t: semicolons(t).replace("\n", ";;\r\n").encode(), id="semicolons CRLF"
         ),
-        pytest.param(lambda t: t.replace(",", " ,\t").encode(), id="spaces round cells"),
+        pytest.param(lambda t: re.sub(",(?! )", " ,\t", t).encode(), id="spaces round cells"),
         pytest.param(lambda t: t.replace(" [", "  [ ").replace("]", " ]").encode(), id="headings"),
     ],
 )
 def test_every_dialect_gives_the_same_record(tmp_path: Path, dialect: Any) -> None:
     other = {n: dialect(t) if n.endswith(".csv") else t for n, t in SMALL.items()}
     found, expected = read(tmp_path / "other", other), read(tmp_path / "plain", SMALL)
-    if dialect("a,b\n").startswith(b"a ,"):  # the blank inside the quoted certificate changes too
-        other["weights.csv"] = SMALL["weights.csv"]
-        found = read(tmp_path / "again", other)
     assert content(found) == content(expected)
     assert found.digest != expected.digest
 

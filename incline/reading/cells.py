@@ -2,30 +2,26 @@
 
 from __future__ import annotations
 
-import re
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, TypeVar
 
 from incline.errors import Where
 from incline.reading.collect import BAD, NOTHING, Sign, nearest, quoted, sign_defect
 from incline.units import (
-    FRACTION,
     Quantity,
     QuantityError,
-    factor,
     parse_quantity,
     parse_transverse,
 )
 
 if TYPE_CHECKING:
-    from collections.abc import Iterable, Sequence
+    from collections.abc import Sequence
 
     from incline.reading.collect import Collector
     from incline.reading.csvtable import RawTable
 
-__all__ = ["Column", "Row", "Sheet", "open_sheet"]
+__all__ = ["Column", "Placed", "Row", "Sheet"]
 
-_HEADING = re.compile(r"([^\[\]]*)(?:\[([^\[\]]*)\])?")
 _Word = TypeVar("_Word", bound=str)
 
 
@@ -35,7 +31,9 @@ class Column:
 
     ``required`` columns must stand in the header; whether a cell may be blank is the reader's
     business. ``bare`` columns need no unit (a weight in a mean); ``loose`` columns keep the unit
-    as written, for the reader to judge.
+    as written, for the reader to judge. Beside a ``stated`` column may stand one for its
+    uncertainty, which is ``of`` it; beside a ``derived`` one also where its own cells are blank,
+    since the quantity may be worked out from others.
     """
 
     name: str
@@ -45,10 +43,13 @@ class Column:
     transverse: bool = False
     bare: bool = False
     loose: bool = False
+    stated: bool = False
+    derived: bool = False
+    of: Column | None = None
 
 
 @dataclass(frozen=True, slots=True)
-class _Placed:
+class Placed:
     """A column found in the header; ``unit`` is None for text and for a unit found wrong."""
 
     column: Column
@@ -107,8 +108,8 @@ class Row:
         return None
 
     def missing(self, column: str, expected: str, hint: str = "") -> None:
-        """Collect that a cell is blank, unless its whole column has been found missing."""
-        if column not in self.sheet.absent:
+        """Collect that a cell is blank, unless its column or the rest of its row is known lost."""
+        if column not in self.sheet.absent and self.number not in self.sheet.broken:
             self.fault(column, "cell-missing", NOTHING, expected, hint)
 
     def maybe(self, column: str) -> float | None:
@@ -150,7 +151,7 @@ class Sheet:
     """A table whose header has been understood.
 
     ``placed`` are the columns found, ``absent`` the required ones that were not (their cells give
-    no further defects).
+    no further defects), ``broken`` the rows cut short by a stray quotation mark.
     """
 
     def __init__(self, raw: RawTable, collector: Collector) -> None:
@@ -158,8 +159,9 @@ class Sheet:
         self.header_row = raw.header_row
         self.decimal_comma = raw.decimal_comma
         self.collector = collector
-        self.placed: dict[str, _Placed] = {}
+        self.placed: dict[str, Placed] = {}
         self.absent: set[str] = set()
+        self.broken = raw.broken
         self.rows: tuple[Row, ...] = tuple(Row(self, n, cells) for n, cells in raw.rows)
 
     def has(self, column: str) -> bool:
@@ -189,103 +191,3 @@ class Sheet:
         if not present and required:
             self.lack(names[0], expected)
         return present[0] if present else None
-
-
-def open_sheet(raw: RawTable, columns: Iterable[Column], collector: Collector) -> Sheet:
-    """Match a header against the columns known; every table may have a ``note`` column too.
-
-    A column that is not required and blank in every row counts as not there.
-    """
-    sheet = Sheet(raw, collector)
-    known = {c.name: c for c in (*columns, Column("note"))}
-    for index, heading in enumerate(raw.header):
-        _place(sheet, index, heading, known)
-    for name, column in known.items():
-        if column.required and not sheet.has(name):
-            sheet.lack(name, _heading_of(column))
-        elif sheet.has(name) and not (column.required or column.loose) and _is_blank(sheet, name):
-            del sheet.placed[name]
-    for row in sheet.rows:
-        _check_width(row, len(raw.header))
-    return sheet
-
-
-def _is_blank(sheet: Sheet, column: str) -> bool:
-    """Whether there are rows, and none has anything in the column."""
-    return bool(sheet.rows) and not any(row.raw(column) for row in sheet.rows)
-
-
-def _check_width(row: Row, width: int) -> None:
-    if len(row.cells) <= width:
-        return
-    comma = row.sheet.decimal_comma
-    row.fault(
-        "",
-        "cells-too-many",
-        quoted((";" if comma else ",").join(row.cells[width:])),
-        f"no more than {width} cells, as in the header of row {row.sheet.header_row}",
-        "" if comma else "where commas stand between columns, decimals have a point",
-    )
-
-
-def _place(sheet: Sheet, index: int, heading: str, known: dict[str, Column]) -> None:
-    match = _HEADING.fullmatch(heading)
-    name = " ".join((match[1] if match else heading).split()).casefold()
-    if not heading:
-        if any(index < len(r.cells) and r.cells[index] for r in sheet.rows):
-            found = f"a column without a heading, the {index + 1}th"
-            sheet.fault(
-                "", "column-unknown", found, "a heading over every column that is filled in"
-            )
-        return
-    if match is None or name not in known:
-        hint = nearest(re.split(r"[\[(]", name)[0].strip(), known)
-        if not hint and ("(" in heading or match is None):
-            hint = "a heading is a name and a unit in square brackets, such as mass [t]"
-        expected = "one of " + ", ".join(known)
-        sheet.fault(quoted_name(name), "column-unknown", quoted(heading), expected, hint)
-        return
-    column = known[name]
-    if sheet.has(name):
-        sheet.fault(name, "column-twice", quoted(heading), f"one column {name}")
-        return
-    unit = None if match[2] is None else " ".join(match[2].split())
-    sheet.placed[name] = _Placed(column, index, _checked_unit(sheet, column, heading, unit))
-
-
-def quoted_name(name: str) -> str:
-    """A heading as the column of a `Where`: short and printable."""
-    return quoted(name)[1:-1]
-
-
-def _checked_unit(sheet: Sheet, column: Column, heading: str, unit: str | None) -> str | None:
-    """The unit of a heading; None for text, and after a defect."""
-    if column.loose:
-        return unit or None
-    if column.quantity is None:
-        if unit is not None:
-            sheet.fault(
-                column.name, "unit-unwanted", quoted(heading), f"{column.name} without a unit"
-            )
-        return None
-    if column.bare and not unit:
-        return "1"
-    if not unit:
-        sheet.fault(column.name, "unit-missing", quoted(heading), _heading_of(column))
-        return None
-    try:
-        factor(unit, column.quantity)
-    except QuantityError as error:
-        sheet.collector.add_unreadable(sheet.where(column.name), unit, error)
-        return None
-    return unit
-
-
-def _heading_of(column: Column) -> str:
-    """How the heading of a column is written."""
-    if column.quantity is None:
-        return f"a column {column.name}"
-    first = (
-        "1" if column.quantity is FRACTION else column.quantity.units.split(",")[0].split(" or ")[0]
-    )
-    return f"a column {column.name} with its unit, such as {column.name} [{first}]"

@@ -16,18 +16,23 @@ __all__ = ["RawTable", "decode", "read_table"]
 
 _LINE_END = re.compile(r"\r\n|\r|\n")
 _BYTE_LINE_END = re.compile(rb"\r\n|\r|\n")
+_QUOTED = re.compile(r'"((?:[^"]|"")*+)"[ \t]*')
 _SAVE_AS = 'save the file as "CSV UTF-8"'
 
 
 @dataclass(frozen=True, slots=True)
 class RawTable:
-    """Cells as text, stripped; ``rows`` carry the row number that a spreadsheet shows."""
+    """Cells as text, stripped; ``rows`` carry the row number that a spreadsheet shows.
+
+    ``broken`` are the rows whose cells end early, at a quotation mark without its fellow.
+    """
 
     file: str
     header_row: int
     header: tuple[str, ...]
     rows: tuple[tuple[int, tuple[str, ...]], ...]
     decimal_comma: bool
+    broken: frozenset[int]
 
 
 def decode(file: str, data: bytes, collector: Collector) -> str | None:
@@ -59,55 +64,75 @@ def read_table(file: str, data: bytes, collector: Collector) -> RawTable | None:
     text = decode(file, data, collector)
     if text is None:
         return None
-    header: tuple[int, tuple[str, ...]] | None = None
-    mark = ","
-    rows: list[tuple[int, tuple[str, ...]]] = []
-    for number, line in enumerate(_LINE_END.split(text), start=1):
-        where = Where(file, number)
-        if _is_comment(line, where if header else None, collector):
-            continue
-        if header is None:
-            mark = ";" if ";" in line else ","
-            if mark not in line and "\t" in line:
-                expected = "commas or semicolons between columns"
-                collector.add(where, "file-unreadable", "tabs between columns", expected)
-                return None
-        cells = _split(line, mark, where, collector)
-        if not any(cells):
-            continue
-        if header is None:
-            header = (number, cells)
-        else:
-            rows.append((number, cells))
-    if header is None:
+    lines = enumerate(_LINE_END.split(text), start=1)
+    header_row, line = next(((n, s) for n, s in lines if not _is_blank(s)), (0, ""))
+    where = Where(file, header_row)
+    mark = ";" if ";" in line else ","
+    header, whole = _split(line, mark, where, collector)
+    if mark not in line and "\t" in line:
+        expected = "commas or semicolons between columns"
+        collector.add(where, "file-unreadable", "tabs between columns", expected)
         return None
-    return RawTable(file, header[0], header[1], tuple(rows), mark == ";")
+    if not header_row or not whole:
+        return None
+    rows: list[tuple[int, tuple[str, ...]]] = []
+    broken: set[int] = set()
+    for number, row in lines:
+        where = Where(file, number)
+        if _is_comment(row, where, collector):
+            continue
+        cells, whole = _split(row, mark, where, collector)
+        if not whole:
+            broken.add(number)
+        if any(cells) or not whole:
+            rows.append((number, cells))
+    return RawTable(file, header_row, header, tuple(rows), mark == ";", frozenset(broken))
 
 
-def _is_comment(line: str, where: Where | None, collector: Collector) -> bool:
-    """Whether to pass over a line; a row below the header such as ``#3,oil,...`` is a defect.
+def _is_blank(line: str) -> bool:
+    """Whether a line is a comment or holds nothing but separators.
 
     A spreadsheet may put a comment with a comma in it between quotation marks.
     """
-    start = line.lstrip().removeprefix('"').lstrip()
+    start = line.strip(" \t,;").removeprefix('"').lstrip()
+    return not start or start.startswith("#")
+
+
+def _is_comment(line: str, where: Where, collector: Collector) -> bool:
+    """Whether to pass over a line below the header; a row such as ``#3,oil,...`` is a defect.
+
+    Prose has a space after its commas, rows have none.
+    """
+    start = line.strip().removeprefix('"').lstrip()
     if start and not start.startswith("#"):
         return False
-    if where and re.match(r'#\w[^,;"]*"?[,;]\s*"?[^,;"\s]', start):
+    if re.match(r'#\w[^,;]*[,;](?! ).*[^,;"\s]', start):
         expected = "a row that does not start with #, or a comment that starts with # and a space"
         collector.add(where, "value-wrong", quoted(line.strip()), expected)
     return True
 
 
-def _split(line: str, mark: str, where: Where, collector: Collector) -> tuple[str, ...]:
-    """Cells of one line. A quotation mark counts only as the first thing in a cell."""
+def _split(
+    line: str, mark: str, where: Where, collector: Collector
+) -> tuple[tuple[str, ...], bool]:
+    """Cells of one line, and whether it could be read to its end.
+
+    A quotation mark counts only as the first thing in a cell.
+    """
     cells: list[str] = []
     place = 0
+    whole = True
     while True:
         start = place
         while start < len(line) and line[start] in " \t":
             start += 1
         if line[start : start + 1] == '"':
-            cell, place = _quoted_cell(line, mark, start, where, collector)
+            match = _QUOTED.match(line, start)
+            whole = bool(match and line[match.end() : match.end() + 1] in ("", mark))
+            if not match or not whole:
+                _stray_mark(line[start:], where, collector)
+                break
+            cell, place = match[1].replace('""', '"'), match.end()
         else:
             end = line.find(mark, place)
             place = len(line) if end < 0 else end
@@ -118,21 +143,14 @@ def _split(line: str, mark: str, where: Where, collector: Collector) -> tuple[st
         place += 1
     while cells and not cells[-1]:
         cells.pop()
-    return tuple(cells)
+    return tuple(cells), whole
 
 
-def _quoted_cell(
-    line: str, mark: str, start: int, where: Where, collector: Collector
-) -> tuple[str, int]:
-    """A cell between quotation marks (doubled inside), and where the mark after it stands."""
-    match = re.compile(r'"((?:[^"]|"")*+)"[ \t]*').match(line, start)
-    if match and line[match.end() : match.end() + 1] in ("", mark):
-        return match[1].replace('""', '"'), match.end()
+def _stray_mark(rest: str, where: Where, collector: Collector) -> None:
     collector.add(
         where,
         "file-quoting",
-        quoted(line[start:]),
+        quoted(rest),
         "a quotation mark at the start of a cell and one at its end, on the same line",
         "a mark for inches inside such a cell is written twice",
     )
-    return "", len(line)

@@ -9,9 +9,9 @@ from pathlib import Path
 from typing import TYPE_CHECKING, TypeVar
 
 from incline.errors import Defect, FieldDataError, Where
-from incline.reading.cells import open_sheet
 from incline.reading.collect import Collector, quoted
 from incline.reading.csvtable import read_table
+from incline.reading.headings import open_sheet
 from incline.reading.hydrostatics import TABLE_COLUMNS, read_hydrostatics
 from incline.reading.ledger import (
     CHANGE_COLUMNS,
@@ -164,7 +164,7 @@ class _Reader:
         head, frame = self.head, self.head.frame
         weights, shifts, by_moment = self._weights()
         drafts, assumed = self._drafts()
-        tanks = self._rows("tanks.csv", read_tanks)
+        tanks, partial = self._tanks()
         return Trial(
             folder=folder,
             digest=_digest(self.files),
@@ -182,7 +182,7 @@ class _Reader:
             items=self._items(weights, tanks),
             changes=self._rows("changes.csv", read_changes),
             table=read_hydrostatics(self.sheets["hydrostatics.csv"], frame),
-            remarks=(*remarks, *by_moment, *assumed),
+            remarks=(*remarks, *by_moment, *assumed, *partial),
         )
 
     def _rows(
@@ -236,6 +236,10 @@ class _Reader:
         check_drafts(sheet, drafts, self.head.frame)
         return drafts, remarks
 
+    def _tanks(self) -> tuple[tuple[Tank, ...], list[str]]:
+        sheet = self.sheets["tanks.csv"]
+        return read_tanks(sheet, self.head.frame) if sheet else ((), [])
+
     def _items(self, weights: Sequence[Weight], tanks: Sequence[Tank]) -> tuple[Item, ...]:
         sheet = self.sheets["ledger.csv"]
         if sheet is None:
@@ -243,9 +247,9 @@ class _Reader:
         items = read_items(sheet, self.head.frame)
         people = [p.name for p in self.head.people if p.mass is not None]
         others = {
-            **dict.fromkeys((w.id for w in weights), "weights.csv"),
-            **dict.fromkeys((t.name for t in tanks), "tanks.csv"),
-            **dict.fromkeys(people, "trial.toml, among the people aboard"),
+            **dict.fromkeys((w.id for w in weights), "a test weight"),
+            **dict.fromkeys((t.name for t in tanks), "a tank"),
+            **dict.fromkeys(people, "a person aboard"),
         }
         check_names(sheet, items, others)
         return items

@@ -107,6 +107,7 @@ def read_hydrostatics(sheet: Sheet | None, frame: Frame) -> HydrostaticTable:
         bml=grid("bml") if choice.bml else None,
         bml_basis=_BASIS.get(choice.bml or "", ""),
         where=Where(sheet.file),
+        stated=frame.table_stated,
     )
 
 
@@ -118,7 +119,7 @@ def _density(sheet: Sheet, choice: _Choice, frame: Frame) -> float:
     if frame.table_density is not None or not massive:
         return BAD if frame.table_density is None else frame.table_density
     where = Where("trial.toml", 0, "hydrostatics.density")
-    expected = f"the density that {' and '.join(massive)} in {sheet.file} are for"
+    expected = f"the density of the water, for {' and '.join(massive)} in {sheet.file}"
     sheet.collector.add(where, "key-missing", NOTHING, expected)
     return BAD
 
@@ -183,7 +184,7 @@ def _check_ascending(group: list[_Entry], volume: str) -> None:
             (volume, below.volume, entry.volume),
         ):
             if now <= before:
-                found = f"{quoted(entry.row.raw(column))} below {quoted(below.row.raw(column))}"
+                found = f"{quoted(entry.row.raw(column))} after {quoted(below.row.raw(column))}"
                 expected = f"{column} rising from row to row at each trim"
                 entry.row.fault(column, "table-not-monotonic", found, expected)
 

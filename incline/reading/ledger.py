@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING, Literal
 from incline.errors import Where
 from incline.reading.cells import Column
 from incline.reading.collect import Sign, quoted
+from incline.reading.uncertainty import of_row
 from incline.record import Change, Item, Point
 from incline.units import LENGTH, MASS
 
@@ -19,18 +20,18 @@ if TYPE_CHECKING:
 __all__ = ["CHANGE_COLUMNS", "ITEM_COLUMNS", "check_names", "read_changes", "read_items"]
 
 _CENTRE = (
-    Column("mass", MASS, required=True, sign=Sign.POSITIVE),
-    Column("x", LENGTH, required=True),
-    Column("y", LENGTH, required=True, transverse=True),
-    Column("z", LENGTH, required=True),
+    Column("mass", MASS, required=True, sign=Sign.POSITIVE, stated=True),
+    Column("x", LENGTH, required=True, stated=True),
+    Column("y", LENGTH, required=True, transverse=True, stated=True),
+    Column("z", LENGTH, required=True, stated=True),
 )
 ITEM_COLUMNS = (
     Column("action", required=True),
     Column("item", required=True),
     *_CENTRE,
-    Column("to x", LENGTH),
-    Column("to y", LENGTH, transverse=True),
-    Column("to z", LENGTH),
+    Column("to x", LENGTH, stated=True),
+    Column("to y", LENGTH, transverse=True, stated=True),
+    Column("to z", LENGTH, stated=True),
     Column("basis"),
 )
 CHANGE_COLUMNS = (Column("change", required=True), Column("item", required=True), *_CENTRE)
@@ -55,6 +56,7 @@ def read_items(sheet: Sheet, frame: Frame) -> tuple[Item, ...]:
                 to=_destination(row, action, frame),
                 basis=row.text("basis"),
                 where=row.where(),
+                stated=of_row(row, "mass", "x", "y", "z", *_TO),
             )
         )
     return tuple(items)
@@ -99,13 +101,14 @@ def read_changes(sheet: Sheet, frame: Frame) -> tuple[Change, ...]:
                 mass=row.need("mass"),
                 centre=_centre(row, ("x", "y", "z"), frame),
                 where=row.where(),
+                stated=of_row(row, "mass", "x", "y", "z"),
             )
         )
     return tuple(changes)
 
 
 def check_names(sheet: Sheet, items: Iterable[Item], others: Mapping[str, str]) -> None:
-    """What comes into the ledger by itself must not be listed again; ``others``: name -> file."""
+    """What comes into the ledger by itself must not be listed again; ``others``: name -> what."""
     taken = {name.casefold(): place for name, place in others.items() if name}
     for item in items:
         place = taken.get(item.name.casefold())
@@ -114,6 +117,6 @@ def check_names(sheet: Sheet, items: Iterable[Item], others: Mapping[str, str]) 
                 Where(sheet.file, item.where.row, "item"),
                 "item-listed-twice",
                 quoted(item.name),
-                f"an item that is not in {place}",
-                f"{place} comes into the ledger by itself; another thing needs another name",
+                f"an item that is not {place}",
+                "that comes into the ledger by itself; another thing needs another name",
             )

@@ -8,23 +8,27 @@ from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
 from incline.errors import Where
+from incline.reading.assumptions import read_assumed, read_correlations
 from incline.reading.collect import BAD, Sign, quoted
 from incline.reading.tomlfile import FILE, Document, shown
-from incline.record import Device, Occasion, Person, Point, Settings, Vessel
-from incline.units import DENSITY, FRACTION, LENGTH, MASS
+from incline.reading.uncertainty import of_key
+from incline.record import Device, Occasion, Person, Point, Settings, Stated, Vessel
+from incline.units import ANGLE, DENSITY, FRACTION, LENGTH, MASS
 
 if TYPE_CHECKING:
+    from collections.abc import Sequence
     from typing import Literal
 
     from incline.reading.collect import Collector
     from incline.reading.tomlfile import Section
+    from incline.record import Statements
 
 __all__ = ["LENGTH_KEYS", "Frame", "Head", "read_head"]
 
 _BASE, _KEEL = "baseline", "underside of keel"
 _SECTIONS = (
     "vessel", "test", "axes", "output", "rules", "method", "drafts", "hydrostatics", "density",
-    "devices", "people",
+    "devices", "people", "limits", "uncertainty", "correlations",
 )  # fmt: skip
 LENGTH_KEYS = {"pendulum": "length", "u-tube": "span", "inclinometer": ""}
 """The key that gives the length by which a device's readings are divided."""
@@ -36,7 +40,7 @@ class Frame:
 
     ``x_shift`` [m] is added to every x. ``marks_down`` and ``table_down`` [m] are taken off drafts
     read at the marks and drafts of the hydrostatic table. ``table_density`` and ``relative_to``
-    [t/m3] are None when not given.
+    [t/m3] are None when not given. ``table_stated`` are the table's uncertainties.
     """
 
     lpp: float
@@ -46,6 +50,7 @@ class Frame:
     table_down: float
     table_density: float | None
     relative_to: float | None
+    table_stated: Statements
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -71,6 +76,8 @@ def read_head(data: bytes | None, collector: Collector) -> Head:
         where, expected = Where(FILE, 0, "devices"), "a section [[devices]] for each device"
         collector.add(where, "key-missing", "no devices", expected)
     people = tuple(_person(s, frame.x_shift) for s in document.sections("people"))
+    _check_ids([d.id for d in devices], "devices", "id", collector)
+    _check_ids([p.name for p in people], "people", "name", collector)
     head = Head(
         vessel=vessel,
         occasion=_occasion(document.section("test")),
@@ -82,6 +89,16 @@ def read_head(data: bytes | None, collector: Collector) -> Head:
     )
     document.close(_SECTIONS)
     return head
+
+
+def _check_ids(names: Sequence[str], section: str, key: str, collector: Collector) -> None:
+    folded = [name.casefold() for name in names]
+    for n, name in enumerate(folded, start=1):
+        first = folded.index(name) + 1
+        if name and first != n:
+            where = Where(FILE, 0, f"{section}[{n}].{key}")
+            expected = f"{key} unlike the others; {section}[{first}] has the same"
+            collector.add(where, "id-twice", quoted(names[n - 1]), expected)
 
 
 def _vessel(section: Section) -> Vessel:
@@ -134,7 +151,7 @@ def _choices(document: Document, vessel: Vessel) -> tuple[Settings, Frame]:
     axes, output = document.section("axes"), document.section("output")
     rules, method = document.section("rules"), document.section("method")
     drafts, table = document.section("drafts"), document.section("hydrostatics")
-    density = document.section("density")
+    density, limits = document.section("density"), document.section("limits")
     marks_from = drafts.choice("marks_from", (_BASE, _KEEL))
     table_from = table.choice("drafts_from", (_BASE, _KEEL), _BASE)
     keel = _keel_thickness(drafts, needed=_KEEL in (marks_from, table_from))
@@ -149,6 +166,9 @@ def _choices(document: Document, vessel: Vessel) -> tuple[Settings, Frame]:
         allowance=_allowance(table),
         keel_thickness=keel if marks_from == _KEEL else 0.0,
         interpolation=method.choice("interpolation", ("cubic", "linear"), "cubic"),
+        kg_limit=limits.maybe("kg", LENGTH, Sign.POSITIVE),
+        assumed=read_assumed(document.section("uncertainty")),
+        correlations=read_correlations(document.sections("correlations")),
     )
     frame = Frame(
         lpp=vessel.lpp,
@@ -158,10 +178,24 @@ def _choices(document: Document, vessel: Vessel) -> tuple[Settings, Frame]:
         table_down=keel if table_from == _KEEL else 0.0,
         table_density=_given(table, "density"),
         relative_to=_given(density, "relative_to"),
+        table_stated=_table_stated(table),
     )
-    for section in (axes, output, rules, method, drafts, table, density):
+    for section in (axes, output, rules, method, drafts, table, density, limits):
         section.close()
     return settings, frame
+
+
+def _table_stated(section: Section) -> dict[str, Stated]:
+    """Uncertainties of the hydrostatic table: volume as a fraction, KM and LCB [m]."""
+    return _present(
+        volume=of_key(section, "volume", FRACTION, 1.0, Sign.POSITIVE),
+        km=of_key(section, "km", LENGTH, BAD, share=False),
+        lcb=of_key(section, "lcb", LENGTH, BAD, share=False),
+    )
+
+
+def _present(**stated: Stated | None) -> dict[str, Stated]:
+    return {key: s for key, s in stated.items() if s is not None}
 
 
 def _given(section: Section, key: str) -> float | None:
@@ -202,8 +236,13 @@ def _device(section: Section) -> Device:
     kind: Literal["pendulum", "u-tube", "inclinometer"] = section.choice(
         "kind", ("pendulum", "u-tube", "inclinometer")
     )
-    keys = tuple(LENGTH_KEYS.values()) if "kind" in section.failed else (LENGTH_KEYS[kind],)
-    lengths = [section.maybe(k, LENGTH, Sign.POSITIVE) for k in keys if k]
+    known = "kind" not in section.failed
+    keys = [k for k in ((LENGTH_KEYS[kind],) if known else LENGTH_KEYS.values()) if k]
+    lengths = [section.maybe(k, LENGTH, Sign.POSITIVE) for k in keys]
+    stated = [
+        of_key(section, k, LENGTH, value, Sign.POSITIVE)
+        for k, value in zip(keys, lengths, strict=True)
+    ]
     device = Device(
         id=section.text("id", required=True),
         kind=kind,
@@ -211,24 +250,47 @@ def _device(section: Section) -> Device:
         place=section.text("place"),
         calibration=section.text("calibration"),
         where=Where(FILE, 0, section.path),
+        resolution=_resolution(section, kind, known=known),
+        stated=_present(
+            length=stated[0] if stated else None,
+            scale=_scale(section) if kind == "inclinometer" or not known else None,
+        ),
     )
     section.close()
     return device
+
+
+def _resolution(section: Section, kind: str, *, known: bool) -> float | None:
+    """The step of a device's readings: a length [m], or an angle [rad]."""
+    if not known:
+        section.value("resolution")  # a key that is known, though not what it should hold
+        return None
+    quantity = ANGLE if kind == "inclinometer" else LENGTH
+    return section.maybe("resolution", quantity, Sign.POSITIVE)
+
+
+def _scale(section: Section) -> Stated | None:
+    """The uncertainty of an inclinometer's scale, a fraction."""
+    return of_key(section, "scale", FRACTION, 1.0, Sign.POSITIVE)
 
 
 def _person(section: Section, x_shift: float) -> Person:
     name = section.text("name", required=True)
     role = section.text("role", required=True)
     aboard = [k for k in ("mass", "x", "y", "z") if section.value(k) is not None]
-    mass, centre = None, None
+    mass = x = y = z = centre = None
     if aboard:
         mass = section.need("mass", MASS, Sign.POSITIVE)
-        centre = Point(
-            section.need("x", LENGTH) + x_shift,
-            section.need("y", LENGTH, transverse=True),
-            section.need("z", LENGTH),
-        )
-    section.close()
-    return Person(
-        name=name, role=role, mass=mass, centre=centre, where=Where(FILE, 0, section.path)
+        x = section.need("x", LENGTH)
+        y = section.need("y", LENGTH, transverse=True)
+        z = section.need("z", LENGTH)
+        centre = Point(x + x_shift, y, z)
+    stated = _present(
+        mass=of_key(section, "mass", MASS, mass, Sign.POSITIVE),
+        x=of_key(section, "x", LENGTH, x),
+        y=of_key(section, "y", LENGTH, y),
+        z=of_key(section, "z", LENGTH, z),
     )
+    section.close()
+    where = Where(FILE, 0, section.path)
+    return Person(name=name, role=role, mass=mass, centre=centre, where=where, stated=stated)

@@ -8,7 +8,8 @@ from typing import TYPE_CHECKING, Literal
 
 from incline.reading.cells import Column
 from incline.reading.collect import BAD, Sign, quoted
-from incline.record import Point, Tank
+from incline.reading.uncertainty import combined, of_row, written
+from incline.record import Point, Stated, Tank
 from incline.units import DENSITY, LENGTH, MASS, MOMENT, SECOND_MOMENT, VOLUME, to_inside
 
 if TYPE_CHECKING:
@@ -21,14 +22,14 @@ TANK_COLUMNS = (
     Column("tank", required=True),
     Column("contents", required=True),
     Column("state", required=True),
-    Column("density", DENSITY, sign=Sign.POSITIVE),
+    Column("density", DENSITY, sign=Sign.POSITIVE, stated=True),
     Column("level", LENGTH, sign=Sign.NOT_NEGATIVE),
-    Column("volume", VOLUME, sign=Sign.NOT_NEGATIVE),
-    Column("mass", MASS, sign=Sign.NOT_NEGATIVE),
-    Column("x", LENGTH, required=True),
-    Column("y", LENGTH, required=True, transverse=True),
-    Column("z", LENGTH, required=True),
-    Column("fsm", MOMENT, sign=Sign.NOT_NEGATIVE),
+    Column("volume", VOLUME, sign=Sign.NOT_NEGATIVE, stated=True),
+    Column("mass", MASS, sign=Sign.NOT_NEGATIVE, stated=True, derived=True),
+    Column("x", LENGTH, required=True, stated=True),
+    Column("y", LENGTH, required=True, transverse=True, stated=True),
+    Column("z", LENGTH, required=True, stated=True),
+    Column("fsm", MOMENT, sign=Sign.NOT_NEGATIVE, stated=True, derived=True),
     Column("second moment", SECOND_MOMENT, sign=Sign.NOT_NEGATIVE),
     Column("length", LENGTH, sign=Sign.POSITIVE),
     Column("breadth", LENGTH, sign=Sign.POSITIVE),
@@ -39,9 +40,10 @@ _FSM_AGREES = 0.01
 _State = Literal["empty", "pressed full", "slack"]
 
 
-def read_tanks(sheet: Sheet, frame: Frame) -> tuple[Tank, ...]:
-    """The tanks; two of one name are a defect."""
+def read_tanks(sheet: Sheet, frame: Frame) -> tuple[tuple[Tank, ...], list[str]]:
+    """The tanks, and remarks on what they state; two tanks of one name are a defect."""
     tanks: list[Tank] = []
+    remarks: list[str] = []
     seen: dict[str, int] = {}
     states: tuple[_State, ...] = ("empty", "pressed full", "slack")
     for row in sheet.rows:
@@ -66,9 +68,41 @@ def read_tanks(sheet: Sheet, frame: Frame) -> tuple[Tank, ...]:
                 fsm=fsm,
                 fsm_basis=basis,
                 where=row.where(),
+                stated=_stated(row, name, state, {"mass": mass, "fsm": fsm}, remarks),
             )
         )
-    return tuple(tanks)
+    return tuple(tanks), remarks
+
+
+def _stated(
+    row: Row, name: str, state: _State | None, found: dict[str, float], remarks: list[str]
+) -> dict[str, Stated]:
+    """The uncertainties of a tank; ``found`` are the mass [t] and free-surface moment [t m]."""
+    nothing = {"empty": ("mass", "volume", "fsm"), "pressed full": ("fsm",)}.get(state or "", ())
+    for column in written(row, *nothing):
+        amount = row.maybe(column)
+        if amount is not None and amount > 0.0:
+            expected = f"no uncertainty of what a tank that is {state} does not have"
+            _contradiction(row, column, quoted(row.raw(column)), expected)
+    if state == "empty":
+        return {}
+    said = of_row(row, "mass", "volume", "density", "fsm", "x", "y", "z", computed=found)
+    if "mass" in said or (row.raw("mass") and not row.raw("volume")):
+        return said
+    parts = [
+        Stated(said[key].u / value, said[key].shape)
+        for key in ("volume", "density")
+        if key in said and (value := row.maybe(key))
+    ]
+    share = combined(parts)
+    if share is not None:
+        said["mass"] = Stated(share.u * found["mass"], share.shape)
+    if len(parts) == 1:
+        only = "volume" if "volume" in said else "density"
+        remarks.append(
+            f"The uncertainty of the mass in tank {name} is that stated of its {only} alone."
+        )
+    return said
 
 
 def _liquid(row: Row, state: _State | None, frame: Frame) -> tuple[float, Point | None]:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 import re
 import tomllib
 from typing import TYPE_CHECKING, TypeVar
@@ -136,6 +137,21 @@ class Section:
             self.missing(key, f"a {quantity.name} with its unit, {quantity.units}")
             return BAD
         return value
+
+    def number(self, key: str, low: int, high: int) -> float | None:
+        """A number without a unit or quotation marks; None when absent, BAD after a defect."""
+        found = self.value(key)
+        if found is None:
+            return None
+        expected = f"a number from {low} to {high}, without quotation marks"
+        if isinstance(found, int | float) and not isinstance(found, bool):
+            if low <= found <= high:
+                return float(found)
+            if isinstance(found, float) and not math.isfinite(found):
+                self.fault(key, "number-not-finite", quoted(shown(found)), expected)
+                return BAD
+        self.fault(key, "value-wrong", quoted(shown(found)), expected)
+        return BAD
 
     def close(self) -> None:
         """Collect every key that was never asked for; call it last."""

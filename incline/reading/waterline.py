@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 import itertools
+from dataclasses import replace
 from typing import TYPE_CHECKING
 
 from incline.errors import Where
 from incline.reading.cells import Column
 from incline.reading.collect import BAD, NOTHING, Sign, quoted
+from incline.reading.uncertainty import combined, of_row, written
 from incline.record import DraftReading, Sample
 from incline.units import DENSITY, FRACTION, LENGTH, TEMPERATURE
 
@@ -17,6 +19,7 @@ if TYPE_CHECKING:
 
     from incline.reading.cells import Row, Sheet
     from incline.reading.settings import Frame
+    from incline.record import Stated
 
     Side = Literal["P", "S", "C"]
 
@@ -25,18 +28,23 @@ __all__ = ["DRAFT_COLUMNS", "SAMPLE_COLUMNS", "check_drafts", "read_drafts", "re
 DRAFT_COLUMNS = (
     Column("x", LENGTH, required=True),
     Column("side", required=True),
-    Column("draft", LENGTH, sign=Sign.POSITIVE),
-    Column("freeboard", LENGTH),
-    Column("point height", LENGTH),
+    Column("draft", LENGTH, sign=Sign.POSITIVE, stated=True),
+    Column("freeboard", LENGTH, stated=True),
+    Column("point height", LENGTH, stated=True),
     Column("y", LENGTH, transverse=True),
 )
 SAMPLE_COLUMNS = (
     Column("place", required=True),
     Column("depth", LENGTH, sign=Sign.NOT_NEGATIVE),
-    Column("density", DENSITY, sign=Sign.POSITIVE),
-    Column("relative density", FRACTION, sign=Sign.POSITIVE),
+    Column("density", DENSITY, sign=Sign.POSITIVE, stated=True),
+    Column("relative density", FRACTION, sign=Sign.POSITIVE, stated=True),
     Column("temperature", TEMPERATURE),
     Column("share", FRACTION, sign=Sign.POSITIVE, bare=True),
+)
+_ASSUMED = "{} of {} draft readings have no distance off the centreplane: half the beam was taken."
+_HALF_STATED = (
+    "{} of {} draft readings state an uncertainty of only one of the freeboard and the height of"
+    " its point: the other counts as exact."
 )
 _APART = 0.01
 """Marks closer than this share of the length stand at one place."""
@@ -64,13 +72,32 @@ def read_drafts(sheet: Sheet, frame: Frame) -> tuple[tuple[DraftReading, ...], l
                 draft=draft,
                 freeboard=freeboard,
                 where=row.where(),
+                stated=_draft_stated(row, draft),
             )
         )
-    remarks = [
-        f"{assumed} of {len(readings)} draft readings have no distance off the centreplane:"
-        " half the beam was taken."
-    ]
-    return tuple(readings), remarks if assumed else []
+    remarks = [_ASSUMED.format(assumed, len(readings))] if assumed else []
+    half = sum(_is_half_stated(row) for row in sheet.rows)
+    if half:
+        remarks.append(_HALF_STATED.format(half, len(readings)))
+    return tuple(readings), remarks
+
+
+def _is_half_stated(row: Row) -> bool:
+    """Whether a freeboard has an uncertainty and the height of its point none, or the reverse."""
+    parts = bool(written(row, "freeboard")), bool(written(row, "point height"))
+    return parts[0] != parts[1]
+
+
+def _draft_stated(row: Row, draft: float) -> dict[str, Stated]:
+    """The uncertainty of a draft: its own, or that of its freeboard and the height of its point."""
+    said = combined(of_row(row, "draft", "freeboard", "point height").values())
+    if said is None:
+        return {}
+    parts = written(row, "freeboard", "point height")
+    if parts and 0.0 < draft <= said.u:
+        found, expected = quoted(row.raw(parts[0])), "an uncertainty smaller than the draft itself"
+        row.fault(parts[0], "uncertainty-too-large", found, expected)
+    return {"draft": said}
 
 
 def _off_centre(row: Row, side: Side | None) -> float | None:
@@ -156,6 +183,13 @@ def read_samples(sheet: Sheet, frame: Frame) -> tuple[Sample, ...]:
                 temperature=row.maybe("temperature"),
                 share=1.0 if share is None else share,
                 where=row.where(),
+                stated=_density_stated(row, relative_to),
             )
         )
     return tuple(samples)
+
+
+def _density_stated(row: Row, relative_to: float) -> dict[str, Stated]:
+    """The uncertainty of a sample's density [t/m3], from that of its relative density too."""
+    said = combined(of_row(row, "density", "relative density").values())
+    return {"density": replace(said, u=said.u * relative_to)} if said else {}

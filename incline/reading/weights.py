@@ -11,6 +11,7 @@ from typing import TYPE_CHECKING
 from incline.errors import Where
 from incline.reading.cells import Column
 from incline.reading.collect import BAD, Sign, nearest, quoted
+from incline.reading.uncertainty import of_row, written
 from incline.record import Move, Shift, Weight
 from incline.units import LENGTH, MASS, MOMENT
 
@@ -27,19 +28,19 @@ __all__ = [
 
 WEIGHT_COLUMNS = (
     Column("id", required=True),
-    Column("mass", MASS, required=True, sign=Sign.POSITIVE),
+    Column("mass", MASS, required=True, sign=Sign.POSITIVE, stated=True),
     Column("certificate", required=True),
-    Column("x", LENGTH, required=True),
-    Column("z", LENGTH, required=True),
+    Column("x", LENGTH, required=True, stated=True),
+    Column("z", LENGTH, required=True, stated=True),
 )
 SHIFT_COLUMNS = (
     Column("shift", required=True),
     Column("time"),
     Column("weight"),
-    Column("y", LENGTH, transverse=True),
-    Column("x", LENGTH),
-    Column("z", LENGTH),
-    Column("moment", MOMENT, transverse=True),
+    Column("y", LENGTH, transverse=True, stated=True),
+    Column("x", LENGTH, stated=True),
+    Column("z", LENGTH, stated=True),
+    Column("moment", MOMENT, transverse=True, stated=True),
 )
 _NEAR = 1e-9
 """Moments closer than this share of the largest are one moment: rounding of the arithmetic."""
@@ -57,6 +58,7 @@ def read_weights(sheet: Sheet, frame: Frame) -> tuple[Weight, ...]:
             x=row.need("x") + frame.x_shift,
             z=row.need("z"),
             where=row.where(),
+            stated=of_row(row, "mass", "x", "z"),
         )
         before = seen.setdefault(weight.id.casefold(), row.number)
         if before != row.number and weight.id:
@@ -89,7 +91,10 @@ def shift_number(row: Row) -> int | None:
 
 def read_shifts(sheet: Sheet, frame: Frame) -> ShiftTable:
     """The shifts in the order of the file, by moves of weights or by moments."""
-    table = ShiftTable(by_moment=_by_moment(sheet))
+    by_moment = _by_moment(sheet)
+    if by_moment is None:
+        return ShiftTable(whole=False)
+    table = ShiftTable(by_moment=by_moment)
     groups: list[tuple[int, list[Row]]] = []
     for row in sheet.rows:
         number = shift_number(row)
@@ -109,12 +114,14 @@ def read_shifts(sheet: Sheet, frame: Frame) -> ShiftTable:
                 moves=() if table.by_moment else _moves(rows, frame),
                 moment=rows[0].need("moment") if table.by_moment else None,
                 where=rows[0].where(),
+                stated=of_row(rows[0], "moment") if table.by_moment else {},
             )
         )
     return table
 
 
-def _by_moment(sheet: Sheet) -> bool:
+def _by_moment(sheet: Sheet) -> bool | None:
+    """Whether moments stand in place of moves; None after a defect that leaves it open."""
     placed = [n for n in ("weight", "y", "x", "z") if sheet.has(n)]
     expected = "either weight and y, or moment"
     if not sheet.has("moment"):
@@ -124,6 +131,7 @@ def _by_moment(sheet: Sheet) -> bool:
         return False
     if placed:
         sheet.fault("moment", "column-twice", f"moment beside {placed[0]}", expected)
+        return None
     return True
 
 
@@ -158,7 +166,7 @@ def _moves(rows: list[Row], frame: Frame) -> tuple[Move, ...]:
     for row in rows:
         name = row.text("weight")
         if not name:
-            if any(row.raw(c) for c in "yxz"):
+            if any(row.raw(c) for c in "yxz") or written(row, "y", "x", "z"):
                 row.missing("weight", "the id of the weight that stands there")
             continue
         if any(m.weight == name for m in moves):
@@ -172,6 +180,7 @@ def _moves(rows: list[Row], frame: Frame) -> tuple[Move, ...]:
                 x=None if x is None else x + frame.x_shift,
                 z=row.maybe("z"),
                 where=row.where(),
+                stated=of_row(row, "y", "x", "z"),
             )
         )
     return tuple(moves)
@@ -217,15 +226,14 @@ def check_moments(sheet: Sheet, weights: Sequence[Weight], shifts: Sequence[Shif
 
 
 def _moments(weights: Sequence[Weight], shifts: Sequence[Shift]) -> list[float]:
-    """Moments about the start [t m] to starboard; BAD where a weight is not known."""
+    """Moments about the start [t m] to starboard; BAD where a weight or its start is not known."""
     mass = {w.id: w.mass for w in weights}
-    start: dict[str, float] = {}
+    start = {move.weight: move.y for shift in shifts[:1] for move in shift.moves}
     now: dict[str, float] = {}
     found: list[float] = []
     for shift in shifts:
         for move in shift.moves:
-            start.setdefault(move.weight, move.y)
             now[move.weight] = move.y
-        moment = sum(mass.get(w, BAD) * (y - start[w]) for w, y in now.items())
+        moment = sum(mass.get(w, BAD) * (y - start.get(w, BAD)) for w, y in now.items())
         found.append(moment if shift.moment is None else shift.moment)
     return found

@@ -15,6 +15,7 @@ from incline.report.lightship import all_counted, to_lightship
 from incline.report.particulars import conventions, vessel_and_test
 from incline.report.readings import devices_and_readings
 from incline.report.show import Show
+from incline.report.uncertainty import uncertainty
 from incline.report.weights import weights_and_moments
 
 if TYPE_CHECKING:
@@ -36,6 +37,7 @@ _SECTIONS: tuple[tuple[str, Callable[[Sheet], list[Any]]], ...] = (
     ("Heel against moment", heel_fit),
     ("From GM to the centre of gravity", centre_of_gravity),
     ("From as inclined to lightship", to_lightship),
+    ("Uncertainty", uncertainty),
     ("With the excluded readings counted", all_counted),
     ("Remarks", remarks),
     ("Cautions, and who decides", cautions),
@@ -65,6 +67,6 @@ def _story(sheet: Sheet) -> list[Any]:
         body = section(sheet)
         if body:
             number += 1
-            need = _ROOM_FOR_TEXT if section in (conventions, remarks) else _ROOM
+            need = _ROOM_FOR_TEXT if section in (conventions, uncertainty, remarks) else _ROOM
             flow += [*heading(number, title, need), *body]
     return flow

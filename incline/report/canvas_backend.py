@@ -57,7 +57,7 @@ class CanvasRenderer(RendererBase):
         width = stringWidth(clean(s), _face(prop), size)
         return width, (_ASCENT + _DESCENT) * size, _DESCENT * size
 
-    def draw_text(  # noqa: D102, PLR0917 - as the base class has it
+    def draw_text(  # noqa: D102 - as the base class has it
         self,
         gc: Any,  # noqa: ANN401
         x: float,

@@ -28,7 +28,7 @@ __all__ = ["PANELS_IN_ROW", "common_plot", "device_plots", "residual_plot"]
 
 PANELS_IN_ROW = 3
 _THOUSANDTHS = 1000.0
-_LABEL = 26
+_LABEL = 22
 """Most characters of a device's name in a plot."""
 
 

@@ -80,7 +80,7 @@ def _bend_at(line: Waterline, share: float) -> float:
     return (line.deflection or 0.0) * (1.0 - (2.0 * share - 1.0) ** 2)
 
 
-def _draw(  # noqa: PLR0917 - one panel, all of it needed
+def _draw(
     axes: Axes,
     profile: _Profile,
     line: Waterline,

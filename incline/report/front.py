@@ -2,20 +2,23 @@
 
 from __future__ import annotations
 
-import math
 from typing import TYPE_CHECKING, Any
 
 from reportlab.platypus import Paragraph, Table
 
+from incline.defaults import LABEL
+from incline.report.amounts import RESULTS, Quoted, budget_of, freedom
 from incline.report.document import Sheet, note
 from incline.report.fonts import REGULAR
-from incline.report.show import MISSING, NOT_DETERMINED, NOT_RECORDED, Kind
+from incline.report.monte_carlo import intervals, limit
+from incline.report.show import MISSING, NOT_DETERMINED, NOT_RECORDED
 from incline.report.styles import INK, RULE, STYLES
 from incline.report.tables import facts
 from incline.report.text import markup
+from incline.result import Estimate
 
 if TYPE_CHECKING:
-    from incline.result import Estimate
+    from incline.result import Outcome
 
 __all__ = ["METHODS", "result", "title_block"]
 
@@ -42,63 +45,60 @@ def title_block(sheet: Sheet) -> list[Any]:
 
 
 def result(sheet: Sheet) -> list[Any]:
-    """The box with the four lightship values and GM as measured."""
-    light, heel = sheet.reduction.outcome.lightship, sheet.reduction.outcome.heel
-    rows: tuple[tuple[str, Estimate, Kind, int, str], ...] = (
-        ("Lightship displacement", light.displacement, "mass", 2, "displacement"),
-        ("KG of lightship, above baseline", light.vcg, "length", 3, "KG"),
-        ("LCG of lightship, forward of AP", light.lcg, "length", 3, "LCG"),
-        ("TCG of lightship, + to starboard", light.tcg, "length", 3, "TCG"),
-    )
-    known = any(e.u is not None for _, e, _, _, _ in rows)
-    lines = [_line(sheet, *row, known=known) for row in rows]
-    lines.append(_gm_line(sheet, known=known))
-    notes = [_why(sheet, word) for _, e, _, _, word in rows if e.value is None]
-    notes.append(
-        f"GM is that of the ship as inclined, test weights aboard and slack liquids free to move "
-        f"({METHODS.get(heel.method, heel.method)}, {heel.dof} degrees of freedom); its standard "
-        f"error is that of the fitted slope alone."
-    )
-    notes.append(
-        "u: standard uncertainty; U = k u: expanded uncertainty for a coverage of 95 %; dof: "
-        "degrees of freedom. They come from the scatter of the test itself: the fitted slope, the "
-        "drafts and the water samples. Errors of masses and arms, device lengths, hydrostatics and "
-        "free surfaces are not included."
-        if known
-        else "The uncertainty of the lightship values has not been evaluated."
-    )
-    return [_box(sheet, lines, known=known), *(note(n) for n in notes)]
+    """The box with the four lightship values and GM as measured, and what their u means."""
+    outcome = sheet.reduction.outcome
+    found = [(q, _estimate(outcome, q.key)) for q in RESULTS]
+    missing = [note(_why(sheet, q.name)) for q, e in found if e.value is None]
+    return [
+        _box(sheet, [_line(sheet, q, e) for q, e in found]),
+        *missing,
+        *intervals(sheet),
+        *limit(sheet),
+        *(note(text) for text in _notes(sheet)),
+    ]
 
 
-def _line(
-    sheet: Sheet, name: str, found: Estimate, kind: Kind, least: int, _word: str, *, known: bool
-) -> list[str]:
-    value, u, wide = sheet.show.estimate(found, kind, least)
-    unit = "" if found.value is None else sheet.show.unit(kind)
-    if name.startswith("TCG"):
+def _estimate(outcome: Outcome, key: str) -> Estimate:
+    if key == "gm_fluid":
+        budget = budget_of(outcome, key)
+        return Estimate(value=outcome.heel.gm_fluid) if budget is None else budget.estimate
+    light: Estimate = getattr(outcome.lightship, key)
+    return light
+
+
+def _line(sheet: Sheet, quoted: Quoted, found: Estimate) -> list[str]:
+    value, u, wide = sheet.show.estimate(found, quoted.kind, quoted.least)
+    unit = "" if found.value is None else sheet.show.unit(quoted.kind)
+    if quoted.key == "tcg":
         unit = f"{unit} {sheet.show.side(found.value)}".strip()
-    if not known:
-        return [name, value, unit]
     reach = MISSING if found.U is None else f"± {wide}".replace("± <", "<")
-    return [name, value, unit, u, reach, sheet.show.plain(found.k, 2), _freedom(sheet, found.dof)]
+    return [quoted.long, value, unit, u, reach, sheet.show.plain(found.k, 2), freedom(found)]
 
 
-def _freedom(sheet: Sheet, dof: float | None) -> str:
-    """Degrees of freedom, fractional ones with a decimal; an endless number as such."""
-    if dof is None or math.isfinite(dof):
-        return sheet.show.plain(dof, 1)
-    return "∞"
-
-
-def _gm_line(sheet: Sheet, *, known: bool) -> list[str]:
-    heel, show = sheet.reduction.outcome.heel, sheet.show
-    name = "GM fluid, as measured"
-    value, unit = show.number(heel.gm_fluid, "length"), show.unit("length")
-    error = show.number(heel.u_gm_fluid, "length", 4)
-    if known:
-        return [name, value, unit, error, MISSING, MISSING, str(heel.dof)]
-    spread = "" if heel.u_gm_fluid is None else f", standard error {error}"
-    return [name, value, f"{unit}{spread}"]
+def _notes(sheet: Sheet) -> list[str]:
+    """What GM is, what u counts, and how much of it nobody measured."""
+    heel = sheet.reduction.outcome.heel
+    said = [
+        f"GM is that of the ship as inclined, test weights aboard and slack liquids free to move "
+        f"({METHODS.get(heel.method, heel.method)}).",
+        "u: standard uncertainty; U = k u: expanded uncertainty for a coverage of 95 %; dof: "
+        "effective degrees of freedom. They count the scatter of the readings and of the water "
+        "samples, and errors of drafts, density, test weights and their places, devices, "
+        "hydrostatics, free surfaces, and of the mass and place of all that stands in the ledger: "
+        "every input that the section on uncertainty lists.",
+    ]
+    kg = budget_of(sheet.reduction.outcome, "vcg")
+    lines = () if kg is None else kg.lines
+    if any(x.basis == LABEL for x in lines):
+        share = 100.0 * sum(x.share for x in lines if x.basis == LABEL)
+        said.append(
+            f"Inputs marked “{LABEL}” are defaults of this program, used where the trial states no "
+            f"uncertainty; they are not measurements. They make up {sheet.show.plain(share, 0)} % "
+            f"of the variance of KG."
+        )
+    if sheet.reduction.simulation is None:
+        said.append("The intervals are first order; no Monte Carlo run was made to check them.")
+    return said
 
 
 def _why(sheet: Sheet, word: str) -> str:
@@ -107,18 +107,18 @@ def _why(sheet: Sheet, word: str) -> str:
     return " ".join(said) if said else f"{word} {NOT_DETERMINED}: see the remarks."
 
 
-def _box(sheet: Sheet, lines: list[list[str]], *, known: bool) -> Table:
-    shares = (0.34, 0.14, 0.17, 0.09, 0.11, 0.07, 0.08) if known else (0.42, 0.18, 0.40)
-    heads = ["", "value", "unit", "u", "U", "k", "dof"] if known else ["", "value", "unit"]
+def _box(sheet: Sheet, lines: list[list[str]]) -> Table:
+    shares = (0.34, 0.13, 0.165, 0.09, 0.105, 0.07, 0.10)
+    heads = ["", "value", "unit", "u", "U", "k", "dof"]
     looks = ("result_left", "figure", "result_left", *["result_right"] * 4)
     head = [
         Paragraph(h, STYLES["head_left" if look.endswith("left") else "head_right"])
-        for h, look in zip(heads, looks, strict=False)
+        for h, look in zip(heads, looks, strict=True)
     ]
     body = [
         [
             Paragraph(markup(t), STYLES["unknown" if t == NOT_DETERMINED else k])
-            for t, k in zip(line, looks, strict=False)
+            for t, k in zip(line, looks, strict=True)
         ]
         for line in lines
     ]

@@ -26,6 +26,11 @@ def heel_fit(sheet: Sheet) -> list[Any]:
     return [
         *part("Common line through all devices"),
         _common(sheet),
+        note(
+            "Regression alone: the plain formula of least squares, which takes the readings as "
+            "independent and Δ as exact. The uncertainty of GM on the first page counts every "
+            "source."
+        ),
         *part("Each device by itself", 80.0),
         *_devices(sheet),
         *part("Tangent against moment", common.height + 16),
@@ -60,14 +65,18 @@ def _common(sheet: Sheet) -> Any:  # noqa: ANN401 - untyped library
             f"{counted} readings, {len(heel.devices)} devices, {heel.dof} degrees of freedom",
             f"{slope} per {unit}",
         ),
-        ("standard error of b", "", f"{_per_moment(sheet, heel.u_slope)} per {unit}"),
+        (
+            "standard error of b, regression alone",
+            "",
+            f"{_per_moment(sheet, heel.u_slope)} per {unit}",
+        ),
         ("1 / b, moment for unit tangent", f"1 / {slope}", show.full(1.0 / heel.slope, "moment")),
         (
             "GM fluid = 1 / (b Δ)",
             f"{show.number(1.0 / heel.slope, 'moment')} / {show.number(weight, 'mass')}",
             show.full(heel.gm_fluid, "length"),
         ),
-        ("standard error of GM fluid, from the slope", "", error),
+        ("standard error of GM fluid, regression alone", "from that of b", error),
         ("standard deviation of the residuals", "in tangents", spread),
         (
             "greatest heel",

@@ -173,7 +173,7 @@ def _values(outcome: Outcome) -> Iterable[tuple[str, Kind, float | None]]:
     light = outcome.lightship
     return (
         ("GM fluid", "length", outcome.heel.gm_fluid),
-        ("standard error of GM fluid", "length", outcome.heel.u_gm_fluid),
+        ("regression's standard error of GM fluid", "length", outcome.heel.u_gm_fluid),
         ("KG as inclined", "length", outcome.as_inclined.vcg),
         ("lightship displacement", "mass", light.displacement.value),
         ("lightship KG", "length", light.vcg.value),

@@ -147,14 +147,16 @@ class Show:
 
         return f"{self.plain(float(convert_temperature(celsius, 'C', 'F')), 1)} °F"
 
+    def decimals(self, u: float | None, kind: Kind, least: int) -> int:
+        """Decimals that show ``u`` with two significant digits, not less than ``least``."""
+        return least if u is None else max(least, _significant(u / self.scale(kind)))
+
     def estimate(self, found: Estimate, kind: Kind, least: int) -> tuple[str, str, str]:
         """Value, standard and expanded uncertainty, to the decimals of the uncertainty.
 
         At least ``least`` decimals; a dash for what is not known.
         """
-        decimals = least
-        if found.u is not None:
-            decimals = max(least, _significant(found.u / self.scale(kind)))
+        decimals = self.decimals(found.u, kind, least)
         value = self.number(found.value, kind, decimals)
         u, wide = (self._spread(v, kind, decimals) for v in (found.u, found.U))
         return (NOT_DETERMINED if found.value is None else value), u, wide

@@ -32,10 +32,10 @@ class Column:
 
 @dataclass(frozen=True, slots=True)
 class Row:
-    """Cells of a row; ``look`` sets off totals, and headings that span the table."""
+    """Cells of a row; ``look`` sets off totals, and headings and remarks that span the table."""
 
     cells: tuple[str, ...]
-    look: Literal["plain", "total", "band"] = "plain"
+    look: Literal["plain", "total", "band", "span"] = "plain"
 
 
 def _cell(text: str, align: str, *, bold: bool) -> Paragraph:
@@ -45,8 +45,9 @@ def _cell(text: str, align: str, *, bold: bool) -> Paragraph:
 
 def _row_cells(columns: Sequence[Column], row: Row) -> list[Any]:
     aligns = [c.align for c in columns]
-    if row.look == "band":
-        return [_cell(row.cells[0], "left", bold=True), *("" for _ in aligns[1:])]
+    if row.look in ("band", "span"):
+        heading = row.look == "band"
+        return [_cell(row.cells[0], "left", bold=heading), *("" for _ in aligns[1:])]
     bold = row.look == "total"
     return [_cell(t, a, bold=bold) for t, a in zip(row.cells, aligns, strict=True)]
 
@@ -56,6 +57,8 @@ def _looks(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
     for i, row in enumerate(rows, start=1):
         if row.look == "band":
             commands += [("SPAN", (0, i), (-1, i)), ("BACKGROUND", (0, i), (-1, i), _SHADE)]
+        elif row.look == "span":
+            commands.append(("SPAN", (0, i), (-1, i)))
         elif row.look == "total":
             commands.append(("LINEABOVE", (0, i), (-1, i), 0.6, INK))
     return commands

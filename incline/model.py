@@ -1,0 +1,80 @@
+"""The chain as a function of deviations of its inputs: what propagation and Monte Carlo work on."""
+
+from __future__ import annotations
+
+import dataclasses
+from typing import TYPE_CHECKING
+
+from incline.chain import Inputs, run
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    import numpy as np
+    from numpy.typing import NDArray
+
+    from incline.chain import Plan, Yield
+    from incline.sources import Source
+
+    Floats = NDArray[np.float64]
+
+__all__ = ["KEYS", "TrialModel"]
+
+KEYS = ("displacement", "vcg", "lcg", "tcg", "gm_fluid")
+"""Names of the results, in the order in which the model gives them."""
+
+
+@dataclasses.dataclass(frozen=True, slots=True, eq=False)
+class TrialModel:
+    """Results of a trial when its inputs deviate from their estimates.
+
+    Called with deviations (n, draws), one row a source, it gives (5, draws): lightship
+    displacement, KG, LCG, TCG, and GM with liquids free; NaN where the trial cannot give a result.
+    """
+
+    plan: Plan
+    given: Inputs
+    sources: Sequence[Source]
+
+    def __call__(self, deviations: Floats) -> Floats:
+        """Results (5, draws) for deviations (n, draws)."""
+        import numpy as np
+
+        found = results_of(run(self.plan, shifted(self.given, self.sources, deviations)))
+        draws = deviations.shape[1]
+        return np.stack([np.full(draws, np.nan) if r is None else r for r in found])
+
+
+def results_of(found: Yield) -> list[Floats | None]:
+    """Lightship displacement, KG, LCG, TCG, and GM; None where the trial cannot give one."""
+    return [
+        found.light_displacement,
+        found.light_vcg,
+        found.light_lcg,
+        found.light_tcg,
+        found.gm_fluid,
+    ]
+
+
+def shifted(given: Inputs, sources: Sequence[Source], changes: Floats) -> Inputs:
+    """Inputs with ``changes`` (n, draws) added, one row a source; a leading axis of draws appears.
+
+    Arrays are laid out so that draws are contiguous in memory, which the chain's sums like.
+    """
+    import numpy as np
+
+    fields: dict[str, list[tuple[int | None, Floats]]] = {}
+    for source, change in zip(sources, changes, strict=True):
+        fields.setdefault(source.field, []).append((source.item, change))
+    moved: dict[str, Floats] = {}
+    for name, rows in fields.items():
+        nominal = getattr(given, name)
+        if nominal.ndim == 0:
+            moved[name] = nominal + sum(row for _, row in rows)
+            continue
+        array = np.empty((len(nominal), changes.shape[1]))
+        array[:] = nominal[:, None]
+        for item, row in rows:
+            array[item] += row
+        moved[name] = array.T
+    return dataclasses.replace(given, **moved)

@@ -1,0 +1,300 @@
+"""Every source of uncertainty of a trial: what it is called, how large it is, where it enters.
+
+A stated uncertainty comes first; without one the default for that kind of thing is taken and
+labelled so; the scatter of the test itself gives the slope, and the drafts when they scatter more
+than was stated.
+"""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass, replace
+from typing import TYPE_CHECKING, Literal
+
+from incline.defaults import DEFAULTS, LABEL, assumed
+from incline.ledger import lines_of
+from incline.units import DENSITY, FRACTION, LENGTH, MASS, MOMENT, SYSTEMS
+
+if TYPE_CHECKING:
+    from collections.abc import Iterator, Mapping
+
+    import numpy as np
+    from numpy.typing import NDArray
+
+    from incline.chain import Inputs, Plan
+    from incline.observations import Observations
+    from incline.record import Statements, Trial
+    from incline.result import HeelFit, SlopeUncertainty, Waterline
+    from incline.units import Quantity
+
+    Floats = NDArray[np.float64]
+
+__all__ = ["Source", "list_sources"]
+
+STATED = "stated"
+SEEN = "scatter of this test"
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Source:
+    """One input with a standard uncertainty ``u`` in inside units.
+
+    ``field`` and ``item`` say where it enters the chain's inputs (``item`` None for a scalar);
+    ``shape`` is normal, rectangular, or scaled-and-shifted t for what the test's own scatter gives,
+    with ``dof`` degrees of freedom; sources with one ``pool`` share an estimate of scatter. Sources
+    of one ``group`` are correlated by ``shared``. ``quantity`` None: a slope.
+    """
+
+    name: str
+    field: str
+    item: int | None
+    u: float
+    quantity: Quantity | None
+    basis: str
+    shape: Literal["normal", "rectangular", "t"] = "normal"
+    dof: float = math.inf
+    pool: str = ""
+    group: str = ""
+    shared: float = 0.0
+
+
+def list_sources(
+    trial: Trial,
+    plan: Plan,
+    given: Inputs,
+    seen: Observations,
+    waterline: Waterline,
+    heel: HeelFit,
+    slope: SlopeUncertainty,
+) -> tuple[Source, ...]:
+    """All sources whose uncertainty is above zero, in the order of the chain."""
+    found = [
+        *_drafts(trial, waterline),
+        *_density(trial, given),
+        *_test_weights(trial, plan),
+        *_devices(trial, seen, slope),
+        _curvature(heel),
+        *_hydrostatics(trial, given),
+        *_tanks(trial),
+        *_lines(trial),
+        *_changes(trial),
+    ]
+    return tuple(s for s in found if s.u > 0.0)
+
+
+@dataclass(frozen=True, slots=True)
+class _Maker:
+    """Builds sources: the stated uncertainty of a quantity, or the default by name."""
+
+    overrides: Mapping[str, float]
+
+    def make(
+        self,
+        name: str,
+        field: str,
+        item: int | None,
+        stated: Statements,
+        key: str,
+        quantity: Quantity,
+        default: str,
+        value: float = 1.0,
+        group: str = "",
+        shared: float = 0.0,
+    ) -> Source:
+        said = stated.get(key)
+        if said is not None:
+            return Source(
+                name=name, field=field, item=item, u=said.u, quantity=quantity, basis=STATED,
+                shape=said.shape, group=group, shared=shared,
+            )  # fmt: skip
+        u = assumed(default, self.overrides)
+        basis = "assumed: the trial's own" if default in self.overrides else LABEL
+        return Source(
+            name=name, field=field, item=item, quantity=quantity, basis=basis,
+            u=u * abs(value) if DEFAULTS[default].relative else u, group=group, shared=shared,
+        )  # fmt: skip
+
+
+def _maker(trial: Trial) -> _Maker:
+    return _Maker(trial.settings.assumed)
+
+
+def _drafts(trial: Trial, waterline: Waterline) -> Iterator[Source]:
+    make, overrides = _maker(trial).make, trial.settings.assumed
+    shared = assumed("draft_shared", overrides)
+    sources = [
+        make(
+            f"draft at {_length_of(trial, d.x)} {d.side}", "drafts", i, d.stated, "draft", LENGTH,
+            "draft", group="drafts", shared=shared,
+        )
+        for i, d in enumerate(trial.drafts)
+    ]  # fmt: skip
+    if waterline.sd is None:
+        yield from sources
+        return
+    from scipy.special import chdtrc
+
+    # What the residuals should show: the part of each reading that the others do not share.
+    own = sum(s.u**2 * (1.0 - shared) for s in sources) / len(sources)
+    excess = waterline.sd**2 * waterline.dof / own
+    if float(chdtrc(waterline.dof, excess)) >= 0.05:
+        yield from sources
+        return
+    for s in sources:
+        yield replace(
+            s, u=waterline.sd, basis=SEEN, shape="t", dof=waterline.dof, pool="drafts", group="",
+            shared=0.0,
+        )  # fmt: skip
+
+
+def _density(trial: Trial, given: Inputs) -> Iterator[Source]:
+    share = [s.share / sum(t.share for t in trial.samples) for s in trial.samples]
+    stated = [s.stated.get("density") for s in trial.samples]
+    if all(s is not None for s in stated):
+        # One hydrometer reads every sample: its error does not average out.
+        u = sum(w * s.u for w, s in zip(share, stated, strict=True) if s is not None)
+        basis = STATED
+    else:
+        u = assumed("density", trial.settings.assumed)
+        basis = LABEL
+    yield Source(
+        name="density of the water, hydrometer", field="density", item=None, u=u,
+        quantity=DENSITY, basis=basis,
+    )  # fmt: skip
+    if len(trial.samples) > 1:
+        mean = float(given.density)
+        weighed = zip(share, trial.samples, strict=True)
+        squares = sum(w * (s.density - mean) ** 2 for w, s in weighed)
+        yield Source(
+            name="density of the water, spread of samples", field="density", item=None,
+            u=math.sqrt(squares / (len(trial.samples) - 1)), quantity=DENSITY, basis=SEEN,
+            shape="t", dof=len(trial.samples) - 1, pool="density",
+        )  # fmt: skip
+
+
+def _test_weights(trial: Trial, plan: Plan) -> Iterator[Source]:
+    make, overrides = _maker(trial).make, trial.settings.assumed
+    for i, w in enumerate(trial.weights):
+        default = "test_weight_mass" if w.certificate else "uncertified_weight_mass"
+        yield make(
+            f"test weight {w.id}, mass", "weights", i, w.stated, "mass", MASS, default, w.mass,
+            group=f"certificate {w.certificate}" if w.certificate else "",
+            shared=assumed("certificate_shared", overrides),
+        )  # fmt: skip
+    moves = {(m.weight, s.number): m for s in trial.shifts for m in s.moves}
+    arm_shared = assumed("arm_shared", overrides)
+    by_weight = {w.id: w for w in trial.weights}
+    for k, (weight, shift) in enumerate(plan.placing.names):
+        stated = moves[weight, shift].stated
+        label = f"test weight {weight} at {_side(trial, float(plan.placing.y[k]))}"
+        yield make(
+            f"{label}, y", "place_y", k, stated, "y", LENGTH, "test_weight_arm", group="arms",
+            shared=arm_shared,
+        )  # fmt: skip
+        heights = {**by_weight[weight].stated, **stated}
+        yield make(
+            f"{label}, height", "place_z", k, heights, "z", LENGTH, "test_weight_centre",
+            group=f"height of {weight}", shared=1.0,
+        )  # fmt: skip
+    for i, w in enumerate(trial.weights):
+        yield make(
+            f"test weight {w.id}, x", "weight_x", i, w.stated, "x", LENGTH, "test_weight_centre"
+        )
+    if plan.placing.given is not None:
+        yield make("inclining moments as given", "moment_factor", None, {}, "", FRACTION, "moment")
+
+
+def _side(trial: Trial, y: float) -> str:
+    return f"{_length_of(trial, abs(y))} {'S' if y > 0.0 else 'P' if y < 0.0 else ''}".strip()
+
+
+def _length_of(trial: Trial, length: float) -> str:
+    """A length in the trial's own unit."""
+    system = SYSTEMS[trial.settings.units]
+    return f"{system.show(length, LENGTH, system.length, 2)} {system.length}"
+
+
+def _devices(trial: Trial, seen: Observations, slope: SlopeUncertainty) -> Iterator[Source]:
+    make = _maker(trial).make
+    if not slope.lengths_seen:
+        for j, device in enumerate(seen.devices):
+            scale = float(seen.lengths[j])
+            if device.kind == "inclinometer" or device.length is None:
+                yield make(
+                    f"device {device.id}, scale", "lengths", j, device.stated, "scale", FRACTION,
+                    "inclinometer_scale", scale,
+                )  # fmt: skip
+            else:
+                yield make(
+                    f"device {device.id}, length", "lengths", j, device.stated, "length", LENGTH,
+                    "length",
+                )  # fmt: skip
+    if slope.u is not None:
+        yield Source(
+            name="slope of heel against moment, scatter of readings", field="slope_shift",
+            item=None, u=slope.u, quantity=None, basis=SEEN, shape="t", dof=slope.dof, pool="slope",
+        )  # fmt: skip
+
+
+def _curvature(heel: HeelFit) -> Source:
+    """What the straight line leaves out.
+
+    Its size is known for a wall-sided hull, but near a chine its sign is not, so that it counts as
+    an uncertainty and not as a correction.
+    """
+    gm_low = heel.curvature_kg / heel.gm_fluid
+    return Source(
+        name="curvature that a straight line leaves out", field="slope_shift", item=None,
+        u=heel.slope * gm_low, quantity=None, basis="estimated as for a wall-sided hull",
+    )  # fmt: skip
+
+
+def _hydrostatics(trial: Trial, given: Inputs) -> Iterator[Source]:
+    make, stated = _maker(trial).make, trial.table.stated
+    yield make(
+        "hydrostatic table, volume", "volume_factor", None, stated, "volume", FRACTION,
+        "table_volume", float(given.volume_factor),
+    )  # fmt: skip
+    yield make("hydrostatic table, KM", "km_shift", None, stated, "km", LENGTH, "table_km")
+    yield make("hydrostatic table, LCB", "lcb_shift", None, stated, "lcb", LENGTH, "table_lcb")
+
+
+def _tanks(trial: Trial) -> Iterator[Source]:
+    make = _maker(trial).make
+    for i, t in enumerate(trial.tanks):
+        yield make(
+            f"tank {t.name}, free-surface moment", "fsm", i, t.stated, "fsm", MOMENT,
+            "free_surface", t.fsm,
+        )  # fmt: skip
+
+
+_LINE_DEFAULTS = {
+    "tanks": ("tank_mass", "tank_centre", "tank"),
+    "people": ("person_mass", "person_centre", "person aboard"),
+    "ledger": ("item_mass", "item_centre", "item"),
+}
+_AXES = {"x": "x", "y": "y", "z": "height"}
+
+
+def _lines(trial: Trial) -> Iterator[Source]:
+    make = _maker(trial).make
+    for i, line in enumerate(lines_of(trial)):
+        mass, centre, kind = _LINE_DEFAULTS[line.source]
+        label = f"{kind} {line.name}"
+        yield make(f"{label}, mass", "mass", i, line.stated, "mass", MASS, mass, line.mass)
+        for axis, word in _AXES.items():
+            yield make(f"{label}, {word}", axis, i, line.stated, axis, LENGTH, centre)
+            if line.to is not None:
+                key = f"to_{axis}"
+                yield make(f"{label}, new {word}", key, i, line.stated, key, LENGTH, centre)
+
+
+def _changes(trial: Trial) -> Iterator[Source]:
+    make = _maker(trial).make
+    for i, c in enumerate(trial.changes):
+        label = f"change {c.name}"
+        yield make(f"{label}, mass", "changes", i, c.stated, "mass", MASS, "item_mass", c.mass)
+        for axis, word in _AXES.items():
+            yield make(
+                f"{label}, {word}", f"change_{axis}", i, c.stated, axis, LENGTH, "item_centre"
+            )
