@@ -80,7 +80,7 @@ def budgets_of(
             )
             for n, s in enumerate(sources)
         ]  # fmt: skip
-        lines.sort(key=lambda line: -line.share)
+        lines.sort(key=lambda line: -round(line.share, 9))  # equal shares keep their order
         estimate = _estimate(float(nominal[i]), variance, parts[i], sources, coverage)
         budgets.append(Budget(key=key, estimate=estimate, lines=tuple(lines)))
     return tuple(budgets), covariance

@@ -32,8 +32,9 @@ class Inputs:
     (T) [t m]; ``mass`` (N) [t], ``x``, ``y``, ``z`` (N) [m] of ledger lines other than test
     weights, ``to_x``... of relocations; ``changes`` (C) masses [t], minus for what went ashore, and
     ``change_x``... [m]. The scalars ``volume_factor`` (1), ``km_shift`` and ``lcb_shift`` (0 m),
-    ``moment_factor`` (1, of moments given directly) and ``slope_shift`` (0 per t m) carry the
-    uncertainty of the hydrostatics, of an old report's moments and of the fitted slope.
+    and ``slope_shift`` (0 per t m) carry the uncertainty of the hydrostatics and of the fitted
+    slope. ``moments`` (n) [t m] and their common ``moment_factor`` (1) stand for the test weights
+    where a record gives moments directly; empty otherwise.
     """
 
     drafts: Floats
@@ -58,6 +59,7 @@ class Inputs:
     volume_factor: Floats
     km_shift: Floats
     lcb_shift: Floats
+    moments: Floats
     moment_factor: Floats
     slope_shift: Floats
 
@@ -176,8 +178,8 @@ def _mass_of(plan: Plan, given: Inputs, buoyancy: Buoyancy) -> Floats:
 def _moments(plan: Plan, given: Inputs) -> tuple[Floats, Floats]:
     """Transverse and vertical moments by shift."""
     placing = plan.placing
-    if placing.given is not None:
-        moments = placing.given * given.moment_factor[..., None]
+    if given.moments.shape[-1]:
+        moments = given.moments * given.moment_factor[..., None]
         return moments, 0.0 * moments
     return (
         placing.about_start(given.weights, given.place_y),

@@ -173,7 +173,7 @@ def _monte_carlo(simulation: Simulation) -> dict[str, Any]:
     return {
         "draws": simulation.draws,
         "seed": simulation.seed,
-        "settled": simulation.stable,
+        "settled": simulation.settled,
         "results": {
             r.key: {
                 "mean": r.mean,

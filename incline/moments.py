@@ -24,7 +24,7 @@ class Placing:
     ``change`` (K, n) is +1 where a place is taken at a shift and -1 where it was the start, so that
     (mass @ owner y) @ change is the moment about the start. ``start`` (K, W) is 1 at each weight's
     first place, ``start_x`` (W,) its x there. ``names`` (K,) says whose place it is and the shift
-    at which it is first taken. ``given`` (n,) replaces all of it when moments were recorded.
+    at which it is first taken.
     """
 
     owner: Floats
@@ -34,7 +34,6 @@ class Placing:
     change: Floats
     start: Floats
     start_x: Floats
-    given: Floats | None
 
     def about_start(self, mass: Floats, arm: Floats) -> Floats:
         """Moments about the start [t m], (..., n); mass (..., W) [t], arm (..., K) [m]."""
@@ -77,7 +76,6 @@ def place_weights(trial: Trial) -> Placing:
         owner[index[weight], place] = 1.0
     for weight, place in start.items():
         first[place, index[weight]] = 1.0
-    given = [s.moment for s in trial.shifts if s.moment is not None]
     return Placing(
         owner=owner,
         names=tuple(names),
@@ -86,5 +84,4 @@ def place_weights(trial: Trial) -> Placing:
         change=change,
         start=first,
         start_x=np.array([start_x[w.id] for w in trial.weights]),
-        given=np.array(given) if given else None,
     )

@@ -90,7 +90,7 @@ def simulate(
     kept: list[Floats] = []
     settling = _Settling(budgets)
     total, most = 0, draws or MOST
-    stable = draws is not None
+    settled = None if draws is not None else False
     while total < most:
         count = min(BLOCK, most - total)
         block = model(draw(sources, blocks, count, rng))
@@ -99,10 +99,10 @@ def simulate(
         if progress is not None:
             progress(total / most)
         if draws is None and settling.add(block):
-            stable = True
+            settled = True
             break
     values = np.concatenate(kept, axis=1)
-    return _describe(values, budgets, seed=seed, stable=stable, kg_limit=kg_limit)
+    return _describe(values, budgets, seed=seed, settled=settled, kg_limit=kg_limit)
 
 
 class _Settling:
@@ -164,17 +164,23 @@ def shortest_interval(values: Floats, coverage: float = COVERAGE) -> tuple[float
 
 
 def _describe(
-    values: Floats, budgets: Sequence[Budget], *, seed: int, stable: bool, kg_limit: float | None
+    values: Floats,
+    budgets: Sequence[Budget],
+    *,
+    seed: int,
+    settled: bool | None,
+    kg_limit: float | None,
 ) -> Simulation:
     import numpy as np
 
     kg = values[[b.key for b in budgets].index("vcg")]
-    counts, edges = np.histogram(kg, bins=60)
+    low, high = np.quantile(kg, [0.001, 0.999])
+    counts, edges = np.histogram(kg, bins=60, range=(low, high))
     covariance = np.atleast_2d(np.cov(values[:4]))
     return Simulation(
         draws=values.shape[1],
         seed=seed,
-        stable=stable,
+        settled=settled,
         results=tuple(
             _simulated(budget.key, row, budget.estimate)
             for row, budget in zip(values, budgets, strict=True)

@@ -33,7 +33,7 @@ if TYPE_CHECKING:
     from incline.record import Trial
     from incline.result import Waterline
 
-__all__ = ["reduce"]
+__all__ = ["Stage", "reduce", "work_out"]
 
 
 def reduce(
@@ -48,12 +48,12 @@ def reduce(
     ``monte_carlo`` also sends the inputs through the chain by Monte Carlo until its figures settle,
     or exactly ``draws`` times; ``progress`` is told the share done.
     """
-    stage = _work_out(trial, observe(trial))
+    stage = work_out(trial, observe(trial))
     remarks = remarks_on(trial, stage.outcome)
     with_excluded = None
     if any(r.excluded for r in trial.readings):
         try:
-            with_excluded = _work_out(trial, observe(trial, with_excluded=True)).outcome
+            with_excluded = work_out(trial, observe(trial, with_excluded=True)).outcome
         except InclineError as error:
             remarks.append(f"With the excluded readings counted there is no result: {error}.")
     simulation = None
@@ -74,7 +74,7 @@ def reduce(
 
 
 @dataclass(frozen=True, slots=True, eq=False)
-class _Stage:
+class Stage:
     """An outcome, and what a Monte Carlo run needs to go through the same chain."""
 
     outcome: Outcome
@@ -82,7 +82,8 @@ class _Stage:
     blocks: tuple[Block, ...]
 
 
-def _work_out(trial: Trial, seen: Observations) -> _Stage:
+def work_out(trial: Trial, seen: Observations) -> Stage:
+    """One pass through all stages for the readings that count; raises FieldDataError."""
     plan = plan_of(trial, seen)
     given = inputs_of(trial, plan, seen)
     found = run(plan, given)
@@ -117,7 +118,7 @@ def _work_out(trial: Trial, seen: Observations) -> _Stage:
         budgets=budgets,
         kg_above_limit=probability_above(vcg, trial.settings.kg_limit),
     )
-    return _Stage(outcome, model, blocks)
+    return Stage(outcome, model, blocks)
 
 
 def _as_inclined(

@@ -98,6 +98,6 @@ def remarks_on_simulation(simulation: Simulation) -> list[str]:
             f"The first-order interval is not validated by Monte Carlo for {', '.join(odd)}"
             " (JCGM 101, clause 8): take the simulated interval there."
         )
-    if not simulation.stable:
+    if simulation.settled is False:
         said.append(f"Monte Carlo stopped at {simulation.draws} draws before its figures settled.")
     return said

@@ -307,13 +307,14 @@ class Simulated:
 class Simulation:
     """A Monte Carlo run through the chain.
 
-    ``stable`` is False when the run stopped at its largest number of draws before its figures
-    settled. ``kg_edges`` and ``kg_counts`` are a histogram of KG.
+    ``settled`` is False when the run stopped at its largest number of draws before its figures
+    settled, None when the number was fixed beforehand. ``kg_edges`` and ``kg_counts`` are a
+    histogram of KG over all but its outermost thousandth on each side.
     """
 
     draws: int
     seed: int
-    stable: bool
+    settled: bool | None
     results: tuple[Simulated, ...]
     covariance: tuple[tuple[float | None, ...], ...]
     kg_above_limit: float | None

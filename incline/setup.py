@@ -76,6 +76,7 @@ def inputs_of(trial: Trial, plan: Plan, seen: Observations) -> Inputs:
         volume_factor=np.asarray(1.0),
         km_shift=np.asarray(0.0),
         lcb_shift=np.asarray(0.0),
+        moments=np.array([s.moment for s in trial.shifts if s.moment is not None]),
         moment_factor=np.asarray(1.0),
         slope_shift=np.asarray(0.0),
     )

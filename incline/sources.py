@@ -72,6 +72,7 @@ def list_sources(
         *_drafts(trial, waterline),
         *_density(trial, given),
         *_test_weights(trial, plan),
+        *_moments(trial, given),
         *_devices(trial, seen, slope),
         _curvature(heel),
         *_hydrostatics(trial, given),
@@ -149,17 +150,15 @@ def _drafts(trial: Trial, waterline: Waterline) -> Iterator[Source]:
 
 def _density(trial: Trial, given: Inputs) -> Iterator[Source]:
     share = [s.share / sum(t.share for t in trial.samples) for s in trial.samples]
-    stated = [s.stated.get("density") for s in trial.samples]
-    if all(s is not None for s in stated):
-        # One hydrometer reads every sample: its error does not average out.
-        u = sum(w * s.u for w, s in zip(share, stated, strict=True) if s is not None)
-        basis = STATED
-    else:
-        u = assumed("density", trial.settings.assumed)
-        basis = LABEL
-    yield Source(
-        name="density of the water, hydrometer", field="density", item=None, u=u,
-        quantity=DENSITY, basis=basis,
+    make = _maker(trial).make
+    read = [
+        make("", "density", None, s.stated, "density", DENSITY, "density") for s in trial.samples
+    ]
+    # One hydrometer reads every sample: its error does not average out.
+    yield replace(
+        read[0], name="density of the water, hydrometer", shape="normal",
+        u=sum(w * r.u for w, r in zip(share, read, strict=True)),
+        basis=next((r.basis for r in read if r.basis != STATED), STATED),
     )  # fmt: skip
     if len(trial.samples) > 1:
         mean = float(given.density)
@@ -196,11 +195,24 @@ def _test_weights(trial: Trial, plan: Plan) -> Iterator[Source]:
             f"{label}, height", "place_z", k, heights, "z", LENGTH, "test_weight_centre",
             group=f"height of {weight}", shared=1.0,
         )  # fmt: skip
+    first = {m.weight: m.stated for s in reversed(trial.shifts) for m in s.moves}
     for i, w in enumerate(trial.weights):
+        stated = {**w.stated, **first[w.id]}
         yield make(
-            f"test weight {w.id}, x", "weight_x", i, w.stated, "x", LENGTH, "test_weight_centre"
+            f"test weight {w.id}, x", "weight_x", i, stated, "x", LENGTH, "test_weight_centre"
         )
-    if plan.placing.given is not None:
+
+
+def _moments(trial: Trial, given: Inputs) -> Iterator[Source]:
+    """Moments given directly: each shift's own statement, or one error common to all."""
+    if not len(given.moments):
+        return
+    make = _maker(trial).make
+    for i, s in enumerate(trial.shifts):
+        if "moment" in s.stated:
+            name = f"inclining moment at shift {s.number}"
+            yield make(name, "moments", i, s.stated, "moment", MOMENT, "moment")
+    if not any("moment" in s.stated for s in trial.shifts):
         yield make("inclining moments as given", "moment_factor", None, {}, "", FRACTION, "moment")
 
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from small_trial import SMALL, changed
+from small_trial import SMALL, STATED, beside, changed
 
 Files = dict[str, str | bytes | None]
 Found = tuple[str, str, int, str]
@@ -21,6 +21,16 @@ def without(*files: str) -> Files:
 
 def text(file: str, old: str, new: str) -> Files:
     return {**changed(file, old, new)}
+
+
+def added(file: str, columns: dict[str, str]) -> Files:
+    """The small trial with columns added to one table (see `beside`)."""
+    return {**SMALL, file: beside(file, columns)}
+
+
+def key(old: str, new: str) -> Files:
+    """The trial that states uncertainties, with one passage of ``trial.toml`` put differently."""
+    return {**changed("trial.toml", old, new, STATED)}
 
 
 TOML = "trial.toml"
@@ -306,4 +316,163 @@ CASES: list[tuple[Files, list[Found]]] = [
         {**SMALL, "hydrostatics.csv": GRID + "2,0,1,30,1,6\n"},
         [("table-not-grid", "hydrostatics.csv", 1, "draft")],
     ),
+    # uncertainties in tables
+    (added("changes.csv", {"u mass [t]": "-0.1 ."}), [
+        ("number-negative", "changes.csv", 2, "u mass"),
+    ]),
+    (added("changes.csv", {"tolerance y [%]": "-1 ."}), [
+        ("number-negative", "changes.csv", 2, "tolerance y"),
+    ]),
+    (added("changes.csv", {"u mass [t]": "small ."}), [
+        ("number-unreadable", "changes.csv", 2, "u mass"),
+    ]),
+    (added("changes.csv", {"u mass [%]": "1% ."}), [
+        ("number-unreadable", "changes.csv", 2, "u mass"),
+    ]),
+    (added("changes.csv", {"u y [m]": "0.1P ."}), [
+        ("number-unreadable", "changes.csv", 2, "u y"),
+    ]),
+    (added("changes.csv", {"resolution z [m]": "inf ."}), [
+        ("number-not-finite", "changes.csv", 2, "resolution z"),
+    ]),
+    (added("changes.csv", {"u mass [m]": "0.1 ."}), [("unit-wrong", "changes.csv", 1, "u mass")]),
+    (added("changes.csv", {"u mass": "0.1 ."}), [("unit-missing", "changes.csv", 1, "u mass")]),
+    (added("tanks.csv", {"u level [m]": "0.1 . . ."}), [
+        ("column-unknown", "tanks.csv", 1, "u level"),
+    ]),
+    (added("changes.csv", {"u mass [t]": "0.1 .", "U  Mass [%]": "1 ."}), [
+        ("column-twice", "changes.csv", 1, "u mass"),
+    ]),
+    (added("changes.csv", {"u mass [t]": "0.1 0.1", "tolerance mass [t]": ". 0.1"}), [
+        ("uncertainty-twice", "changes.csv", 3, "tolerance mass"),
+    ]),
+    (added("drafts.csv", {f"{f} draft [m]": "0.1 . . . ." for f in ("u", "tolerance", "resolution")}),
+     [("uncertainty-twice", "drafts.csv", 2, "tolerance draft")]),
+    (added("weights.csv", {"u mass [t]": "10 9.99"}), [
+        ("uncertainty-too-large", "weights.csv", 2, "u mass"),
+    ]),
+    (added("weights.csv", {"tolerance mass [%]": "173 174"}), [
+        ("uncertainty-too-large", "weights.csv", 3, "tolerance mass"),
+    ]),
+    (added("drafts.csv", {"resolution draft [m]": "10 11 . . ."}), [
+        ("uncertainty-too-large", "drafts.csv", 3, "resolution draft"),
+    ]),
+    (added("drafts.csv", {"u freeboard [m]": ". . 3 2.9 .", "u point height [m]": ". . 0 0.1 ."}), [
+        ("uncertainty-too-large", "drafts.csv", 4, "u freeboard"),
+    ]),
+    (added("density.csv", {"u density [t/m3]": "1 2"}), [
+        ("uncertainty-too-large", "density.csv", 3, "u density"),
+    ]),
+    (added("tanks.csv", {"u volume [m3]": ". 10 . .", "u fsm [t m]": "9 . . 2.0"}), [
+        ("uncertainty-too-large", "tanks.csv", 2, "u fsm"),
+        ("uncertainty-too-large", "tanks.csv", 3, "u volume"),
+    ]),
+    (added("changes.csv", {"u y [m]": "1 2", "u x [m]": "40 40"}), []),
+    (added("drafts.csv", {"u draft [m]": ". . 0.01 . ."}), [
+        ("value-wrong", "drafts.csv", 4, "u draft"),
+    ]),
+    (added("drafts.csv", {"u freeboard [m]": "0.01 . . . ."}), [
+        ("value-wrong", "drafts.csv", 2, "u freeboard"),
+    ]),
+    (added("ledger.csv", {"u to z [m]": "0.1 . 0.1"}), [("value-wrong", "ledger.csv", 2, "u to z")]),
+    (added("shifts.csv", {"u x [m]": "0.1 . . 0.1 ."}), [("value-wrong", "shifts.csv", 2, "u x")]),
+    (added("shifts.csv", {"u moment [t m]": "0.1 . . . ."}), [
+        ("column-missing", "shifts.csv", 1, "moment"),
+    ]),
+    (added("density.csv", {"u relative density [1]": "0.1 ."}), [
+        ("column-missing", "density.csv", 1, "relative density"),
+    ]),
+    (
+        {**SMALL, "shifts.csv": SMALL["shifts.csv"].replace("z [m]\n", "z [m],u y [m]\n")
+         .replace("5.5\n", "5.5\n2,,,,,,0.1\n")},
+        [("cell-missing", "shifts.csv", 7, "weight")],
+    ),
+    (
+        {**SMALL, "changes.csv": "change,item,mass [t],x [m],y [m],z [m],u mass [%]\naboard,mat,,9,0,5,1\n"},
+        [("cell-missing", "changes.csv", 2, "mass")],
+    ),
+    (added("tanks.csv", {"u mass [t]": ". . 0.1 .", "u fsm [t m]": ". 0.1 . ."}), [
+        ("tank-contradiction", "tanks.csv", 3, "u fsm"),
+        ("tank-contradiction", "tanks.csv", 4, "u mass"),
+    ]),
+    # uncertainties in trial.toml
+    (key('tolerance_length = "3 mm"', 'tolerance_length = "-3 mm"'), [
+        ("number-negative", TOML, 0, "devices[1].tolerance_length"),
+    ]),
+    (key('tolerance_length = "3 mm"', 'u_length = "4 m"'), [
+        ("uncertainty-too-large", TOML, 0, "devices[1].u_length"),
+    ]),
+    (key('tolerance_length = "3 mm"', 'u_length = "100 %"'), [
+        ("uncertainty-too-large", TOML, 0, "devices[1].u_length"),
+    ]),
+    (key('tolerance_length = "3 mm"', 'tolerance_length = "3 mm"\nresolution_length = "1 mm"'), [
+        ("uncertainty-twice", TOML, 0, "devices[1].resolution_length"),
+    ]),
+    (key('tolerance_length = "3 mm"', 'tolerance_span = "3 mm"'), [
+        ("key-unknown", TOML, 0, "devices[1].tolerance_span"),
+    ]),
+    (key('tolerance_length = "3 mm"', "tolerance_length = 3"), [
+        ("unit-missing", TOML, 0, "devices[1].tolerance_length"),
+    ]),
+    (key('tolerance_length = "3 mm"', 'tolerance_length = "3 kg"'), [
+        ("unit-wrong", TOML, 0, "devices[1].tolerance_length"),
+    ]),
+    (key('resolution = "1 mm"', 'resolution = "0.01 deg"'), [
+        ("unit-wrong", TOML, 0, "devices[1].resolution"),
+    ]),
+    (key('resolution = "1 mm"', 'resolution = "0 mm"'), [
+        ("number-not-positive", TOML, 0, "devices[1].resolution"),
+    ]),
+    (key('resolution = "0.01 deg"', 'resolution = "1 mm"'), [
+        ("unit-wrong", TOML, 0, "devices[2].resolution"),
+    ]),
+    (key('kind = "pendulum"', 'kind = "level"'), [("value-wrong", TOML, 0, "devices[1].kind")]),
+    (key('u_mass = "10 %"', 'u_mass = "80 kg"'), [
+        ("uncertainty-too-large", TOML, 0, "people[1].u_mass"),
+    ]),
+    (text(TOML, 'mass = "80 kg"\nx = "20 m"\ny = "1.5 m P"\nz = "6 m"', 'u_z = "1 m"'), [
+        ("value-wrong", TOML, 0, "people[1].u_z"),
+    ]),
+    (key('u_volume = "0.2 %"', 'u_volume = "2 m3"'), [
+        ("unit-wrong", TOML, 0, "hydrostatics.u_volume"),
+    ]),
+    (key('u_volume = "0.2 %"', 'u_volume = "100 %"'), [
+        ("uncertainty-too-large", TOML, 0, "hydrostatics.u_volume"),
+    ]),
+    (key('u_km = "5 mm"', 'u_km = "1 %"'), [("unit-wrong", TOML, 0, "hydrostatics.u_km")]),
+    (key('kg = "5.40 m"', 'kg = "0 m"\nvcg = "5 m"'), [
+        ("number-not-positive", TOML, 0, "limits.kg"),
+        ("key-unknown", TOML, 0, "limits.vcg"),
+    ]),
+    (key('draft = "8 mm"', 'drafts = "8 mm"'), [("key-unknown", TOML, 0, "uncertainty.drafts")]),
+    (key('draft = "8 mm"', 'draft = "-8 mm"'), [("number-negative", TOML, 0, "uncertainty.draft")]),
+    (key('draft = "8 mm"', 'draft = "1 %"'), [("unit-wrong", TOML, 0, "uncertainty.draft")]),
+    (key('tank_mass = "2 %"', 'tank_mass = "1 kg"'), [
+        ("unit-wrong", TOML, 0, "uncertainty.tank_mass"),
+    ]),
+    (key('tank_mass = "2 %"', 'tank_mass = "100 %"'), [
+        ("uncertainty-too-large", TOML, 0, "uncertainty.tank_mass"),
+    ]),
+    (key("draft_shared = 0.4", "draft_shared = 1.1"), [
+        ("value-wrong", TOML, 0, "uncertainty.draft_shared"),
+    ]),
+    (key("draft_shared = 0.4", "draft_shared = true"), [
+        ("value-wrong", TOML, 0, "uncertainty.draft_shared"),
+    ]),
+    (key('arm_shared = "25 %"', 'arm_shared = "125 %"'), [
+        ("value-wrong", TOML, 0, "uncertainty.arm_shared"),
+    ]),
+    (key("r = -0.5", "r = -1.5"), [("value-wrong", TOML, 0, "correlations[1].r")]),
+    (key("r = -0.5", 'r = "-0.5"'), [("value-wrong", TOML, 0, "correlations[1].r")]),
+    (key("r = -0.5", "r = nan"), [("number-not-finite", TOML, 0, "correlations[1].r")]),
+    (key("r = -0.5", f"r = {'9' * 400}"), [("value-wrong", TOML, 0, "correlations[1].r")]),
+    (key("r = -0.5", ""), [("key-missing", TOML, 0, "correlations[1].r")]),
+    (key(', "tank 1 P, mass"]', "]"), [("value-wrong", TOML, 0, "correlations[1].between")]),
+    (key(', "tank 1 P, mass"]', ', "test weight A,  mass"]'), [
+        ("value-wrong", TOML, 0, "correlations[1].between"),
+    ]),
+    (key("r = -0.5", '[[correlations]]\nbetween = ["tank 1 P, mass", "test weight A, mass"]\nr = 0'), [
+        ("key-missing", TOML, 0, "correlations[1].r"),
+        ("id-twice", TOML, 0, "correlations[2].between"),
+    ]),
 ]  # fmt: skip

@@ -6,6 +6,7 @@ the few closed formulas below, not from the program.
 
 from dataclasses import replace
 
+import made_uncertainty as unsure
 from made_trial import (
     AT,
     LPP,
@@ -85,7 +86,7 @@ def _fit(trial: Trial, *, all_counted: bool) -> HeelFit:
         method="straight-line", slope=slope, u_slope=u, gm_fluid=gm, u_gm_fluid=gm * u / slope, dof=dof,
         residual_sd=sd, devices=devices, points=points,
         shifts=tuple(ShiftMoment(shift=s.number, time=s.time, transverse=m, vertical=0.0) for s, m in zip(trial.shifts, MOMENTS, strict=True)),
-        max_heel_port=0.0547, max_heel_starboard=0.0602,
+        max_heel_port=0.0547, max_heel_starboard=0.0602, curvature_kg=0.0009,
     )  # fmt: skip
 
 
@@ -149,27 +150,29 @@ def _outcome(trial: Trial, *, all_counted: bool = False) -> Outcome:
             )
             moment += r.mass * getattr(r.to, axis) if r.to else 0.0
         centre.append(moment / light)
+    budgets = unsure.budgets((light, centre[2], centre[0], centre[1], heel.gm_fluid))
+    estimates = {b.key: b.estimate for b in budgets if b.key != "gm_fluid"}
     return Outcome(
         as_inclined=state,
         heel=heel,
         free_surface=FreeSurface(moment=fsm, correction=fsm / weight),
         ledger=Ledger(lines=lines, balance=3.1e-14, **sums),
-        lightship=Lightship(
-            displacement=Estimate(value=light, u=0.93, U=1.9, k=2.05, dof=31.0),
-            vcg=Estimate(value=centre[2], u=0.0124, U=0.026, k=2.1, dof=18.4),
-            lcg=Estimate(value=centre[0], u=0.041, U=0.083, k=2.02, dof=44.0),
-            tcg=Estimate(value=centre[1], u=0.0033, U=0.0067, k=2.03, dof=40.0),
-        ),
-        covariance=tuple((None,) * 4 for _ in range(4)),
+        lightship=Lightship(**estimates),
+        covariance=unsure.covariance(),
+        slope_uncertainty=unsure.SLOPE,
+        budgets=budgets,
+        kg_above_limit=0.0238,
     )
 
 
 def made_reduction(units: str = "metric") -> Reduction:
     """The whole reduction: every table filled, one reading excluded, hostile text in names."""
     trial = made_trial(units)
+    outcome = _outcome(trial)
     return Reduction(
         trial=trial,
-        outcome=_outcome(trial),
+        outcome=outcome,
+        simulation=unsure.simulation(outcome.budgets, 0.0229),
         with_excluded=_outcome(trial, all_counted=True),
         remarks=("The u-values of the instruments are engineering judgement.",),
     )
@@ -182,7 +185,7 @@ def bare_reduction() -> Reduction:
         full,
         vessel=replace(full.vessel, kind="", number=""),
         occasion=Occasion(date=full.occasion.date, place=full.occasion.place),
-        settings=replace(full.settings, rule_set="", allowance=None, keel_thickness=0.0, x_origin="after perpendicular"),
+        settings=replace(full.settings, rule_set="", kg_limit=None, allowance=None, keel_thickness=0.0, x_origin="after perpendicular"),
         people=(), weights=(), tanks=(), items=(), changes=(), remarks=(),
         readings=tuple(replace(r, note="", excluded="") for r in full.readings),
         table=replace(full.table, lcf=None, bml=None, bml_basis=""),
@@ -198,16 +201,22 @@ def bare_reduction() -> Reduction:
         ),
         heel=replace(whole.heel, u_slope=None, u_gm_fluid=None, residual_sd=None,
                      devices=tuple(replace(d, u_gm=None, u_slope=None, r_squared=None) for d in whole.heel.devices)),
-        lightship=Lightship(
-            displacement=Estimate(value=light.displacement.value), vcg=Estimate(value=light.vcg.value),
-            lcg=Estimate(value=None), tcg=Estimate(value=None),
+        lightship=replace(light, lcg=Estimate(value=None), tcg=Estimate(value=None)),
+        covariance=tuple(
+            tuple(c if i < 2 and j < 2 else None for j, c in enumerate(row))
+            for i, row in enumerate(whole.covariance)
         ),
+        slope_uncertainty=unsure.NO_SLOPE,
+        budgets=unsure.budgets(
+            (light.displacement.value, light.vcg.value, None, None, whole.heel.gm_fluid)
+        ),
+        kg_above_limit=None,
     )  # fmt: skip
     said = (
         "LCG is refused: the table is for even keel and has neither MCT nor a longitudinal BM.",
         "TCG is refused: drafts on one side only cannot tell the list.",
     )
-    return Reduction(trial=trial, outcome=bare, with_excluded=None, remarks=said)
+    return Reduction(trial=trial, outcome=bare, with_excluded=None, simulation=None, remarks=said)
 
 
 def long_reduction() -> Reduction:
@@ -219,4 +228,6 @@ def long_reduction() -> Reduction:
         for n in range(140)
     )  # fmt: skip
     trial = replace(full, items=items)
-    return Reduction(trial=trial, outcome=_outcome(trial), with_excluded=None, remarks=())
+    return Reduction(
+        trial=trial, outcome=_outcome(trial), with_excluded=None, simulation=None, remarks=()
+    )

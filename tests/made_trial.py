@@ -31,6 +31,7 @@ NASTY_NAME = "Bracken A&B <i>Łódź</i>"
 NASTY_NOTE = '<img src="file:///etc/hostname"/> gust & <b>swell</b> \x07μ = 2σ &alpha;'
 REPORT_DATE = datetime.date(2026, 4, 2)
 LPP, BEAM = 24.0, 7.2
+KG_LIMIT = 2.75
 AT = Where("made.csv", 2)
 
 
@@ -213,7 +214,7 @@ def made_trial(units: str) -> Trial:
         ),
         settings=Settings(
             x_origin="amidships", units=units, rule_set="IMO", method="straight-line", allowance=0.006,
-            keel_thickness=0.012, interpolation="cubic",
+            keel_thickness=0.012, interpolation="cubic", kg_limit=KG_LIMIT,
         ),
         people=PEOPLE,
         devices=DEVICES,

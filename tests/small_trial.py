@@ -135,7 +135,8 @@ def beside(file: str, columns: Mapping[str, str]) -> str:
     width = len(rows[0])
     added = zip(*([heading, *cells.split()] for heading, cells in columns.items()), strict=True)
     for row, more in zip(rows, added, strict=True):
-        row += [""] * (width - len(row)) + ["" if cell == "." else cell for cell in more]
+        row.extend([""] * (width - len(row)))
+        row.extend("" if cell == "." else cell for cell in more)
     return table_text(rows)
 
 

@@ -57,6 +57,8 @@ CODES = [
     "shift-order",
     "shift-twice",
     "table-empty",
+    "uncertainty-twice",
+    "uncertainty-too-large",
 ]
 
 

@@ -77,13 +77,10 @@ def test_forms_and_units(  # weights of 10 t
     assert second.stated == {}
 
 
-@pytest.mark.parametrize("form", ["u", "tolerance", "resolution"])
+@pytest.mark.parametrize("form", ["tolerance", "resolution"])
 def test_a_rectangle_of_that_width_has_that_standard_deviation(tmp_path: Path, form: str) -> None:
     """Moments of a flat density, by the trapezoidal rule, against what the reader makes of it."""
-    if form == "u":
-        width = 0.04 * math.sqrt(12.0)
-    else:
-        width = 0.04 * (2.0 if form == "tolerance" else 1.0)
+    width = 0.04 * (2.0 if form == "tolerance" else 1.0)
     steps = 2000
     points = [width * (n / steps - 0.5) for n in range(steps + 1)]
     ends = (points[0] ** 2 + points[-1] ** 2) / 2.0
@@ -210,9 +207,10 @@ def test_the_mass_itself_comes_first(tmp_path: Path) -> None:
     assert said(trial.tanks[1].stated)["mass"] == normal(0.05)
 
 
-def test_nothing_is_uncertain_by_nothing_in_an_empty_tank(tmp_path: Path) -> None:
-    trial = tank(tmp_path, {"u mass [t]": "0.1 . 0 .", "u fsm [%]": ". 10 10 10"}, ",10,20,0,1,,,,,,", "")
+def test_a_percentage_of_nothing_is_nothing(tmp_path: Path) -> None:
+    trial = tank(tmp_path, {"u mass [t]": "0.1 . 0 .", "u fsm [%]": "10 10 10 10"})
     assert trial.tanks[2].stated == {}
+    assert trial.tanks[1].stated["fsm"].u == 0.0
 
 
 def test_ledger_and_changes(tmp_path: Path) -> None:
@@ -346,9 +344,9 @@ def test_what_a_blank_trial_proposes_can_be_read(
         "u_volume": "allowance", "u_km": "allowance", "u_lcb": "allowance", "u_length": "length",
         "resolution": "length", "u_mass": "mass",
     }  # fmt: skip
-    for line in lines:
-        anchor = anchors.get(line.split(" ")[0])
-        line = line.replace('["", ""]', '["a", "b"]')
+    for proposed in lines:
+        anchor = anchors.get(proposed.split(" ")[0])
+        line = proposed.replace('["", ""]', '["a", "b"]')
         if anchor is None:
             toml += f"{line}\n"
         else:

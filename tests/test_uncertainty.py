@@ -194,7 +194,7 @@ def test_run_settles_and_repeats():
     model = model_of(total, 1.0, 2.0)
     budgets, _ = budgets_of(model, ["vcg"], sources, ())
     first = simulate(model, sources, (), budgets, seed=5)
-    assert first.stable
+    assert first.settled
     assert first.draws < 1_000_000
     assert simulate(model, sources, (), budgets, seed=5) == first
     assert simulate(model, sources, (), budgets, seed=6) != first

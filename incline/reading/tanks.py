@@ -8,7 +8,7 @@ from typing import TYPE_CHECKING, Literal
 
 from incline.reading.cells import Column
 from incline.reading.collect import BAD, Sign, quoted
-from incline.reading.uncertainty import combined, of_row, written
+from incline.reading.uncertainty import PERCENT, combined, of_row, written
 from incline.record import Point, Stated, Tank
 from incline.units import DENSITY, LENGTH, MASS, MOMENT, SECOND_MOMENT, VOLUME, to_inside
 
@@ -81,7 +81,8 @@ def _stated(
     nothing = {"empty": ("mass", "volume", "fsm"), "pressed full": ("fsm",)}.get(state or "", ())
     for column in written(row, *nothing):
         amount = row.maybe(column)
-        if amount is not None and amount > 0.0:
+        relative = row.sheet.placed[column].unit == PERCENT  # a share of nothing is nothing
+        if amount is not None and amount > 0.0 and not relative:
             expected = f"no uncertainty of what a tank that is {state} does not have"
             _contradiction(row, column, quoted(row.raw(column)), expected)
     if state == "empty":

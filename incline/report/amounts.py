@@ -62,11 +62,13 @@ class Unit:
 
     def amount(self, value: float) -> str:
         """A value (inside units) to three significant digits, with its unit."""
-        return f"{significant(value / self.size)} {self.name}"
+        return f"{significant(value / self.size)} {self.name}".strip()
 
     def per(self, below: Unit) -> Unit:
-        """The unit over another one."""
-        if below.name.startswith("1/("):
+        """The unit over another one; a bare number over itself."""
+        if below.name == self.name:
+            name = ""
+        elif below.name.startswith("1/("):
             name = f"{self.name}{_NBSP}{below.name[3:-1]}"
         elif "/" in below.name or _NBSP in below.name:
             name = f"{self.name}/({below.name})"

@@ -68,7 +68,8 @@ def _one(sheet: Sheet, quoted: Quoted, budget: Budget) -> list[Any]:
 _READING = (
     "u: standard uncertainty of the input; its basis is stated by the trial, assumed, or the "
     "scatter of the test itself. Degrees of freedom are printed where they are not endless. "
-    "Sensitivity: change of the result for one unit of the input. Part: sensitivity times u. "
+    "Sensitivity: change of the result for one unit of the input, without a unit where both have "
+    "the same. Part: sensitivity times u. "
     "Share: of the variance of the result, correlations included; with correlations a share may "
     "be negative."
 )
@@ -99,10 +100,10 @@ def _table(sheet: Sheet, quoted: Quoted, budget: Budget, found: Estimate) -> Any
     combined = sheet.show.number(u, quoted.fine, decimals)
     cells = (
         "combined",
-        f"u = {combined}\N{NO-BREAK SPACE}{result.name}",
+        f"{combined}\N{NO-BREAK SPACE}{result.name}",
         f"k = {sheet.show.plain(found.k, 2)}, dof {freedom(found)}",
-        "",
-        f"U = {sheet.show.full(found.U, quoted.fine, decimals)}",
+        "U = k u",
+        sheet.show.full(found.U, quoted.fine, decimals),
         combined,
         _share(sheet, math.fsum(x.share for x in budget.lines)),
     )

@@ -25,14 +25,13 @@ __all__ = ["distribution_plot", "share_plot"]
 
 _NAME = 50
 """Most characters of an input's name beside its bar."""
-_SHADES = {"stated": "0.15", "assumed": "1.0", "seen": "0.62", "estimated": "0.38", "rest": "0.88"}
+_SHADES = {"stated": "0.0", "assumed": "1.0", "seen": "0.72", "estimated": "0.42", "rest": "0.9"}
 _WORDS = {
     "stated": "stated by the trial",
     "assumed": LABEL,
     "own": "assumed: the trial's own",
     "seen": SEEN,
     "estimated": "estimated",
-    "rest": "all further inputs",
 }
 _REACH = 4.5
 """Standard uncertainties to each side of KG that the distribution is drawn over."""
@@ -63,7 +62,7 @@ def share_plot(budget: Budget, shown: Sequence[BudgetLine], width: float) -> Fig
         axes.tick_params(axis="y", length=0)
         axes.axvline(0.0, color="black", linewidth=0.6)
         axes.set_xlabel("share of the variance of KG [%]")
-        _shades(figure, dict.fromkeys(basis for _, _, basis in bars))
+        _shades(figure, dict.fromkeys(basis for _, _, basis in bars if basis != "rest"))
     return figure
 
 

@@ -108,7 +108,7 @@ def _why(sheet: Sheet, word: str) -> str:
 
 
 def _box(sheet: Sheet, lines: list[list[str]]) -> Table:
-    shares = (0.34, 0.13, 0.165, 0.09, 0.105, 0.07, 0.10)
+    shares = (0.33, 0.12, 0.165, 0.09, 0.125, 0.07, 0.10)
     heads = ["", "value", "unit", "u", "U", "k", "dof"]
     looks = ("result_left", "figure", "result_left", *["result_right"] * 4)
     head = [

@@ -49,20 +49,19 @@ def monte_carlo(sheet: Sheet) -> list[Any]:
         note(
             "Verdict by JCGM 101, clause 8: the first-order interval is validated when both its "
             "ends are within the tolerance of the symmetric simulated interval; the tolerance is "
-            "half a unit in the second significant digit of u."
+            "half a unit in the first significant digit of u."
         ),
         *_shape(sheet, run),
     ]
 
 
 def _told(run: Simulation) -> str:
-    ended = (
-        "The run went on until its figures had settled (JCGM 101, 7.9) or to the number of draws "
-        "that was asked for."
-        if run.stable
-        else "The run stopped at its largest number of draws before its figures had settled: take "
-        "its last digits with care."
-    )
+    ended = {
+        True: "The run went on until its figures had settled (JCGM 101, 7.9).",
+        None: "The number of draws was asked for.",
+        False: "The run stopped at its largest number of draws before its figures had settled: "
+        "take its last digits with care.",
+    }[run.settled]
     return (
         f"All inputs were drawn at random {count_of(run.draws)} times and sent through the same "
         f"calculation; seed {run.seed}. {ended}"

@@ -61,6 +61,8 @@ def _looks(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
             commands.append(("SPAN", (0, i), (-1, i)))
         elif row.look == "total":
             commands.append(("LINEABOVE", (0, i), (-1, i), 0.6, INK))
+            if i > 1:
+                commands.append(("NOSPLIT", (0, i - 1), (-1, i)))  # no total alone on a page
     return commands
 
 

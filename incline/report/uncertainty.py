@@ -54,7 +54,7 @@ def _scatter(sheet: Sheet) -> list[Any]:
     seen = sheet.reduction.outcome.slope_uncertainty
     flow: list[Any] = list(part("Scatter of the readings: ship, devices, single readings"))
     if seen.u is None:
-        text = "The readings leave no scatter to judge the slope by; the slope is taken as exact."
+        text = "The readings leave no scatter to judge the slope by: its uncertainty is left out."
         flow.append(paragraph(_ended(text, seen.reason)))
         return flow
     text = (
