@@ -84,9 +84,12 @@ class Stage:
 
 def work_out(trial: Trial, seen: Observations) -> Stage:
     """One pass through all stages for the readings that count; raises FieldDataError."""
+    import numpy as np
+
     plan = plan_of(trial, seen)
     given = inputs_of(trial, plan, seen)
-    found = run(plan, given)
+    with np.errstate(divide="ignore", invalid="ignore"):  # what comes of that is refused next
+        found = run(plan, given)
     refuse(trial, plan, seen, found)
     heel = describe_heel(trial, seen, found)
     waterline = describe_waterline(plan.waterline, trial.drafts, trial.vessel.lpp)

@@ -54,7 +54,7 @@ def test_front_page_carries_identity_and_result():
     # u 0.62 t, 0.0065 m, 0.012 m, 0.00045 m: two significant digits, at most four decimals.
     for found, unit, decimals in (
         (light.displacement, "t", 2), (light.vcg, "m", 4), (light.lcg, "m", 3),
-        (light.tcg, "m to starboard", 4), (made.made_reduction().outcome.budgets[4].estimate, "m", 4),
+        (light.tcg, "m (starboard)", 4), (made.made_reduction().outcome.budgets[4].estimate, "m", 4),
     ):  # fmt: skip
         value, u, wide = (f"{v:.{decimals}f}" for v in (found.value, found.u, found.U))
         dof = "∞" if found.dof is None else f"{found.dof:.1f}"

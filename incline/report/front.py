@@ -70,7 +70,8 @@ def _line(sheet: Sheet, quoted: Quoted, found: Estimate) -> list[str]:
     value, u, wide = sheet.show.estimate(found, quoted.kind, quoted.least)
     unit = "" if found.value is None else sheet.show.unit(quoted.kind)
     if quoted.key == "tcg":
-        unit = f"{unit} {sheet.show.side(found.value)}".strip()
+        side = sheet.show.side(found.value)
+        unit = f"{unit} ({side})" if side else unit
     reach = MISSING if found.U is None else f"± {wide}".replace("± <", "<")
     return [quoted.long, value, unit, u, reach, sheet.show.plain(found.k, 2), freedom(found)]
 

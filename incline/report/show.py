@@ -132,10 +132,10 @@ class Show:
         return self.plain(value, 5)
 
     def side(self, y: float | None) -> str:
-        """In words to which side a transverse position lies."""
+        """On which side a transverse position lies."""
         if y is None or self.number(abs(y), "length").strip("0.") == "":
             return ""
-        return "to starboard" if y > 0.0 else "to port"
+        return "starboard" if y > 0.0 else "port"
 
     def temperature(self, celsius: float | None) -> str:
         """A water temperature with its unit."""
