@@ -9,10 +9,10 @@ from incline.record import Point, Statements, Trial
 from incline.units import Quantity
 
 __all__ = [
-    "AsInclined", "Budget", "BudgetLine", "DeviceFit", "DraftResidual", "Estimate", "FreeSurface",
-    "HeelFit", "HeelPoint", "Ledger", "LedgerLine", "Lightship", "Outcome", "ReducedReading",
-    "Reduction", "ShiftMoment", "Simulated", "Simulation", "SlopeUncertainty", "TableEntry",
-    "Waterline",
+    "AsInclined", "Budget", "BudgetLine", "Check", "DeviceFit", "Diagnosis", "DraftResidual",
+    "Estimate", "Finding", "FreeSurface", "HeelFit", "HeelPoint", "Influence", "Ledger",
+    "LedgerLine", "Lightship", "Outcome", "ReducedReading", "Reduction", "Rolling", "ShiftMoment",
+    "Simulated", "Simulation", "SlopeUncertainty", "TableEntry", "Unseen", "Waterline",
 ]  # fmt: skip
 
 
@@ -340,6 +340,98 @@ class Outcome:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class Check:
+    """One published criterion held against the trial.
+
+    ``found`` is the measured value in ``unit`` (or in words), None when it was not recorded;
+    ``limit`` is printed as it stands in the table of criteria, or as the trial overrides it with a
+    reason in ``note``. ``evidence`` says how the limit is known: read, reported or memory.
+    """
+
+    id: str
+    title: str
+    status: Literal["pass", "fail", "not recorded", "not applicable"]
+    found: float | str | None
+    limit: str
+    unit: str
+    rule_set: str
+    source: str
+    edition: str
+    evidence: str
+    note: str = ""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Finding:
+    """One disturbance that explains the residuals better than chance does.
+
+    ``score`` is its statistic and ``critical`` the value that a clean trial passes in 5 % of cases;
+    ``size`` says how large it is, in words; ``vcg_if_so`` [m] is lightship KG if it is the cause.
+    ``rank`` is 0 for the explanation that fits best, 1... for those that fit nearly as well.
+    """
+
+    cause: str
+    where: Literal["ship", "device"]
+    shift: int | None
+    device: str | None
+    score: float
+    critical: float
+    size: str
+    vcg_if_so: float | None
+    advice: str
+    rank: int
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Unseen:
+    """The smallest disturbance of one kind that this trial would have shown, and its worth in KG.
+
+    ``size`` [tangent] would be found in nine cases of ten; ``vcg`` [m] is its effect on lightship KG;
+    ``excluded_by`` names the trial's own evidence against it, empty when there is none.
+    """
+
+    cause: str
+    size: float
+    vcg: float
+    excluded_by: str
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Influence:
+    """Lightship KG [m] without one reading, shift or device, less KG with everything."""
+
+    shift: int | None
+    device: str | None
+    change: float
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Diagnosis:
+    """What the residuals say: findings, what they could not show, and who matters most."""
+
+    findings: tuple[Finding, ...]
+    unseen: tuple[Unseen, ...]
+    influence: tuple[Influence, ...]
+    critical: float
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Rolling:
+    """GM by rolling period [m] and its standard uncertainty: a plausibility check, never a result.
+
+    ``period`` [s] is the mean full roll; ``factor`` the f of GM = (f B / T)^2; ``agrees`` whether it
+    is within two standard uncertainties of the GM measured by inclining.
+    """
+
+    period: float
+    factor: float
+    gm: float
+    u_gm: float
+    agrees: bool
+    note: str
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class Reduction:
     """The reduction of a trial: its outcome, and what it would be with the excluded readings."""
 
@@ -349,5 +441,8 @@ class Reduction:
     """The outcome with every reading counted; None when nothing is excluded."""
     simulation: Simulation | None
     """Monte Carlo through the same chain; None when it was not asked for."""
-    remarks: tuple[str, ...]
+    checks: tuple[Check, ...] = ()
+    diagnosis: Diagnosis | None = None
+    rolling: Rolling | None = None
+    remarks: tuple[str, ...] = ()
     """Assumptions and refusals that a reviewer should see, one sentence each."""
