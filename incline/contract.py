@@ -7,6 +7,7 @@ from __future__ import annotations
 
 import json
 import math
+from dataclasses import asdict
 from typing import TYPE_CHECKING, Any
 
 import incline
@@ -14,9 +15,11 @@ import incline
 if TYPE_CHECKING:
     from incline.result import (
         Budget,
+        Diagnosis,
         Estimate,
         Outcome,
         Reduction,
+        Rolling,
         Simulation,
         SlopeUncertainty,
     )
@@ -42,10 +45,12 @@ def to_dict(reduction: Reduction) -> dict[str, Any]:
             "name": trial.vessel.name,
             "date": trial.occasion.date.isoformat(),
             "digest": trial.digest,
+            "lpp_m": trial.vessel.lpp,
         },
         **_outcome(reduction.outcome),
-        "checks": [],
-        "findings": [],
+        "checks": [asdict(check) for check in reduction.checks],
+        **_diagnosis(reduction.diagnosis),
+        "rolling": None if reduction.rolling is None else _rolling(reduction.rolling),
         "excluded": [
             {"shift": r.shift, "device": r.device, "reason": r.excluded}
             for r in trial.readings
@@ -127,6 +132,17 @@ def _heel(outcome: Outcome) -> dict[str, Any]:
     }
 
 
+def _rolling(rolling: Rolling) -> dict[str, Any]:
+    return {
+        "period_s": rolling.period,
+        "factor": rolling.factor,
+        "gm_m": rolling.gm,
+        "u_gm_m": rolling.u_gm,
+        "agrees": rolling.agrees,
+        "note": rolling.note,
+    }
+
+
 def _estimate(estimate: Estimate) -> dict[str, float | None]:
     return {
         "value": estimate.value,
@@ -187,4 +203,40 @@ def _monte_carlo(simulation: Simulation) -> dict[str, Any]:
         },
         "covariance": [list(row) for row in simulation.covariance],
         "kg_above_limit_probability": simulation.kg_above_limit,
+    }
+
+
+def _diagnosis(diagnosis: Diagnosis | None) -> dict[str, Any]:
+    """Findings, what would not have shown, and the influence of each reading, shift and device."""
+    if diagnosis is None:
+        return {"findings": [], "unseen": [], "influence": []}
+    return {
+        "findings": [
+            {
+                "cause": f.cause,
+                "where": f.where,
+                "shift": f.shift,
+                "device": f.device,
+                "score": f.score,
+                "critical": f.critical,
+                "rank": f.rank,
+                "size": f.size,
+                "vcg_if_so_m": f.vcg_if_so,
+                "advice": f.advice,
+            }
+            for f in diagnosis.findings
+        ],
+        "unseen": [
+            {
+                "cause": u.cause,
+                "size_tangent": u.size,
+                "vcg_change_m": u.vcg,
+                "excluded_by": u.excluded_by,
+            }
+            for u in diagnosis.unseen
+        ],
+        "influence": [
+            {"shift": i.shift, "device": i.device, "vcg_change_m": i.change}
+            for i in diagnosis.influence
+        ],
     }

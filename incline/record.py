@@ -14,9 +14,9 @@ from typing import Literal
 from incline.errors import Where
 
 __all__ = [
-    "Change", "Correlation", "Device", "DraftReading", "HydrostaticTable", "Item", "Move",
-    "Occasion", "Person", "Point", "Reading", "Sample", "Settings", "Shift", "Stated",
-    "Statements", "Tank", "Trial", "Vessel", "Weight",
+    "Change", "Correlation", "Device", "DraftReading", "Environment", "HydrostaticTable", "Item",
+    "Move", "Occasion", "Override", "Person", "Point", "Reading", "RollCondition", "RollingRun", "Sample",
+    "Settings", "Shift", "Stated", "Statements", "Tank", "Trial", "Vessel", "Weight",
 ]  # fmt: skip
 
 
@@ -82,7 +82,11 @@ class Person:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Occasion:
-    """When and where the test was held; ``water_depth`` [m]. Empty text: not recorded."""
+    """When and where the test was held; ``water_depth`` [m]. Empty text: not recorded.
+
+    ``notice_date`` is the day on which the procedure was sent ahead, ``gm_before`` [m] the GM that
+    was expected.
+    """
 
     date: datetime.date
     place: str
@@ -90,6 +94,36 @@ class Occasion:
     weather: str = ""
     water_depth: float | None = None
     notes: str = ""
+    notice_date: datetime.date | None = None
+    gm_before: float | None = None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Environment:
+    """Berth and surroundings in words, and ``wind_speed`` [m/s]. Empty text: not recorded."""
+
+    shelter: str = ""
+    lines: str = ""
+    gangway: str = ""
+    wind: str = ""
+    current: str = ""
+    wind_speed: float | None = None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Override:
+    """A limit that the trial puts in place of a criterion's, and why.
+
+    ``low`` and ``high`` are in the criterion's own unit. With neither, ``limit`` says in words what
+    holds, and the program does not judge it.
+    """
+
+    check: str
+    low: float | None
+    high: float | None
+    limit: str
+    reason: str
+    where: Where
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -119,6 +153,7 @@ class Weight:
     x: float
     z: float
     where: Where
+    kind: Literal["solid", "liquid"] = "solid"
     stated: Statements = field(default_factory=dict)
 
 
@@ -192,7 +227,11 @@ class Sample:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Tank:
-    """A tank: liquid mass [t], centre, and free-surface moment [t m] (zero unless slack)."""
+    """A tank: liquid mass [t], centre, and free-surface moment [t m] (zero unless slack).
+
+    ``level`` of the liquid and ``depth`` of the tank are above its bottom; ``length`` and
+    ``breadth`` are those of the free surface [m]. ``type`` is empty when not recorded.
+    """
 
     name: str
     contents: str
@@ -205,6 +244,10 @@ class Tank:
     fsm: float
     fsm_basis: str
     where: Where
+    depth: float | None = None
+    length: float | None = None
+    breadth: float | None = None
+    type: Literal["", "deep", "double bottom"] = ""
     stated: Statements = field(default_factory=dict)
 
 
@@ -232,6 +275,20 @@ class Change:
     centre: Point
     where: Where
     stated: Statements = field(default_factory=dict)
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class RollingRun:
+    """One run of the rolling test: ``time`` [s] of ``rolls`` full rolls, side to side and back."""
+
+    run: str
+    rolls: int
+    time: float
+    where: Where
+
+
+RollCondition = Literal["empty", "20 %", "10 %", "5 %"]
+"""Loading at the rolling test: empty or in ballast, or the share of liquids in the total load."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -263,8 +320,10 @@ class Settings:
 
     ``allowance`` multiplies a moulded volume by (1 + allowance) for shell and appendages; None
     means the table is extreme. ``keel_thickness`` [m] is taken off drafts whose marks start at the
-    underside of keel. ``kg_limit`` [m] is a KG not to be exceeded; ``assumed`` replaces the
-    program's default uncertainties by name (see `incline.defaults`).
+    underside of keel. ``kg_limit`` [m] is a KG not to be exceeded; ``evidence``
+    says what speaks against disturbances that residuals may hide; ``assumed`` replaces the
+    program's default uncertainties by name (see `incline.defaults`), ``overrides`` limits of
+    published criteria.
     """
 
     x_origin: Literal["after perpendicular", "amidships"]
@@ -275,13 +334,19 @@ class Settings:
     keel_thickness: float
     interpolation: Literal["cubic", "linear"]
     kg_limit: float | None = None
+    evidence: Mapping[str, str] = field(default_factory=dict)
     assumed: Mapping[str, float] = field(default_factory=dict)
     correlations: tuple[Correlation, ...] = ()
+    roll_condition: RollCondition | None = None
+    overrides: tuple[Override, ...] = ()
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Trial:
-    """One inclining test as recorded. ``digest`` is the sha256 over its files."""
+    """One inclining test as recorded. ``digest`` is the sha256 over its files.
+
+    ``hydrometer`` is the range of relative density that the hydrometer covers.
+    """
 
     folder: str
     digest: str
@@ -299,5 +364,8 @@ class Trial:
     items: tuple[Item, ...]
     changes: tuple[Change, ...]
     table: HydrostaticTable
+    rolls: tuple[RollingRun, ...] = ()
+    environment: Environment = field(default_factory=Environment)
+    hydrometer: tuple[float, float] | None = None
     remarks: tuple[str, ...] = ()
     """Assumptions made while reading that a reviewer should see, one sentence each."""

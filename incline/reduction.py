@@ -9,7 +9,10 @@ from typing import TYPE_CHECKING
 from incline.budget import budgets_of, probability_above
 from incline.chain import run
 from incline.correlation import blocks_of
+from incline.criteria import judge
+from incline.diagnosis import search
 from incline.errors import InclineError
+from incline.findings import diagnosis_of
 from incline.flotation import describe_waterline
 from incline.heel import describe_heel
 from incline.hydrostatics import Curves
@@ -20,6 +23,7 @@ from incline.observations import observe
 from incline.refusals import refuse
 from incline.remarks import remarks_on, remarks_on_simulation
 from incline.result import AsInclined, FreeSurface, Lightship, Outcome, Reduction, TableEntry
+from incline.rolling import remarks_on_rolling, rolling_of
 from incline.setup import inputs_of, plan_of
 from incline.sources import list_sources
 from incline.variance import slope_uncertainty
@@ -29,6 +33,7 @@ if TYPE_CHECKING:
 
     from incline.chain import Inputs, Plan, Yield
     from incline.correlation import Block
+    from incline.diagnosis import Search
     from incline.observations import Observations
     from incline.record import Trial
     from incline.result import Waterline
@@ -64,11 +69,19 @@ def reduce(
             progress=progress,
         )  # fmt: skip
         remarks.extend(remarks_on_simulation(simulation))
+    rolling = rolling_of(trial, stage.outcome)
+    remarks.extend(remarks_on_rolling(trial, rolling))
+    diagnosis = None
+    if stage.search is not None:
+        diagnosis = diagnosis_of(stage.search, stage.model, trial.settings.evidence)
     return Reduction(
         trial=trial,
         outcome=stage.outcome,
+        checks=judge(trial, stage.outcome),
+        diagnosis=diagnosis,
         with_excluded=with_excluded,
         simulation=simulation,
+        rolling=rolling,
         remarks=tuple(remarks),
     )
 
@@ -80,6 +93,7 @@ class Stage:
     outcome: Outcome
     model: TrialModel
     blocks: tuple[Block, ...]
+    search: Search | None
 
 
 def work_out(trial: Trial, seen: Observations) -> Stage:
@@ -94,7 +108,9 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
     heel = describe_heel(trial, seen, found)
     waterline = describe_waterline(plan.waterline, trial.drafts, trial.vessel.lpp)
     slope = slope_uncertainty(seen, found.moments[seen.shift])
-    sources = list_sources(trial, plan, given, seen, waterline, heel, slope)
+    looked = search(trial, seen, found.moments)
+    hidden = () if looked is None else looked.hidden
+    sources = list_sources(trial, plan, given, seen, waterline, heel, slope, hidden)
     blocks = blocks_of(sources, trial.settings.correlations)
     model = TrialModel(plan, given, sources)
     budgets, covariance = budgets_of(model, KEYS, sources, blocks)
@@ -121,7 +137,7 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
         budgets=budgets,
         kg_above_limit=probability_above(vcg, trial.settings.kg_limit),
     )
-    return Stage(outcome, model, blocks)
+    return Stage(outcome, model, blocks, looked)
 
 
 def _as_inclined(

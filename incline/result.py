@@ -386,8 +386,8 @@ class Finding:
 class Unseen:
     """The smallest disturbance of one kind that this trial would have shown, and its worth in KG.
 
-    ``size`` [tangent] would be found in nine cases of ten; ``vcg`` [m] is its effect on lightship KG;
-    ``excluded_by`` names the trial's own evidence against it, empty when there is none.
+    ``size`` [tangent] would be found in nine cases of ten; ``vcg`` [m] is what it does to lightship
+    KG; ``excluded_by`` names the trial's own evidence against it, empty when there is none.
     """
 
     cause: str
@@ -419,8 +419,8 @@ class Diagnosis:
 class Rolling:
     """GM by rolling period [m] and its standard uncertainty: a plausibility check, never a result.
 
-    ``period`` [s] is the mean full roll; ``factor`` the f of GM = (f B / T)^2; ``agrees`` whether it
-    is within two standard uncertainties of the GM measured by inclining.
+    ``period`` [s] is the mean full roll; ``factor`` the f of GM = (f B / T)^2; ``agrees`` whether
+    it is within two standard uncertainties of the GM measured by inclining.
     """
 
     period: float

@@ -14,7 +14,7 @@ if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from incline.record import Trial
-    from incline.result import Estimate, Outcome, Reduction, Simulation
+    from incline.result import Estimate, Outcome, Reduction, Rolling, Simulation
     from incline.units import UnitSystem
 
 __all__ = ["show", "summary"]
@@ -47,6 +47,7 @@ def show(reduction: Reduction) -> str:
         *_as_inclined(outcome, system),
         "",
         *_heel(outcome, system),
+        *_rolling(reduction.rolling, system),
         "",
         *_ledger(outcome, system),
         "",
@@ -130,6 +131,15 @@ def _heel(outcome: Outcome, system: UnitSystem) -> list[str]:
         _row("LCG as inclined", _length(system, ship.lcg), system.length),
         _row("TCG as inclined", _length(system, ship.tcg), system.length),
     ]
+
+
+def _rolling(rolling: Rolling | None, system: UnitSystem) -> list[str]:
+    if rolling is None:
+        return []
+    verdict = "agrees" if rolling.agrees else "does NOT agree with GM as measured"
+    note = f"u {_length(system, rolling.u_gm, 2)}, a check only: {verdict}"
+    gm = _length(system, rolling.gm, 2)
+    return [_row("GM by rolling period", gm, system.length, note)]
 
 
 def _ledger(outcome: Outcome, system: UnitSystem) -> list[str]:

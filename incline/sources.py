@@ -12,16 +12,18 @@ from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING, Literal
 
 from incline.defaults import DEFAULTS, LABEL, assumed
+from incline.diagnosis.evidence import EVIDENCE, NOT_EXCLUDED
 from incline.ledger import lines_of
 from incline.units import DENSITY, FRACTION, LENGTH, MASS, MOMENT, SYSTEMS
 
 if TYPE_CHECKING:
-    from collections.abc import Iterator, Mapping
+    from collections.abc import Iterator, Mapping, Sequence
 
     import numpy as np
     from numpy.typing import NDArray
 
     from incline.chain import Inputs, Plan
+    from incline.diagnosis.search import Hidden
     from incline.observations import Observations
     from incline.record import Statements, Trial
     from incline.result import HeelFit, SlopeUncertainty, Waterline
@@ -66,6 +68,7 @@ def list_sources(
     waterline: Waterline,
     heel: HeelFit,
     slope: SlopeUncertainty,
+    hidden: Sequence[Hidden] = (),
 ) -> tuple[Source, ...]:
     """All sources whose uncertainty is above zero, in the order of the chain."""
     found = [
@@ -75,6 +78,7 @@ def list_sources(
         *_moments(trial, given),
         *_devices(trial, seen, slope),
         _curvature(heel),
+        *_hidden(trial, hidden),
         *_hydrostatics(trial, given),
         *_tanks(trial),
         *_lines(trial),
@@ -259,6 +263,20 @@ def _curvature(heel: HeelFit) -> Source:
         name="curvature that a straight line leaves out", field="slope_shift", item=None,
         u=heel.slope * gm_low, quantity=None, basis="estimated as for a wall-sided hull",
     )  # fmt: skip
+
+
+def _hidden(trial: Trial, hidden: Sequence[Hidden]) -> Iterator[Source]:
+    """Disturbances that residuals may hide, where the trial says that nothing excludes them.
+
+    Anything up to the size that would have shown may be there, either way.
+    """
+    for one in hidden:
+        if trial.settings.evidence.get(EVIDENCE[one.cause], "") == NOT_EXCLUDED:
+            yield Source(
+                name=f"not seen in the residuals: {one.cause}", field="slope_shift", item=None,
+                u=abs(one.slope_change) / math.sqrt(3.0), quantity=None, shape="rectangular",
+                basis="the trial does not exclude it",
+            )  # fmt: skip
 
 
 def _hydrostatics(trial: Trial, given: Inputs) -> Iterator[Source]:

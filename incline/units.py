@@ -1,7 +1,7 @@
 """Units: reading a quantity as a person writes it, and showing one in the trial's units.
 
-Inside the program everything is metres, tonnes, radians and degrees Celsius. The factors are those
-of ``scipy.constants`` (international foot and pound, long ton of 2240 lb).
+Inside the program everything is metres, tonnes, radians, seconds and degrees Celsius. The factors
+are those of ``scipy.constants`` (international foot and pound, long ton of 2240 lb).
 """
 
 from __future__ import annotations
@@ -14,7 +14,7 @@ from typing import Literal
 
 __all__ = [
     "ANGLE", "AREA", "DENSITY", "FRACTION", "LENGTH", "MASS", "MASS_PER_LENGTH", "MOMENT",
-    "MOMENT_PER_LENGTH", "SECOND_MOMENT", "SYSTEMS", "TEMPERATURE", "VOLUME", "Quantity",
+    "MOMENT_PER_LENGTH", "SECOND_MOMENT", "SPEED", "SYSTEMS", "TEMPERATURE", "TIME", "VOLUME", "Quantity",
     "QuantityError", "UnitSystem", "factor", "parse_number", "parse_quantity", "parse_transverse",
     "to_inside",
 ]  # fmt: skip
@@ -54,6 +54,8 @@ MOMENT_PER_LENGTH = Quantity("moment to change trim", 1, 0, "t m/cm or LT ft/in"
 ANGLE = Quantity("angle", 0, 0, "deg or rad")
 FRACTION = Quantity("fraction", 0, 0, "% or 1")
 TEMPERATURE = Quantity("temperature", 0, 0, "C or F")
+TIME = Quantity("time", 0, 0, "s or min")
+SPEED = Quantity("speed", 0, 0, "m/s or kn")
 
 _SUPERSCRIPTS = str.maketrans("²³⁴", "234")
 _TOKEN = re.compile(r"([A-Za-z]+)\^?([1-4]?)")
@@ -103,6 +105,14 @@ def _special(unit: str, quantity: Quantity) -> float | None:
         return {"deg": math.pi / 180.0, "°": math.pi / 180.0, "rad": 1.0}.get(unit.lower())
     if quantity is FRACTION:
         return {"%": 0.01, "1": 1.0}.get(unit)
+    if quantity is TIME:
+        from scipy.constants import minute
+
+        return {"s": 1.0, "min": float(minute)}.get(unit.lower())
+    if quantity is SPEED:
+        from scipy.constants import knot
+
+        return {"m/s": 1.0, "kn": float(knot)}.get(unit.lower())
     return {"c": 1.0, "°c": 1.0, "f": 1.0, "°f": 1.0}.get(unit.lower())
 
 
@@ -113,7 +123,7 @@ def factor(unit: str, quantity: Quantity) -> float:
     """
     unit = unit.strip().translate(_SUPERSCRIPTS)
     found: float | None = None
-    if quantity in (ANGLE, FRACTION, TEMPERATURE):
+    if quantity in (ANGLE, FRACTION, SPEED, TEMPERATURE, TIME):
         found = _special(unit, quantity)
     else:
         parts = [_product(p) for p in unit.split("/")]

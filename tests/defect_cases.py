@@ -475,4 +475,37 @@ CASES: list[tuple[Files, list[Found]]] = [
         ("key-missing", TOML, 0, "correlations[1].r"),
         ("id-twice", TOML, 0, "correlations[2].between"),
     ]),
+    # rolling test
+    (text(TOML, '[rolling]\ncondition = "empty"\n', ""), [
+        ("key-missing", TOML, 0, "rolling.condition"),
+    ]),
+    (text(TOML, '"empty"', '""'), [("key-missing", TOML, 0, "rolling.condition")]),
+    (text(TOML, '"empty"', '"half full"'), [("value-wrong", TOML, 0, "rolling.condition")]),
+    (text(TOML, '"empty"', "20"), [("value-wrong", TOML, 0, "rolling.condition")]),
+    (text(TOML, '"empty"', '"10 %"\nfactor = "0.8"'), [
+        ("key-unknown", TOML, 0, "rolling.factor"),
+    ]),
+    ({**without("rolls.csv"), "roll.csv": SMALL["rolls.csv"]}, [
+        ("file-missing", "rolls.csv", 0, ""),
+    ]),
+    (without("rolls.csv"), []),
+    (row("rolls.csv", 1, "run,rolls,time,note"), [("unit-missing", "rolls.csv", 1, "time")]),
+    (row("rolls.csv", 1, "run,rolls,time [m],note"), [("unit-wrong", "rolls.csv", 1, "time")]),
+    (row("rolls.csv", 1, "run,rolls [1],time [s],note"), [
+        ("unit-unwanted", "rolls.csv", 1, "rolls"),
+    ]),
+    (row("rolls.csv", 1, "run,count,time [s],note"), [
+        ("column-missing", "rolls.csv", 1, "rolls"),
+        ("column-unknown", "rolls.csv", 1, "count"),
+    ]),
+    (row("rolls.csv", 2, "1,0,46.3,"), [("number-not-positive", "rolls.csv", 2, "rolls")]),
+    (row("rolls.csv", 2, "1,5.5,46.3,"), [("number-unreadable", "rolls.csv", 2, "rolls")]),
+    (row("rolls.csv", 2, "1,,46.3,"), [("cell-missing", "rolls.csv", 2, "rolls")]),
+    (row("rolls.csv", 2, ",5,,"), [
+        ("cell-missing", "rolls.csv", 2, "run"),
+        ("cell-missing", "rolls.csv", 2, "time"),
+    ]),
+    (row("rolls.csv", 3, "2,5,-46.5,"), [("number-not-positive", "rolls.csv", 3, "time")]),
+    (row("rolls.csv", 3, "2,5,fast,"), [("number-unreadable", "rolls.csv", 3, "time")]),
+    (row("rolls.csv", 4, "2,5,46.5,"), [("id-twice", "rolls.csv", 4, "run")]),
 ]  # fmt: skip

@@ -59,6 +59,9 @@ mass = "80 kg"
 x = "20 m"
 y = "1.5 m P"
 z = "6 m"
+
+[rolling]
+condition = "empty"
 """,
     "weights.csv": """\
 id,mass [t],certificate,x [m],z [m]
@@ -121,6 +124,12 @@ draft [m],volume [m3],lcb [m],kb [m],km [m],lcf [m],area [m2],bml [m]
 2.5,1800,30,1.25,6.05,30,720,120
 3.0,2160,30,1.5,5.5,30,720,100
 3.5,2520,30,1.75,5.178571,30,720,85.714286
+""",
+    "rolls.csv": """\
+run,rolls,time [s],note
+1,5,46.3,
+2,5,46.5,
+3,6,55.5,from port
 """,
 }
 """File name -> text of the trial."""

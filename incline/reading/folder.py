@@ -21,6 +21,7 @@ from incline.reading.ledger import (
     read_items,
 )
 from incline.reading.readings import check_devices, check_shifts, read_readings, reading_columns
+from incline.reading.rolls import ROLL_COLUMNS, read_rolls
 from incline.reading.settings import read_head
 from incline.reading.tanks import TANK_COLUMNS, read_tanks
 from incline.reading.waterline import (
@@ -46,7 +47,7 @@ if TYPE_CHECKING:
 
     from incline.reading.cells import Column, Sheet
     from incline.reading.settings import Frame, Head
-    from incline.record import DraftReading, Item, Reading, Tank, Weight
+    from incline.record import DraftReading, Item, Reading, RollingRun, Tank, Weight
 
 __all__ = ["read_trial"]
 
@@ -60,9 +61,10 @@ _COLUMNS: dict[str, tuple[Column, ...]] = {
     "ledger.csv": ITEM_COLUMNS,
     "changes.csv": CHANGE_COLUMNS,
     "hydrostatics.csv": TABLE_COLUMNS,
+    "rolls.csv": ROLL_COLUMNS,
 }
 _FILES = ("trial.toml", *_COLUMNS)
-_OPTIONAL = frozenset({"weights.csv", "tanks.csv", "ledger.csv", "changes.csv"})
+_OPTIONAL = frozenset({"weights.csv", "tanks.csv", "ledger.csv", "changes.csv", "rolls.csv"})
 _EXPECTED = "a file that a trial must have"
 _Record = TypeVar("_Record")
 
@@ -182,6 +184,9 @@ class _Reader:
             items=self._items(weights, tanks),
             changes=self._rows("changes.csv", read_changes),
             table=read_hydrostatics(self.sheets["hydrostatics.csv"], frame),
+            rolls=self._rolls(),
+            environment=head.environment,
+            hydrometer=head.hydrometer,
             remarks=(*remarks, *by_moment, *assumed, *partial),
         )
 
@@ -235,6 +240,10 @@ class _Reader:
         drafts, remarks = read_drafts(sheet, self.head.frame)
         check_drafts(sheet, drafts, self.head.frame)
         return drafts, remarks
+
+    def _rolls(self) -> tuple[RollingRun, ...]:
+        sheet = self.sheets["rolls.csv"]
+        return read_rolls(sheet, self.head.settings.roll_condition) if sheet else ()
 
     def _tanks(self) -> tuple[tuple[Tank, ...], list[str]]:
         sheet = self.sheets["tanks.csv"]

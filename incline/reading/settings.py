@@ -2,17 +2,18 @@
 
 from __future__ import annotations
 
-import datetime
-import re
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
 from incline.errors import Where
 from incline.reading.assumptions import read_assumed, read_correlations
 from incline.reading.collect import BAD, Sign, quoted
+from incline.reading.occasion import read_environment, read_hydrometer, read_occasion
+from incline.reading.overrides import read_overrides
+from incline.reading.rolls import read_condition
 from incline.reading.tomlfile import FILE, Document, shown
 from incline.reading.uncertainty import of_key
-from incline.record import Device, Occasion, Person, Point, Settings, Stated, Vessel
+from incline.record import Device, Environment, Occasion, Person, Point, Settings, Stated, Vessel
 from incline.units import ANGLE, DENSITY, FRACTION, LENGTH, MASS
 
 if TYPE_CHECKING:
@@ -28,7 +29,8 @@ __all__ = ["LENGTH_KEYS", "Frame", "Head", "read_head"]
 _BASE, _KEEL = "baseline", "underside of keel"
 _SECTIONS = (
     "vessel", "test", "axes", "output", "rules", "method", "drafts", "hydrostatics", "density",
-    "devices", "people", "limits", "uncertainty", "correlations",
+    "devices", "people", "limits", "uncertainty", "correlations", "rolling", "evidence",
+    "environment", "instruments", "overrides",
 )  # fmt: skip
 LENGTH_KEYS = {"pendulum": "length", "u-tube": "span", "inclinometer": ""}
 """The key that gives the length by which a device's readings are divided."""
@@ -62,6 +64,8 @@ class Head:
     settings: Settings
     devices: tuple[Device, ...]
     people: tuple[Person, ...]
+    environment: Environment
+    hydrometer: tuple[float, float] | None
     frame: Frame
     complete: bool
 
@@ -80,7 +84,9 @@ def read_head(data: bytes | None, collector: Collector) -> Head:
     _check_ids([p.name for p in people], "people", "name", collector)
     head = Head(
         vessel=vessel,
-        occasion=_occasion(document.section("test")),
+        occasion=read_occasion(document.section("test")),
+        environment=read_environment(document.section("environment")),
+        hydrometer=read_hydrometer(document.section("instruments")),
         settings=settings,
         devices=devices,
         people=people,
@@ -116,42 +122,12 @@ def _vessel(section: Section) -> Vessel:
     return vessel
 
 
-def _occasion(section: Section) -> Occasion:
-    occasion = Occasion(
-        date=_date(section),
-        place=section.text("place", required=True),
-        berth=section.text("berth"),
-        weather=section.text("weather"),
-        water_depth=section.maybe("water_depth", LENGTH, Sign.POSITIVE),
-        notes=section.text("notes"),
-    )
-    section.close()
-    return occasion
-
-
-def _date(section: Section) -> datetime.date:
-    found = section.value("date")
-    expected = "a date written year-month-day, such as 2026-03-14"
-    if found is None:
-        section.missing("date", expected)
-    elif type(found) is datetime.date:  # a date with a time of day is a subclass
-        return found
-    else:
-        text = found.strip() if isinstance(found, str) else ""
-        try:
-            if re.fullmatch(r"[0-9]{4}-[0-9]{2}-[0-9]{2}", text):
-                return datetime.date.fromisoformat(text)
-        except ValueError:  # such as the 30th of February
-            pass
-        section.fault("date", "value-wrong", quoted(shown(found)), expected)
-    return datetime.date.min
-
-
 def _choices(document: Document, vessel: Vessel) -> tuple[Settings, Frame]:
     axes, output = document.section("axes"), document.section("output")
     rules, method = document.section("rules"), document.section("method")
     drafts, table = document.section("drafts"), document.section("hydrostatics")
     density, limits = document.section("density"), document.section("limits")
+    rolling, evidence = document.section("rolling"), document.section("evidence")
     marks_from = drafts.choice("marks_from", (_BASE, _KEEL))
     table_from = table.choice("drafts_from", (_BASE, _KEEL), _BASE)
     keel = _keel_thickness(drafts, needed=_KEEL in (marks_from, table_from))
@@ -169,6 +145,9 @@ def _choices(document: Document, vessel: Vessel) -> tuple[Settings, Frame]:
         kg_limit=limits.maybe("kg", LENGTH, Sign.POSITIVE),
         assumed=read_assumed(document.section("uncertainty")),
         correlations=read_correlations(document.sections("correlations")),
+        roll_condition=read_condition(rolling),
+        overrides=read_overrides(document.sections("overrides")),
+        evidence={key: evidence.text(key) for key in ("liquids", "lines", "weather", "drift")},
     )
     frame = Frame(
         lpp=vessel.lpp,
@@ -180,7 +159,7 @@ def _choices(document: Document, vessel: Vessel) -> tuple[Settings, Frame]:
         relative_to=_given(density, "relative_to"),
         table_stated=_table_stated(table),
     )
-    for section in (axes, output, rules, method, drafts, table, density, limits):
+    for section in (axes, output, rules, method, drafts, table, density, limits, rolling, evidence):
         section.close()
     return settings, frame
 

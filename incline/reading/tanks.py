@@ -34,6 +34,8 @@ TANK_COLUMNS = (
     Column("length", LENGTH, sign=Sign.POSITIVE),
     Column("breadth", LENGTH, sign=Sign.POSITIVE),
     Column("shape"),
+    Column("depth", LENGTH, sign=Sign.POSITIVE),
+    Column("type"),
 )
 _MASS_AGREES = 0.005
 _FSM_AGREES = 0.01
@@ -46,6 +48,7 @@ def read_tanks(sheet: Sheet, frame: Frame) -> tuple[tuple[Tank, ...], list[str]]
     remarks: list[str] = []
     seen: dict[str, int] = {}
     states: tuple[_State, ...] = ("empty", "pressed full", "slack")
+    types: tuple[Literal["deep", "double bottom"], ...] = ("deep", "double bottom")
     for row in sheet.rows:
         name = row.text("tank", required=True)
         before = seen.setdefault(name.casefold(), row.number)
@@ -68,6 +71,10 @@ def read_tanks(sheet: Sheet, frame: Frame) -> tuple[tuple[Tank, ...], list[str]]
                 fsm=fsm,
                 fsm_basis=basis,
                 where=row.where(),
+                depth=_depth(row),
+                length=row.maybe("length"),
+                breadth=row.maybe("breadth"),
+                type=row.choice("type", types, "") or "",
                 stated=_stated(row, name, state, {"mass": mass, "fsm": fsm}, remarks),
             )
         )
@@ -104,6 +111,14 @@ def _stated(
             f"The uncertainty of the mass in tank {name} is that stated of its {only} alone."
         )
     return said
+
+
+def _depth(row: Row) -> float | None:
+    """Depth of the tank [m]; a level above it is a contradiction."""
+    depth, level = row.maybe("depth"), row.maybe("level")
+    if depth is not None and level is not None and level > depth:
+        _contradiction(row, "level", quoted(row.raw("level")), "a level within the tank's depth")
+    return depth
 
 
 def _liquid(row: Row, state: _State | None, frame: Frame) -> tuple[float, Point | None]:

@@ -1,4 +1,4 @@
-"""``trial.toml`` as sections of checked values. Lists count from one: ``devices[1].id``."""
+"""A TOML file as sections of checked values. Lists count from one: ``devices[1].id``."""
 
 from __future__ import annotations
 
@@ -39,7 +39,14 @@ class Section:
     every value is a stand-in and gives no further defect.
     """
 
-    def __init__(self, path: str, values: dict[str, object] | None, collector: Collector) -> None:
+    def __init__(
+        self,
+        path: str,
+        values: dict[str, object] | None,
+        collector: Collector,
+        file: str = FILE,
+    ) -> None:
+        self.file = file
         self.path = path
         self.readable = values is not None
         self.collector = collector
@@ -49,7 +56,7 @@ class Section:
 
     def where(self, key: str) -> Where:
         """The place of a key."""
-        return Where(FILE, 0, f"{self.path}.{key}")
+        return Where(self.file, 0, f"{self.path}.{key}" if self.path else key)
 
     def fault(self, key: str, code: str, found: str, expected: str, hint: str = "") -> None:
         """Collect a defect at a key, and remember the key as ``failed``."""
@@ -164,7 +171,8 @@ class Section:
 class Document:
     """The whole file."""
 
-    def __init__(self, data: bytes | None, collector: Collector) -> None:
+    def __init__(self, data: bytes | None, collector: Collector, file: str = FILE) -> None:
+        self.file = file
         self.collector = collector
         self.readable = False
         self._tables: dict[str, object] = {}
@@ -172,7 +180,7 @@ class Document:
             self._parse(data)
 
     def _parse(self, data: bytes) -> None:
-        text = decode(FILE, data, self.collector)
+        text = decode(self.file, data, self.collector)
         if text is None:
             return
         text = re.sub(r"\r\n?", "\n", text)
@@ -184,31 +192,35 @@ class Document:
             row = int(at[1]) if at and at[1] else len(lines)
             reason = str(error)[: at.start()] if at else "simple values"
             found = quoted(lines[row - 1].strip()) if lines[row - 1].strip() else NOTHING
-            self.collector.add(Where(FILE, row), "toml-syntax", found, f"TOML: {reason}")
+            self.collector.add(Where(self.file, row), "toml-syntax", found, f"TOML: {reason}")
             return
         self.readable = True
+
+    def root(self) -> Section:
+        """The keys above the first section of a file that needs no sections."""
+        return Section("", self._tables if self.readable else None, self.collector, self.file)
 
     def section(self, name: str) -> Section:
         """The table ``[name]``; an absent one is like an empty one."""
         if not self.readable:
-            return Section(name, None, self.collector)
+            return Section(name, None, self.collector, self.file)
         found = self._tables.get(name, {})
         if isinstance(found, dict):
-            return Section(name, found, self.collector)
-        where = Where(FILE, 0, name)
+            return Section(name, found, self.collector, self.file)
+        where = Where(self.file, 0, name)
         self.collector.add(where, "value-wrong", quoted(shown(found)), f"a section [{name}]")
-        return Section(name, None, self.collector)
+        return Section(name, None, self.collector, self.file)
 
     def sections(self, name: str) -> list[Section]:
         """The tables ``[[name]]``."""
         found = self._tables.get(name, [])
         if not isinstance(found, list) or not all(isinstance(f, dict) for f in found):
-            where = Where(FILE, 0, name)
+            where = Where(self.file, 0, name)
             expected = f"sections [[{name}]] with double brackets"
             self.collector.add(where, "value-wrong", quoted(shown(found)), expected)
             return []
         return [
-            Section(f"{name}[{n}]", values, self.collector)
+            Section(f"{name}[{n}]", values, self.collector, self.file)
             for n, values in enumerate(found, start=1)
         ]
 
@@ -221,5 +233,5 @@ class Document:
         names = tuple(known)
         for name in self._tables.keys() - set(names):
             expected = "one of the sections " + ", ".join(names)
-            where = Where(FILE, 0, quoted(name)[1:-1])
+            where = Where(self.file, 0, quoted(name)[1:-1])
             self.collector.add(where, "key-unknown", quoted(name), expected, nearest(name, names))

@@ -6,7 +6,7 @@ import itertools
 import math
 import re
 from dataclasses import dataclass, field
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Literal
 
 from incline.errors import Where
 from incline.reading.cells import Column
@@ -32,6 +32,7 @@ WEIGHT_COLUMNS = (
     Column("certificate", required=True),
     Column("x", LENGTH, required=True, stated=True),
     Column("z", LENGTH, required=True, stated=True),
+    Column("kind"),
 )
 SHIFT_COLUMNS = (
     Column("shift", required=True),
@@ -50,6 +51,7 @@ def read_weights(sheet: Sheet, frame: Frame) -> tuple[Weight, ...]:
     """The test weights; two with the same id are a defect."""
     weights: list[Weight] = []
     seen: dict[str, int] = {}
+    kinds: tuple[Literal["solid", "liquid"], ...] = ("solid", "liquid")
     for row in sheet.rows:
         weight = Weight(
             id=row.text("id", required=True),
@@ -58,6 +60,7 @@ def read_weights(sheet: Sheet, frame: Frame) -> tuple[Weight, ...]:
             x=row.need("x") + frame.x_shift,
             z=row.need("z"),
             where=row.where(),
+            kind=row.choice("kind", kinds, "solid") or "solid",
             stated=of_row(row, "mass", "x", "z"),
         )
         before = seen.setdefault(weight.id.casefold(), row.number)
