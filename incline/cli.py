@@ -97,14 +97,23 @@ def start(
 
 @app.command()
 def check(trial: Trial) -> None:
-    """Read a trial and say what is wrong with it, all at once.
+    """Read a trial, say all that is wrong with it, and hold it against the published criteria.
 
-    Example: incline check my-vessel
+    Exit status 3 when a criterion is not met. Example: incline check my-vessel
     """
     from incline import read_trial
+    from incline import reduce as work_out
+    from incline.progress import Step
     from incline.screen import summary
+    from incline.screen_checks import show_checks
 
-    print(summary(read_trial(trial)))
+    record = read_trial(trial)
+    print(summary(record), flush=True)
+    with Step("Judging the trial"):
+        result = work_out(record)
+    print("\n" + show_checks(result))
+    if any(c.status == "fail" for c in result.checks):
+        raise typer.Exit(3)
 
 
 @app.command()

@@ -45,6 +45,7 @@ def diagnosis_of(search: Search, model: TrialModel, evidence: Mapping[str, str])
                 vcg_if_so=None if s.slope_change is None else vcg,
                 advice=s.advice,
                 rank=s.rank,
+                expected=s.expected,
             )
             for s, vcg in zip(search.signs, signs, strict=True)
         ),

@@ -15,8 +15,8 @@ from incline.errors import Where
 
 __all__ = [
     "Change", "Correlation", "Device", "DraftReading", "Environment", "HydrostaticTable", "Item",
-    "Move", "Occasion", "Override", "Person", "Point", "Reading", "RollCondition", "RollingRun", "Sample",
-    "Settings", "Shift", "Stated", "Statements", "Tank", "Trial", "Vessel", "Weight",
+    "Move", "Occasion", "Override", "Person", "Point", "Reading", "RollCondition", "RollingRun",
+    "Sample", "Settings", "Shift", "Stated", "Statements", "Tank", "Trial", "Vessel", "Weight",
 ]  # fmt: skip
 
 

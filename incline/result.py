@@ -368,6 +368,8 @@ class Finding:
     ``score`` is its statistic and ``critical`` the value that a clean trial passes in 5 % of cases;
     ``size`` says how large it is, in words; ``vcg_if_so`` [m] is lightship KG if it is the cause.
     ``rank`` is 0 for the explanation that fits best, 1... for those that fit nearly as well.
+    ``expected`` are the tangents that the readings that count would have under it and the findings
+    before it, scatter apart, in the order of ``HeelFit.points``; empty where there is no pattern.
     """
 
     cause: str
@@ -380,6 +382,7 @@ class Finding:
     vcg_if_so: float | None
     advice: str
     rank: int
+    expected: tuple[float, ...] = ()
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -14,9 +14,9 @@ from typing import Literal
 
 __all__ = [
     "ANGLE", "AREA", "DENSITY", "FRACTION", "LENGTH", "MASS", "MASS_PER_LENGTH", "MOMENT",
-    "MOMENT_PER_LENGTH", "SECOND_MOMENT", "SPEED", "SYSTEMS", "TEMPERATURE", "TIME", "VOLUME", "Quantity",
-    "QuantityError", "UnitSystem", "factor", "parse_number", "parse_quantity", "parse_transverse",
-    "to_inside",
+    "MOMENT_PER_LENGTH", "SECOND_MOMENT", "SPEED", "SYSTEMS", "TEMPERATURE", "TIME", "VOLUME",
+    "Quantity", "QuantityError", "UnitSystem", "factor", "parse_number", "parse_quantity",
+    "parse_transverse", "to_inside",
 ]  # fmt: skip
 
 SystemName = Literal["metric", "us"]

@@ -508,4 +508,40 @@ CASES: list[tuple[Files, list[Found]]] = [
     (row("rolls.csv", 3, "2,5,-46.5,"), [("number-not-positive", "rolls.csv", 3, "time")]),
     (row("rolls.csv", 3, "2,5,fast,"), [("number-unreadable", "rolls.csv", 3, "time")]),
     (row("rolls.csv", 4, "2,5,46.5,"), [("id-twice", "rolls.csv", 4, "run")]),
+    # what the criteria ask for
+    (added("weights.csv", {"kind": ". gas"}), [("value-wrong", "weights.csv", 3, "kind")]),
+    (added("tanks.csv", {"depth [m]": "0.4 . . ."}), [("tank-contradiction", "tanks.csv", 2, "level")]),
+    (added("tanks.csv", {"depth [m]": "0 . . ."}), [("number-not-positive", "tanks.csv", 2, "depth")]),
+    (added("tanks.csv", {"type": "wing . . ."}), [("value-wrong", "tanks.csv", 2, "type")]),
+    (key("2026-01-19", "2026-03-01"), [("value-wrong", TOML, 0, "test.notice_date")]),
+    (key("2026-01-19", '"19.1.2026"'), [("value-wrong", TOML, 0, "test.notice_date")]),
+    (key('"1.25 m"', '"1.25 t"'), [("unit-wrong", TOML, 0, "test.gm_before")]),
+    (key('"4 kn"', '"4 m"'), [("unit-wrong", TOML, 0, "environment.wind_speed")]),
+    (key('"4 kn"', '"-4 kn"'), [("number-negative", TOML, 0, "environment.wind_speed")]),
+    (key('shelter = "inner basin"', 'shelter = 3\nmooring = "slack"'), [
+        ("value-wrong", TOML, 0, "environment.shelter"),
+        ("key-unknown", TOML, 0, "environment.mooring"),
+    ]),
+    (key("0.998 to 1.031", "0.998"), [("value-wrong", TOML, 0, "instruments.hydrometer_range")]),
+    (key("0.998 to 1.031", "1.031 to 0.998"), [
+        ("value-wrong", TOML, 0, "instruments.hydrometer_range"),
+    ]),
+    (key('check = "initial-list"', 'check = "list"'), [("value-wrong", TOML, 0, "overrides[1].check")]),
+    (key('check = "initial-list"', ""), [("key-missing", TOML, 0, "overrides[1].check")]),
+    (key('high = "0.8 deg"', ""), [("key-missing", TOML, 0, "overrides[1].limit")]),
+    (key('high = "0.8 deg"', "high = 0.8"), [("unit-missing", TOML, 0, "overrides[1].high")]),
+    (key('high = "0.8 deg"', 'high = "0.8 m"'), [("unit-wrong", TOML, 0, "overrides[1].high")]),
+    (key('high = "0.8 deg"', 'high = "0.8 deg"\nlow = "0.9 deg"'), [
+        ("value-wrong", TOML, 0, "overrides[1].low"),
+    ]),
+    (key('limit = "accepted by the authority"', "high = 1"), [
+        ("value-wrong", TOML, 0, "overrides[3].high"),
+    ]),
+    (key('reason = "letter 12"', ""), [("key-missing", TOML, 0, "overrides[3].reason")]),
+    (key("low = 3", 'low = "three"'), [("number-unreadable", TOML, 0, "overrides[2].low")]),
+    (key("low = 3", "low = true"), [("value-wrong", TOML, 0, "overrides[2].low")]),
+    (key("low = 3", "low = inf"), [("number-not-finite", TOML, 0, "overrides[2].low")]),
+    (key('check = "movements"\nlow = 3', 'check = "initial-list"\nlow = "0 deg"'), [
+        ("id-twice", TOML, 0, "overrides[2].check"),
+    ]),
 ]  # fmt: skip

@@ -1,4 +1,4 @@
-"""The two invented demo trials: their true ships, and the styles they are written in."""
+"""The invented demo trials: their true ships, and the styles they are written in."""
 
 from __future__ import annotations
 
@@ -126,10 +126,59 @@ PELICAN_STYLE = Style(
 )  # fmt: skip
 PELICAN_PLACES = tuple(f * FOOT for f in (6.0, 40.0, 71.0, 104.0, 136.0))
 
+# The same hull with another outfit. A line comes taut when she heels to starboard, and P2 was
+# measured 3 % too long.
+DUNLIN = replace(
+    KESTREL,
+    light=Mass("lightship", 302.70, 11.740, -0.006, 3.168),
+    density=1.0232,
+    deduct=(
+        Mass("workshop container", 1.860, 8.70, 0.30, 5.00),
+        Mass("cable drums", 0.940, 19.80, -1.40, 4.45),
+    ),
+    add=(
+        Mass("deck crane's hook and wire", 0.410, 16.20, 0.00, 6.90),
+        Mass("fire monitor", 0.260, 10.10, 0.00, 8.20),
+    ),
+    relocate=(),
+    people=(
+        Mass("H. Castellano, surveyor in charge", 0.082, 10.5, -0.4, 4.9),
+        Mass("I. Wroblewska, reads P1", 0.070, 6.0, 0.0, 2.3),
+        Mass("J. Adeyemi, reads P2", 0.085, 14.0, 0.0, 2.3),
+        Mass("K. Lund, reads P3", 0.090, 19.5, 0.0, 2.4),
+    ),
+    lengths={"P1": 3.180, "P2": 3.520, "P3": 3.240},
+    zeros={"P1": 0.41 / 3.180, "P2": 0.38 / 3.520, "P3": 0.36 / 3.240},
+    recorded={"P2": 3.626},
+    line=(6.0, 0.13),
+    rolls=((8, 52.3), (8, 53.4), (7, 46.0)),
+)
+
+DUNLIN_HEAD = {
+    "name": "Dunlin Bight", "number": "INV-3096", "depth": "3.90", "date": "2026-04-21",
+    "place": "Coal quay, Port Averil", "berth": "alongside to starboard, lines slacked by hand",
+    "weather": "clear, wind 3 m/s from astern", "water_depth": "5.8", "rules": "IMO",
+    "P1": "engine room", "P2": "hold", "P3": "forward store",
+    "more": '''
+[rolling]
+condition = "20 %"
+
+[evidence]
+lines = "not excluded"
+weather = "log of wind and current, every ten minutes"
+drift = "the day tank was sounded before and after, the same"
+''',
+}  # fmt: skip
+
+DUNLIN_STYLE = replace(KESTREL_STYLE, seed=3096)
+
 DEMOS = {
     "workboat-metric": (KESTREL, KESTREL_STYLE, KESTREL_HEAD, KESTREL_PLACES),
     "supply-vessel-us": (PELICAN, PELICAN_STYLE, PELICAN_HEAD, PELICAN_PLACES),
+    "disturbed-metric": (DUNLIN, DUNLIN_STYLE, DUNLIN_HEAD, KESTREL_PLACES),
 }
+CLEAN = ("workboat-metric", "supply-vessel-us")
+"""Those that nothing disturbed."""
 
 
 def demo_files(

@@ -112,6 +112,11 @@ class Scene:
     allowance: float = 0.0
     lengths: dict[str, float] = field(default_factory=dict)
     zeros: dict[str, float] = field(default_factory=dict)  # tangent at upright
+    recorded: dict[str, float] = field(default_factory=dict)  # lengths written down wrong
+    # A line that comes taut at this moment [t m], to starboard if positive, and from there on takes
+    # this share of what is added.
+    line: tuple[float, float] | None = None
+    rolls: tuple[tuple[int, float], ...] = ()  # of a rolling test: full rolls, seconds
 
     def inclined(self) -> Mass:
         """The ship as inclined, liquids where they lie upright: lightship and all aboard."""
@@ -140,6 +145,14 @@ class Scene:
             at.update(moves)
             found.append(sum(mass[n] * (at[n] - start[n]) for n in at))
         return found
+
+    def held(self, moment: float) -> float:
+        """What is left of a moment when the line has taken its share."""
+        if self.line is None:
+            return moment
+        taut, share = self.line
+        over = moment - taut
+        return moment - share * over if over * taut > 0.0 else moment
 
     def equilibrium(self, moment: float = 0.0) -> tuple[float, float, float]:
         """Draft at the centre of flotation, tangent of heel and tau, under a moment."""

@@ -192,9 +192,36 @@ _STATED_KEYS = {
     'length = "4 m"': 'tolerance_length = "3 mm"\nresolution = "1 mm"',
     'kind = "inclinometer"': 'u_scale = "0.1 %"\nresolution = "0.01 deg"',
     'mass = "80 kg"': 'u_mass = "10 %"\nu_x = "0.1 m"\ntolerance_y = "5 %"\nresolution_z = "1 m"',
+    'place = "Basin"': 'notice_date = 2026-01-19\ngm_before = "1.25 m"\nwater_depth = "7 m"',
     'allowance = "0 %"': 'u_volume = "0.2 %"\nu_km = "5 mm"\ntolerance_lcb = "12 mm"',
 }
 _SECTIONS = """
+[environment]
+shelter = "inner basin"
+lines = "slack, tended"
+gangway = "landed"
+wind = "light airs"
+wind_speed = "4 kn"
+current = "none"
+
+[instruments]
+hydrometer_range = "0.998 to 1.031"
+
+[[overrides]]
+check = "initial-list"
+high = "0.8 deg"
+reason = "cargo gear cannot be moved; agreed by letter"
+
+[[overrides]]
+check = "movements"
+low = 3
+reason = "two weights only"
+
+[[overrides]]
+check = "liquid-as-weight"
+limit = "accepted by the authority"
+reason = "letter 12"
+
 [limits]
 kg = "5.40 m"
 
@@ -223,7 +250,12 @@ STATED: dict[str, str] = {
     "trial.toml": _stated_toml(),
     "weights.csv": beside(
         "weights.csv",
-        {"u mass [t]": "0.02 .", "tolerance mass [%]": ". 0.5", "resolution x [m]": "0.01 0.01"},
+        {
+            "kind": ". liquid",
+            "u mass [t]": "0.02 .",
+            "tolerance mass [%]": ". 0.5",
+            "resolution x [m]": "0.01 0.01",
+        },
     ),
     "shifts.csv": beside(
         "shifts.csv", {"tolerance y [m]": "0.01 0.01 0.01 0.01 .", "u z [m]": ". . . 0.03 ."}
@@ -246,6 +278,8 @@ STATED: dict[str, str] = {
             "u mass [t]": "0.1 . . 0.2",
             "u fsm [%]": "5 . . 10",
             "tolerance y [m]": ". 0.1 . .",
+            "depth [m]": "1.2 2 . .",
+            "type": "deep . . .",
         },
     ),
     "ledger.csv": beside(

@@ -22,7 +22,7 @@ def incline(
     )  # fmt: skip
 
 
-@pytest.mark.parametrize("command", [[], ["start"], ["check"], ["reduce"], ["report"]])
+@pytest.mark.parametrize("command", [[], ["start"], ["check"], ["reduce"], ["report"], ["compare"]])
 def test_help_carries_an_example(command):
     run = incline(*command, "--help")
     assert run.returncode == 0
@@ -54,6 +54,52 @@ def test_check_says_what_was_read():
     assert run.returncode == 0
     assert "9 shifts" in run.stdout
     assert "27 readings" in run.stdout
+
+
+def test_check_prints_every_criterion_in_80_columns():
+    run = incline("check", WORKBOAT)
+    assert "judged by IMO" in run.stdout
+    assert "verify against the current edition" in run.stdout
+    assert "NOT RECORDED" in run.stdout
+    assert max(map(len, run.stdout.splitlines())) <= 80
+    listed = {line.split(" ")[0] for line in run.stdout.splitlines()}
+    checks = json.loads(incline("reduce", WORKBOAT, "--json", "-").stdout)["checks"]
+    assert {c["id"] for c in checks} <= listed
+    assert {c["status"] for c in checks} <= {"pass", "fail", "not recorded", "not applicable"}
+    assert {"id", "status", "found", "limit", "unit", "source", "edition", "evidence"} <= checks[
+        0
+    ].keys()
+
+
+def _copy(folder, file, old, new):
+    folder.mkdir()
+    for source in WORKBOAT.iterdir():
+        text = source.read_text(encoding="utf-8")
+        if source.name == file:
+            assert old in text
+            text = text.replace(old, new)
+        (folder / source.name).write_text(text, encoding="utf-8")
+    return folder
+
+
+def test_check_exits_3_when_a_criterion_is_not_met(tmp_path):
+    folder = _copy(tmp_path / "t", "trial.toml", 'set = "IMO"', 'set = "US"')
+    run = incline("check", folder)
+    assert run.returncode == 3
+    assert "NOT MET" in run.stdout
+    assert "deflection-15" in run.stdout.split("NOT MET")[1]
+    assert run.stderr == ""
+
+
+def test_check_of_a_trial_that_cannot_be_reduced_exits_1(tmp_path):
+    folder = _copy(tmp_path / "t", "weights.csv", "4.600", "4.600")
+    rows = (folder / "shifts.csv").read_text(encoding="utf-8")
+    flip = rows.replace(",-", ",+").replace(",3.", ",-3.").replace(",+", ",")
+    (folder / "shifts.csv").write_text(flip, encoding="utf-8")
+    run = incline("check", folder)
+    assert run.returncode == 1
+    assert "every device heels away from the moment" in run.stderr
+    assert "Traceback" not in run.stderr
 
 
 def test_reduce_prints_tables_and_writes_json(tmp_path):

@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 import pytest
-from defect_cases import CASES, TOML, Files, Found, row, text, without
+from defect_cases import CASES, TOML, Files, Found, key, row, text, without
 from small_trial import SMALL, write
 
 from incline.errors import Defect, FieldDataError, Where
@@ -144,6 +144,7 @@ def test_what_was_found_is_quoted_and_cut(tmp_path: Path) -> None:
         (row("changes.csv", 2, "aboard,mat,1,5,30,0,5"), "decimals have a point"),
         (row("changes.csv", 2, 'aboard,mat,"1,5",30,0,5'), "decimals have a point"),
         (row("changes.csv", 1, "change,item,mass [tons],x [m],y [m],z [m]"), "LT for long tons"),
+        (key('check = "initial-list"', 'check = "intial-list"'), 'did you mean "initial-list"?'),
     ],
 )
 def test_hints(tmp_path: Path, files: Files, hint: str) -> None:

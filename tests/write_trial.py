@@ -146,6 +146,9 @@ def trial_tables(scene: Scene, style: Style, places: tuple[float, ...]) -> dict[
              ("volume", "volume"), *CENTRE, ("length", "length"), ("breadth", "length")),
             tanks,
         )  # fmt: skip
+    if scene.rolls:
+        runs = [(n, rolls, f"{time:.1f}") for n, (rolls, time) in enumerate(scene.rolls, start=1)]
+        files["rolls.csv"] = w.table((("run", ""), ("rolls", ""), ("time [s]", "")), runs)
     if ledger:
         files["ledger.csv"] = w.table(
             (("action", ""), ("item", ""), ("mass", "mass"), *CENTRE, *to), ledger
@@ -161,7 +164,7 @@ def _readings(scene: Scene, style: Style, w: Writer, rng: np.random.Generator) -
     wide = 5 if style.swings else 3 if style.repeats else 1
     rows: list[tuple[object, ...]] = []
     for n, moment in enumerate(scene.shift_moments()):
-        tangent = scene.equilibrium(moment)[1]
+        tangent = scene.equilibrium(scene.held(moment))[1]
         for device, length in scene.lengths.items():
             value = length * (tangent + scene.zeros[device])
             if device in style.swings:
@@ -207,7 +210,7 @@ def trial_toml(scene: Scene, style: Style, head: Mapping[str, str]) -> str:
     hull = scene.hull
     devices = "".join(
         f'\n[[devices]]\nid = "{d}"\nkind = "{"u-tube" if d.startswith("U") else "pendulum"}"\n'
-        f'{"span" if d.startswith("U") else "length"} = "{w.quantity(length, "length")}"\n'
+        f'{"span" if d.startswith("U") else "length"} = "{w.quantity(scene.recorded.get(d, length), "length")}"\n'
         f'place = "{head.get(d, "hold")}"\ncalibration = "tape T-7"\n'
         for d, length in scene.lengths.items()
     )
@@ -249,4 +252,4 @@ marks_from = "baseline"
 [hydrostatics]
 volume = "moulded"
 allowance = "{scene.allowance * 100:.4g} %"
-{devices}{"".join(person(p) for p in scene.people)}"""
+{head.get("more", "")}{devices}{"".join(person(p) for p in scene.people)}"""

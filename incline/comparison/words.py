@@ -14,7 +14,7 @@ from incline.units import LENGTH, MASS, SYSTEMS
 if TYPE_CHECKING:
     from incline.comparison.figures import Figures
     from incline.comparison.judging import Comparison, Difference, Judgement
-    from incline.comparison.situations import Limit
+    from incline.comparison.situations import Limit, Situation
     from incline.result import Estimate
     from incline.units import UnitSystem
 
@@ -27,6 +27,7 @@ _NAMES = {
 }  # fmt: skip
 _OF = {"displacement": "", "vcg": "", "lcg": " of L", "weight changes": " of displacement"}
 _RULE = "-" * 84
+_ACCEPTANCE = "Acceptance rests with the flag administration or its recognised organisation."
 _VERIFY = "verify against the current edition"
 
 
@@ -35,11 +36,9 @@ def list_situations() -> str:
     lines = ["Situations for incline compare OLD NEW --situation ID"]
     for s in situations():
         lines += ["", f"{s.id} ({s.rule_set})", f"  {s.title}"]
-        lines += [
-            f"  {_NAMES[limit.quantity]} {_in_words(limit)}: else {limit.follows}"
-            f" [{_credit(limit)}]"
-            for limit in s.limits
-        ]
+        for x in s.limits:
+            said = f"{_NAMES[x.quantity]} {_in_words(x)}, else {x.follows} [{_credit(x)}]"
+            lines += _wrapped(said, "  - ")
         lines += [f"  {s.note}"] if s.note else []
     return "\n".join(lines)
 
@@ -68,28 +67,28 @@ def show_comparison(comparison: Comparison, units: str | None = None) -> str:
     lines += [_difference(d, system) for d in c.differences]
     lines.append("  In % of the old value, LCG in % of L; LCG from the after perpendicular.")
     if c.situation is not None:
-        lines += ["", f"{c.situation.id}: {c.situation.title} ({c.situation.rule_set})"]
-        if c.length is None:
-            lines.append("  L is not known")
-        else:
-            shown = system.show(c.length, LENGTH, system.length, 2)
-            more = (
-                "" if c.length_from == GIVEN else "; where the rules define L otherwise, --length"
-            )
-            lines.append(f"  L = {shown} {system.length}, {c.length_from}{more}")
-        for judgement in c.judgements:
-            lines += _judgement(judgement, system)
-        lines += ["", *_verdict(c)]
-        advice = recommendation(c, system)
-        lines += _wrapped(advice) if advice else []
+        lines += ["", *_judged(c, c.situation, system)]
     notes = [*c.remarks, *([c.situation.note] if c.situation and c.situation.note else [])]
     if notes:
         lines += ["", "Remarks", *(line for note in notes for line in _wrapped(note, "  - "))]
-    acceptance = "Acceptance rests with the flag administration or its recognised organisation."
-    lines += ["", acceptance]
+    lines += ["", _ACCEPTANCE]
     if c.situation is None:
         lines += ["", "No situation was named: nothing is judged.", "", list_situations()]
     return "\n".join(lines)
+
+
+def _judged(c: Comparison, situation: Situation, system: UnitSystem) -> list[str]:
+    """The situation, the length, every limit and the verdict."""
+    lines = _wrapped(f"{situation.id}: {situation.title} ({situation.rule_set})")
+    if c.length is None:
+        lines.append("  L is not known (--length gives it)")
+    else:
+        shown = system.show(c.length, LENGTH, system.length, 2)
+        more = "" if c.length_from == GIVEN else " (--length where the rules define it otherwise)"
+        lines.append(f"  L = {shown} {system.length}, {c.length_from}{more}")
+    for judgement in c.judgements:
+        lines += _judgement(judgement, system)
+    return [*lines, "", *_verdict(c), *_wrapped(recommendation(c, system))]
 
 
 def _wrapped(text: str, first: str = "") -> list[str]:
@@ -106,8 +105,9 @@ def _difference(d: Difference, system: UnitSystem) -> str:
     percent = "-" if d.percent is None else f"{d.percent:+.2f}"
     unknown = "" if d.change is None else "u not stated by both"
     said = {None: unknown, True: "significant", False: "not significant"}[d.significant]
+    label = f"{_NAMES[d.quantity]}, {unit}"
     return (
-        f"  {_NAMES[d.quantity] + ', ' + unit:<16}{number(d.old.value):>11}{number(d.new.value):>11}"
+        f"  {label:<16}{number(d.old.value):>11}{number(d.new.value):>11}"
         f"{number(d.change):>13}{percent:>10}{number(d.U):>11}  {said}"
     ).rstrip()
 
@@ -128,7 +128,7 @@ def _judgement(j: Judgement, system: UnitSystem) -> list[str]:
         lines.append(f"    {j.why}")
     if j.open:
         lines.append("    the limit lies within the uncertainty (95 %) of the difference")
-    return [*lines, f"    {_credit(j.limit)}"]
+    return [*lines, *_wrapped(_credit(j.limit), "    ")]
 
 
 def _verdict(c: Comparison) -> list[str]:

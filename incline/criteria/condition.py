@@ -66,17 +66,15 @@ def _draft_readings(s: Subject) -> Answer:
     marks = [d for d in drafts if d.freeboard is None]
     length = s.trial.vessel.lpp
     whole = all(len(_thirds(marks, side, length)) == 3 for side in "PS")
-    return Found(
-        ((min(count.values()), "marks forward, amidships and aft" if whole else ""),),
-        f"{count['P']} P, {count['S']} S",
-    )
+    least = min(count.values())
+    enough = s.limits["draft-readings"].range.holds(least)
+    case = "marks forward, amidships and aft" if whole and not enough else ""
+    return Found(((least, case),), f"{count['P']} P, {count['S']} S")
 
 
 def _thirds(marks: list[DraftReading], side: str, length: float) -> set[int]:
     """Thirds of the length in which a side has draft marks read."""
-    return {
-        min(2, max(0, math.floor(3.0 * d.x / length))) for d in marks if d.side in (side, "C")
-    }
+    return {min(2, max(0, math.floor(3.0 * d.x / length))) for d in marks if d.side in (side, "C")}
 
 
 def _draft_fit(s: Subject) -> Answer:
@@ -98,7 +96,7 @@ def _samples(s: Subject) -> Answer:
 def _hydrometer(s: Subject) -> Answer:
     reach = s.trial.hydrometer
     if reach is None:
-        return Unrecorded("the range of the hydrometer")
+        return Unrecorded("the range of the hydrometer (hydrometer_range in [instruments])")
     return Found(tuple((end, "") for end in reach), f"{reach[0]:.3f} to {reach[1]:.3f}")
 
 
@@ -142,18 +140,20 @@ def _slack_level(s: Subject) -> Answer:
     parts, names, missing = [], [], []
     for tank in _slack(s):
         if tank.level is None or tank.depth is None:
-            missing.append(tank.name)
+            missing.append(_lacking(tank, "level", "depth"))
             continue
         filled = 100.0 * tank.level / tank.depth
         parts.append((filled, tank.type or "deep"))
         names.append(f"{filled:.0f}")
     deep = [t.name for t in _slack(s) if t.level is not None and t.depth and not t.type]
     note = f"Taken as deep tanks, no type recorded: {', '.join(deep)}." if deep else ""
-    return Found(tuple(parts), ", ".join(names), note, _levels_of(missing))
+    return Found(tuple(parts), ", ".join(names), note, "; ".join(missing))
 
 
-def _levels_of(tanks: list[str]) -> str:
-    return f"level and depth of {', '.join(tanks)}" if tanks else ""
+def _lacking(tank: Tank, *names: str) -> str:
+    """Which of the tank's figures are not recorded."""
+    lost = " and ".join(n for n in names if getattr(tank, n) is None)
+    return f"{lost} of tank {tank.name}"
 
 
 def _pressed_full(s: Subject) -> Answer:
@@ -175,17 +175,16 @@ def _pocketing(s: Subject) -> Answer:
     shares, missing = [], []
     for tank in _slack(s):
         if tank.level is None or tank.depth is None or tank.breadth is None:
-            missing.append(tank.name)
+            missing.append(_lacking(tank, "level", "depth", "breadth"))
             continue
         room = 2.0 * min(tank.level, tank.depth - tank.level) / tank.breadth
         shares.append((100.0 * tangent / room if room > 0.0 else math.inf, tank.name))
-    lacking = f"level, depth and breadth of {', '.join(missing)}" if missing else ""
     if not shares:
-        return Unrecorded(lacking)
+        return Unrecorded("; ".join(missing))
     most, name = max(shares)
     if math.isinf(most):
         return Words(f"{name} at its top or bottom", ok=False)
-    return Found(((most, ""),), note=f"Closest in {name}.", missing=lacking)
+    return Found(((most, ""),), note=f"Closest in {name}.", missing="; ".join(missing))
 
 
 CONDITION: dict[str, Measure] = {

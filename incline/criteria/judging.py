@@ -20,7 +20,7 @@ if TYPE_CHECKING:
 
     Status = Literal["pass", "fail", "not recorded", "not applicable"]
 
-__all__ = ["MEASURES", "VERIFY", "found_text", "judge"]
+__all__ = ["MEASURES", "VERIFY", "found_text", "judge", "limit_text"]
 
 MEASURES: Mapping[str, Measure] = {**PROCEDURE, **CONDITION}
 VERIFY = "verify against the current edition"
@@ -30,12 +30,17 @@ _DECIMALS = {"deg": 2, "cm": 1, "m": 3, "%": 2, "m/s": 1}
 
 
 def found_text(check: Check) -> str:
-    """What was found as printed, without its unit; a dash when there is nothing."""
+    """What was found as printed, numbers with their unit; a dash when there is nothing."""
     if check.found is None:
         return "-"
     if isinstance(check.found, str):
         return check.found
-    return f"{check.found:.{_DECIMALS.get(check.unit, 0)}f}"
+    return f"{check.found:.{_DECIMALS.get(check.unit, 0)}f} {check.unit}".rstrip()
+
+
+def limit_text(check: Check) -> str:
+    """The limit as printed: with its unit, where it ends in a number."""
+    return f"{check.limit} {check.unit}".rstrip() if check.limit[-1:].isdigit() else check.limit
 
 
 def judge(trial: Trial, outcome: Outcome) -> tuple[Check, ...]:
@@ -197,5 +202,5 @@ def _limit_text(limit: Limit, answer: Answer) -> str:
     cases = {case for _, case in answer.parts} if isinstance(answer, Found) else set()
     case = next(iter(cases)) if len(cases) == 1 else ""
     if case in limit.cases:
-        return f"{limit.cases[case]} ({case})"
+        return f"{case}: {limit.cases[case]}"
     return limit.words or str(limit.range)

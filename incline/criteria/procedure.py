@@ -90,13 +90,14 @@ def _near(moments: list[tuple[int, float]]) -> float:
 
 def _movements(s: Subject) -> Answer:
     read = _moments(s)
-    near = _near(s_moments := [(h.shift, h.transverse) for h in s.outcome.heel.shifts])
-    shown = {shift for shift, _ in read}
-    count = sum(abs(b - a) > near and shift in shown for (_, a), (shift, b) in pairwise(s_moments))
+    every = [(h.shift, h.transverse) for h in s.outcome.heel.shifts]
+    near, seen = _near(every), {shift for shift, _ in read}
+    count = sum(abs(b - a) > near and shift in seen for (_, a), (shift, b) in pairwise(every))
     first = bool(read) and read[0][0] == s.outcome.heel.shifts[0].shift
     ratio = _residual_share(s)
     straight = ratio is not None and s.limits["straight-plot"].range.holds(ratio)
-    return one(count, "straight plot" if first and straight else "")
+    enough = s.limits["movements"].range.holds(count)
+    return one(count, "straight plot" if first and straight and not enough else "")
 
 
 def _zero_returns(s: Subject) -> Answer:
@@ -231,20 +232,21 @@ def _surroundings(s: Subject) -> Answer:
         "current": here.current,
     }
     missing = [name for name, value in said.items() if value in ("", None)]
-    return Unrecorded(", ".join(missing)) if missing else Words("recorded", ok=True)
+    text = f"{', '.join(missing)} (in [environment])"
+    return Unrecorded(text) if missing else Words("recorded", ok=True)
 
 
 def _wind(s: Subject) -> Answer:
     here = s.trial.environment
     if here.wind_speed is None:
-        return Found((), here.wind, missing="wind speed")
+        return Found((), here.wind, missing="wind_speed (in [environment])")
     return one(here.wind_speed, note=f"In the records: {here.wind}." if here.wind else "")
 
 
 def _notice(s: Subject) -> Answer:
     sent = s.trial.occasion.notice_date
     if sent is None:
-        return Unrecorded("the day on which the procedure was sent")
+        return Unrecorded("the day on which the procedure was sent (notice_date in [test])")
     return one((s.trial.occasion.date - sent).days)
 
 

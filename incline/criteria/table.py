@@ -45,8 +45,8 @@ class Limit:
     """A limit of the rule sets ``rules`` with its source, and how it is known (``evidence``).
 
     ``cases`` replace ``range`` where the trial calls for it, ``numbers`` are what measuring needs.
-    With ``covers`` the values found must reach over the whole range. ``words`` print the limit where
-    its numbers do not say it.
+    With ``covers`` the values found must reach over the whole range. ``words`` print the
+    limit where its numbers do not say it.
     """
 
     rules: tuple[str, ...]
@@ -75,6 +75,11 @@ class Criterion:
     unit: str
     group: str
     limits: tuple[Limit, ...]
+
+    @property
+    def has_numbers(self) -> bool:
+        """Whether a number can be its limit; otherwise only words can."""
+        return bool(self.unit) or any(not limit.range.is_open for limit in self.limits)
 
     def limit_of(self, *rule_sets: str) -> Limit | None:
         """The first limit that belongs to one of the rule sets, in their order."""

@@ -19,12 +19,16 @@ if TYPE_CHECKING:
 
     Floats = NDArray[np.float64]
 
-__all__ = ["Hidden", "Left", "Search", "Sign", "layout_of", "search"]
+__all__ = ["Hidden", "Left", "Search", "Sign", "layout_of", "search", "times_of"]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Sign:
-    """A finding, with the change of the slope [1/(t m)] if it is the cause."""
+    """A finding, with the change of the slope [1/(t m)] if it is the cause.
+
+    ``expected`` (R) are the tangents that it and the findings before it make; empty without a
+    pattern.
+    """
 
     cause: str
     where: str
@@ -36,6 +40,7 @@ class Sign:
     slope_change: float | None
     advice: str
     rank: int
+    expected: tuple[float, ...] = ()
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -72,7 +77,7 @@ def layout_of(trial: Trial, seen: Observations, transverse: Floats) -> Layout:
 
     return Layout(
         moments=transverse / np.abs(transverse[seen.shift]).max(),
-        times=_times(trial),
+        times=times_of(trial),
         shift=seen.shift,
         device=seen.device,
         stays=_stays(trial),
@@ -125,7 +130,8 @@ def _signs(
         told.add(key)
         model = (*taken, pattern)
         fit = _fit(layout, seen.tangents, model)
-        rest = seen.tangents - _columns(layout, model) @ fit
+        expected = _columns(layout, model) @ fit
+        rest = seen.tangents - expected
         u = float((rest @ rest / max(len(rest) - len(fit), 1)) ** 0.5)
         found.append(
             Sign(
@@ -138,6 +144,7 @@ def _signs(
                 ),
                 slope_change=(float(fit[0]) - plain) / scale,
                 advice=ADVICE[pattern.cause], rank=min(rank, len(found)),
+                expected=tuple(float(t) for t in expected),
             )
         )  # fmt: skip
     return found
@@ -232,7 +239,8 @@ def _left(trial: Trial, seen: Observations, layout: Layout, scale: float) -> lis
     return found
 
 
-def _times(trial: Trial) -> Floats:
+def times_of(trial: Trial) -> Floats:
+    """Clock times of the shifts from 0 to 1; equally spaced where not every shift has one."""
     import numpy as np
 
     count = len(trial.shifts)

@@ -70,6 +70,10 @@ def _bound(section: Section, key: str, criterion: Criterion | None) -> float | N
     value = section.value(key)
     if value is None or criterion is None:
         return None
+    if not criterion.has_numbers:
+        expected = f"a limit in words: {criterion.id} is not a number"
+        section.fault(key, "value-wrong", quoted(shown(value)), expected)
+        return None
     quantity = _UNITS.get(criterion.unit)
     if quantity is not None:
         inside = section.maybe(key, quantity)

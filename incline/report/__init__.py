@@ -6,7 +6,9 @@ from typing import TYPE_CHECKING, Any
 
 from incline.files import write_whole
 from incline.report.closing import cautions, remarks, signatures
+from incline.report.criteria import criteria
 from incline.report.document import Sheet, heading, render
+from incline.report.findings import residuals
 from incline.report.floating import as_inclined
 from incline.report.front import result, title_block
 from incline.report.gravity import centre_of_gravity
@@ -35,16 +37,19 @@ _SECTIONS: tuple[tuple[str, Callable[[Sheet], list[Any]]], ...] = (
     ("Test weights and moments", weights_and_moments),
     ("Devices and readings", devices_and_readings),
     ("Heel against moment", heel_fit),
+    ("What the residuals say", residuals),
     ("From GM to the centre of gravity", centre_of_gravity),
     ("From as inclined to lightship", to_lightship),
     ("Uncertainty", uncertainty),
     ("With the excluded readings counted", all_counted),
+    ("Criteria", criteria),
     ("Remarks", remarks),
     ("Cautions, and who decides", cautions),
     ("Signatures", signatures),
 )
 
 
+_TEXT_FIRST = (conventions, residuals, uncertainty, criteria, remarks)
 _ROOM, _ROOM_FOR_TEXT = 136.0, 80.0
 """Points below a section's heading without which it starts a new page; less where text follows."""
 
@@ -67,6 +72,6 @@ def _story(sheet: Sheet) -> list[Any]:
         body = section(sheet)
         if body:
             number += 1
-            need = _ROOM_FOR_TEXT if section in (conventions, uncertainty, remarks) else _ROOM
+            need = _ROOM_FOR_TEXT if section in _TEXT_FIRST else _ROOM
             flow += [*heading(number, title, need), *body]
     return flow

@@ -22,6 +22,10 @@ _ENOUGH = 0.99
 """Share of the variance, correlations by their size, that the printed rows account for."""
 
 _CANNOT_SEE = "disturbances that residuals cannot show: not assessed"
+_HIDDEN = (
+    "disturbances that residuals cannot show: counted where the trial says “not excluded”, else "
+    "not; their size and what they would do to KG stand in “What the residuals say”"
+)
 
 
 def main_lines(budget: Budget, most: int = _MOST) -> tuple[BudgetLine, ...]:
@@ -96,7 +100,8 @@ def _table(sheet: Sheet, quoted: Quoted, budget: Budget, found: Estimate) -> Any
         name = f"{rest} further input{'s' if rest > 1 else ''}"
         rows.append(Row((name, *[""] * 4, MISSING, _share(sheet, share))))
     if quoted.key == "vcg":
-        rows.append(Row((_CANNOT_SEE, *[""] * 6), "span"))
+        assessed = sheet.reduction.diagnosis is not None
+        rows.append(Row((_HIDDEN if assessed else _CANNOT_SEE, *[""] * 6), "span"))
     combined = sheet.show.number(u, quoted.fine, decimals)
     cells = (
         "combined",

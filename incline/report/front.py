@@ -8,7 +8,9 @@ from reportlab.platypus import Paragraph, Table
 
 from incline.defaults import LABEL
 from incline.report.amounts import RESULTS, Quoted, budget_of, freedom
-from incline.report.document import Sheet, note
+from incline.report.criteria import criteria_line
+from incline.report.document import Sheet, note, paragraph
+from incline.report.findings import finding_line
 from incline.report.fonts import REGULAR
 from incline.report.monte_carlo import intervals, limit
 from incline.report.show import MISSING, NOT_DETERMINED, NOT_RECORDED
@@ -45,7 +47,7 @@ def title_block(sheet: Sheet) -> list[Any]:
 
 
 def result(sheet: Sheet) -> list[Any]:
-    """The box with the four lightship values and GM as measured, and what their u means."""
+    """The box with the four lightship values and GM, criteria and findings, and what u means."""
     outcome = sheet.reduction.outcome
     found = [(q, _estimate(outcome, q.key)) for q in RESULTS]
     missing = [note(_why(sheet, q.name)) for q, e in found if e.value is None]
@@ -54,6 +56,7 @@ def result(sheet: Sheet) -> list[Any]:
         *missing,
         *intervals(sheet),
         *limit(sheet),
+        *(paragraph(text) for text in (criteria_line(sheet), finding_line(sheet)) if text),
         *(note(text) for text in _notes(sheet)),
     ]
 

@@ -32,10 +32,14 @@ class Column:
 
 @dataclass(frozen=True, slots=True)
 class Row:
-    """Cells of a row; ``look`` sets off totals, and headings and remarks that span the table."""
+    """Cells of a row; ``look`` sets off totals, and headings and remarks that span the table.
+
+    A ``stress`` row is shaded and bold. An ``under`` row belongs to the one above it: its second
+    cell spans all columns but the first.
+    """
 
     cells: tuple[str, ...]
-    look: Literal["plain", "total", "band", "span"] = "plain"
+    look: Literal["plain", "total", "band", "span", "stress", "under"] = "plain"
 
 
 def _cell(text: str, align: str, *, bold: bool) -> Paragraph:
@@ -48,7 +52,9 @@ def _row_cells(columns: Sequence[Column], row: Row) -> list[Any]:
     if row.look in ("band", "span"):
         heading = row.look == "band"
         return [_cell(row.cells[0], "left", bold=heading), *("" for _ in aligns[1:])]
-    bold = row.look == "total"
+    if row.look == "under":
+        return [*(_cell(t, "left", bold=False) for t in row.cells), *("" for _ in aligns[2:])]
+    bold = row.look in ("total", "stress")
     return [_cell(t, a, bold=bold) for t, a in zip(row.cells, aligns, strict=True)]
 
 
@@ -59,11 +65,30 @@ def _looks(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
             commands += [("SPAN", (0, i), (-1, i)), ("BACKGROUND", (0, i), (-1, i), _SHADE)]
         elif row.look == "span":
             commands.append(("SPAN", (0, i), (-1, i)))
+        elif row.look == "stress":
+            commands.append(("BACKGROUND", (0, i), (-1, i), _SHADE))
+        elif row.look == "under":
+            commands += _under(i, stressed=i > 1 and rows[i - 2].look == "stress")
         elif row.look == "total":
             commands.append(("LINEABOVE", (0, i), (-1, i), 0.6, INK))
             if i > 1:
                 commands.append(("NOSPLIT", (0, i - 1), (-1, i)))  # no total alone on a page
     return commands
+
+
+def _under(i: int, *, stressed: bool) -> list[tuple[Any, ...]]:
+    """Row ``i`` joined to the one above it: no rule between them, the same shade."""
+    shade = [("BACKGROUND", (0, i), (-1, i), _SHADE)] if stressed else []
+    return [("SPAN", (1, i), (-1, i)), ("TOPPADDING", (0, i), (-1, i), 0), *shade]
+
+
+def _rules(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
+    """A thin rule below each row but the last, and none above what belongs to the row."""
+    return [
+        ("LINEBELOW", (0, i), (-1, i), 0.25, RULE)
+        for i, below in enumerate(rows[1:], start=1)
+        if below.look != "under"
+    ]
 
 
 def _gaps(columns: Sequence[Column]) -> list[tuple[Any, ...]]:
@@ -90,7 +115,7 @@ def grid(columns: Sequence[Column], rows: Iterable[Row | Sequence[str]], width: 
         ("BOTTOMPADDING", (0, 0), (-1, -1), _PAD),
         ("LINEABOVE", (0, 0), (-1, 0), 0.8, INK),
         ("LINEBELOW", (0, 0), (-1, 0), 0.5, INK),
-        ("LINEBELOW", (0, 1), (-1, -2), 0.25, RULE),
+        *_rules(listed),
         ("LINEBELOW", (0, -1), (-1, -1), 0.5, INK),
         *_looks(listed),
         *_gaps(columns),

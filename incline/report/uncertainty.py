@@ -45,8 +45,20 @@ def in_plain_words(sheet: Sheet) -> list[str]:
         f"The best figure for KG of the lightship is {show.full(found.value, 'length', decimals)}; "
         f"by the evidence of this test the true KG lies between {low} and {high} above the "
         f"baseline with a probability of 95 %, that is, 19 times out of 20{how}.",
-        "That holds for the sources listed here. It does not cover a disturbance that leaves the "
-        "readings on a straight line, nor anything aboard that nobody wrote down.",
+        "That holds for the sources listed here. It covers a disturbance that the readings cannot "
+        "show only where the trial says that nothing excludes it, and never anything aboard that "
+        "nobody wrote down.",
+        *_disturbed(sheet),
+    ]
+
+
+def _disturbed(sheet: Sheet) -> list[str]:
+    found = sheet.reduction.diagnosis
+    if found is None or not found.findings:
+        return []
+    return [
+        "The residuals point to a disturbance, see “What the residuals say”. If it is real the "
+        "interval does not hold: KG under each finding is given there."
     ]
 
 

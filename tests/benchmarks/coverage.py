@@ -6,7 +6,7 @@ from pathlib import Path
 
 sys.path.insert(0, str(Path(__file__).resolve().parent.parent))
 
-from demos import DEMOS, demo_files
+from demos import CLEAN, demo_files
 from simulated_slopes import LAYOUTS, MIXES, coverage
 from simulated_trials import end_to_end
 
@@ -26,7 +26,7 @@ def main() -> None:
                 cells.append(f"{found.share:.4f}  {100 * found.half_width:5.2f}")
             print(f"{layout:<36}{mix!s:<28}{cells[0]:<20}{cells[1]}")
     print("\nWhole trials: shares for displacement, KG, LCG, TCG; median U [t, m]; 2000 trials")
-    for name in DEMOS:
+    for name in CLEAN:
         with tempfile.TemporaryDirectory() as folder:
             for file, text in demo_files(name, rounded=False, noisy=False).items():
                 Path(folder, file).write_text(text, encoding="utf-8")
