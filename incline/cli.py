@@ -59,8 +59,19 @@ def _complain(lines: list[str]) -> None:
     if many:
         print(f"incline: {len(lines)} problems", file=sys.stderr)
     for line in lines:
-        print(f"  {line}" if many else f"incline: {line}", file=sys.stderr)
+        print(_folded(f"  {line}" if many else f"incline: {line}"), file=sys.stderr)
     raise SystemExit(1)
+
+
+def _folded(line: str) -> str:
+    """A line broken between words at the width of the terminal; whole when written to a file."""
+    if not sys.stderr.isatty():
+        return line
+    import shutil
+    import textwrap
+
+    width = max(40, shutil.get_terminal_size().columns - 1)
+    return textwrap.fill(line, width, subsequent_indent="      ", break_on_hyphens=False)
 
 
 @app.callback(invoke_without_command=True)
@@ -98,9 +109,14 @@ def check(trial: Trial) -> None:
     Example: incline check my-vessel
     """
     from incline import read_trial
+    from incline import reduce as work_out
+    from incline.progress import Step
     from incline.screen import summary
 
-    print(summary(read_trial(trial)))
+    record = read_trial(trial)
+    with Step("Checking the trial"):
+        result = work_out(record)
+    print(summary(result))
 
 
 @app.command()

@@ -94,7 +94,7 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
     heel = describe_heel(trial, seen, found)
     waterline = describe_waterline(plan.waterline, trial.drafts, trial.vessel.lpp)
     slope = slope_uncertainty(seen, found.moments[seen.shift])
-    sources = list_sources(trial, plan, given, seen, waterline, heel, slope)
+    sources = list_sources(trial, plan, given, found, seen, waterline, heel, slope)
     blocks = blocks_of(sources, trial.settings.correlations)
     model = TrialModel(plan, given, sources)
     budgets, covariance = budgets_of(model, KEYS, sources, blocks)
@@ -135,7 +135,7 @@ def _as_inclined(
         density=float(given.density),
         volume=float(b.volume),
         displacement=float(now.displacement),
-        lcb=None if b.x is None else float(b.x),
+        lcb=float(b.x) if plan.tells_lcg else None,
         kb=float(b.z),
         bmt=float(b.bmt),
         kmt=float(found.km),
