@@ -70,7 +70,7 @@ class Plan:
 
     ``line`` holds the readings that count. ``sign`` (N) is -1 for deductions, +1 for additions, 0
     for relocations, ``moved`` (N) is 1 for relocations. ``allowance`` is the share added to the
-    tabulated volume.
+    tabulated volume; ``tells_lcg`` whether the table says where B is at the trim read.
     """
 
     waterline: WaterlineFit
@@ -80,6 +80,7 @@ class Plan:
     sign: Floats
     moved: Floats
     allowance: float
+    tells_lcg: bool
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
@@ -98,9 +99,11 @@ class Condition:
 class Yield:
     """Results of the chain [m, t, t m]; lcg and tcg are None where they cannot be found.
 
-    ``transverse`` and ``vertical`` are moments by shift, ``moments`` what the line was fitted to.
+    ``as_read`` is the ship of the draft readings, ``condition`` that of the shifts. ``transverse``
+    and ``vertical`` are moments by shift, ``moments`` what the line was fitted to.
     """
 
+    as_read: Condition
     condition: Condition
     transverse: Floats
     vertical: Floats
@@ -131,13 +134,19 @@ def run(plan: Plan, given: Inputs) -> Yield:
     now = as_read
     if given.changes.shape[-1]:
         now = _after_changes(plan, given, as_read, stiffness, fsm)
+        if np.any(vertical):  # the heel of the shifts counts, not that of the drafts
+            slope, moments = _slope(plan, given, transverse, vertical, now.list_tan)
+            slope = slope + given.slope_shift
+            stiffness = 1.0 / slope + fsm
+            now = _after_changes(plan, given, as_read, stiffness, fsm)
     b, displacement = now.buoyancy, now.displacement
     km = b.z + b.bmt + given.km_shift
     vcg = km - stiffness / displacement
-    lcg = None if b.x is None else b.x + given.lcb_shift + now.tau * (vcg - b.z)
+    lcg = b.x + given.lcb_shift + now.tau * (vcg - b.z) if plan.tells_lcg else None
     tcg = None if now.list_tan is None else now.list_tan / (slope * displacement)
     light, centres = _ledger(plan, given, displacement, (lcg, tcg, vcg))
     return Yield(
+        as_read=as_read,
         condition=now,
         transverse=transverse,
         vertical=vertical,
@@ -217,8 +226,6 @@ def _after_changes(
     Newton on mean draft and trim until the table's displacement and the moments about G both
     agree; the KG found on the way closes the loop.
     """
-    import numpy as np
-
     moved = given.changes
     displacement = before.displacement + moved.sum(axis=-1)
     mean, tau = before.mean + 0.0 * displacement, before.tau + 0.0 * displacement
@@ -235,8 +242,6 @@ def _after_changes(
     def misses(m: Floats, t: Floats) -> tuple[Floats, Floats]:
         b = at(m, t)
         heavy = _mass_of(plan, given, b) - displacement
-        if b.x is None or before.buoyancy.x is None:
-            return heavy, 0.0 * heavy
         vcg = vcg_of(b)
         vcg_before = (vcg * displacement - lever_z) / before.displacement
         lcg_before = before.buoyancy.x + before.tau * (vcg_before - before.buoyancy.z)
@@ -248,9 +253,6 @@ def _after_changes(
         f, g = misses(mean, tau)
         fm, gm = ((b - a) / step_m for a, b in zip((f, g), misses(mean + step_m, tau), strict=True))
         ft, gt = ((b - a) / step_t for a, b in zip((f, g), misses(mean, tau + step_t), strict=True))
-        if not np.any(gt):  # LCG unknown: trim kept, sinkage only
-            mean = mean - f / fm
-            continue
         det = fm * gt - ft * gm
         mean, tau = mean - (f * gt - g * ft) / det, tau - (g * fm - f * gm) / det
     after = at(mean, tau)

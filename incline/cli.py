@@ -63,8 +63,19 @@ def _complain(lines: list[str]) -> None:
     if many:
         print(f"incline: {len(lines)} problems", file=sys.stderr)
     for line in lines:
-        print(f"  {line}" if many else f"incline: {line}", file=sys.stderr)
+        print(_folded(f"  {line}" if many else f"incline: {line}"), file=sys.stderr)
     raise SystemExit(1)
+
+
+def _folded(line: str) -> str:
+    """A line broken between words at the width of the terminal; whole when written to a file."""
+    if not sys.stderr.isatty():
+        return line
+    import shutil
+    import textwrap
+
+    width = max(40, shutil.get_terminal_size().columns - 1)
+    return textwrap.fill(line, width, subsequent_indent="      ", break_on_hyphens=False)
 
 
 @app.callback(invoke_without_command=True)
@@ -108,9 +119,9 @@ def check(trial: Trial) -> None:
     from incline.screen_checks import show_checks
 
     record = read_trial(trial)
-    print(summary(record), flush=True)
-    with Step("Judging the trial"):
+    with Step("Checking the trial"):
         result = work_out(record)
+    print(summary(result))
     print("\n" + show_checks(result))
     if any(c.status == "fail" for c in result.checks):
         raise typer.Exit(3)

@@ -42,7 +42,9 @@ DEFAULTS: Mapping[str, Default] = {
     "density": Default(0.0003, DENSITY, "hydrometer, common to all its samples"),
     "test_weight_mass": Default(0.002, FRACTION, "mass of a certified test weight"),
     "uncertified_weight_mass": Default(0.01, FRACTION, "mass of a test weight without certificate"),
-    "certificate_shared": Default(1.0, FRACTION, "correlation of weights on one certificate"),
+    "certificate_shared": Default(
+        1.0, FRACTION, "correlation of weights on one certificate or scale"
+    ),
     "test_weight_arm": Default(0.005, LENGTH, "place of a test weight across the deck"),
     "arm_shared": Default(0.5, FRACTION, "correlation of arms measured from one datum"),
     "test_weight_centre": Default(0.020, LENGTH, "height and x of a test weight's centre"),
@@ -51,6 +53,8 @@ DEFAULTS: Mapping[str, Default] = {
     "table_volume": Default(0.002, FRACTION, "volume or displacement from the table"),
     "table_km": Default(0.005, LENGTH, "KM from the table"),
     "table_lcb": Default(0.010, LENGTH, "LCB from the table"),
+    "table_trim_km": Default(0.3, FRACTION, "share of BM times trim over length, one-trim table"),
+    "table_trim_lcb": Default(2.0, FRACTION, "times length times (trim over length) squared"),
     "tank_mass": Default(0.01, FRACTION, "mass of a tank's liquid"),
     "tank_centre": Default(0.020, LENGTH, "centre of a tank's liquid"),
     "free_surface": Default(0.05, FRACTION, "free-surface moment of a tank"),

@@ -102,8 +102,10 @@ def _heels(points: Sequence[HeelPoint], zero: dict[str, float], start: float) ->
 
 def _curvature(heels: list[float], bmt: float) -> float:
     """How low a straight line puts KG [m] on a wall-sided hull: the cubic term it leaves out."""
-    squares = math.fsum(t**2 for t in heels)
-    return 0.5 * bmt * math.fsum(t**4 for t in heels) / squares if squares > 0.0 else 0.0
+    mean, cube = math.fsum(heels) / len(heels), math.fsum(t**3 for t in heels) / len(heels)
+    spread = math.fsum((t - mean) ** 2 for t in heels)
+    together = math.fsum((t - mean) * (t**3 - cube) for t in heels)
+    return 0.5 * bmt * together / spread if spread > 0.0 else 0.0
 
 
 def _alone(

@@ -32,13 +32,13 @@ class TableValues:
 class Buoyancy:
     """What carries the ship at one waterline: volume [m3], centre and metacentric radius [m].
 
-    ``x`` is None where an even-keel table without BM_L meets a trimmed ship. ``entry`` [m] is the
-    draft at which the table was entered, ``trim_volume`` [m3] the second trim correction,
-    ``deflection_factor`` the share of the deflection that counts in the entry draft.
+    ``x`` of a table for one trim without BM_L is an estimate (see `Curves.tells_lcg`). ``entry``
+    [m] is the draft at which the table was entered, ``trim_volume`` [m3] the second trim
+    correction, ``deflection_factor`` the share of the deflection that counts in the entry draft.
     """
 
     volume: Floats
-    x: Floats | None
+    x: Floats
     z: Floats
     bmt: Floats
     entry: Floats
@@ -91,6 +91,10 @@ class Curves:
         if not self.even:
             inside = inside and self.trims[0] - slack <= trim <= self.trims[1] + slack
         return inside
+
+    def tells_lcg(self, trim: float) -> bool:
+        """Whether the table says where B is at a trim [m]: it has several, or BM_L, or this one."""
+        return not self.even or "bml" in self.names or abs(trim - self.trims[0]) < LEVEL
 
     def at(self, draft: Floats, trim: Floats, *, slopes: bool = True) -> TableValues:
         """Columns at entry draft and trim [m]; arrays of one shape."""
@@ -159,20 +163,20 @@ class Curves:
         found = self.at(entry, entry)
         v, s = found.value, found.slope
         if "bml" not in v:
-            level = bool(np.all(np.abs(more) * self.lpp < LEVEL))
-            return Buoyancy(
-                v["volume"], v["lcb"] if level else None, v["kb"], v["bmt"], entry,
-                np.zeros_like(entry), share,
-            )  # fmt: skip
+            # B's travel as for a box, so that small trims have their effect; whether LCG may be
+            # told from it is decided by `tells_lcg`.
+            box = self.lpp**2 / (12.0 * entry)
+            nothing = np.zeros_like(entry)
+            x = v["lcb"] - box * more
+            return Buoyancy(v["volume"], x, v["kb"], v["bmt"], entry, nothing, share)
         inertia_slope = s["volume"] * v["bml"] + v["volume"] * s["bml"]
-        square = tau**2 - table_tau**2
-        trim_volume = 0.5 * square * inertia_slope
+        trim_volume = 0.5 * more**2 * inertia_slope
         volume = v["volume"] + trim_volume
         return Buoyancy(
             volume,
             v["lcb"] - v["bml"] * more,
-            v["kb"] + 0.5 * v["bml"] * square,
-            v["bmt"],
+            v["kb"] + 0.5 * v["bml"] * (tau**2 - table_tau**2),
+            v["bmt"] * v["volume"] / volume,
             entry,
             trim_volume,
             share,

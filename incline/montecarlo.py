@@ -88,7 +88,8 @@ def simulate(
 
     rng = np.random.default_rng(seed)
     kept: list[Floats] = []
-    settling = _Settling(budgets)
+    heavy = any(s.shape == "t" and s.dof <= _HEAVY for s in sources)
+    settling = _Settling(budgets, heavy=heavy)
     total, most = 0, draws or MOST
     settled = None if draws is not None else False
     while total < most:
@@ -102,13 +103,21 @@ def simulate(
             settled = True
             break
     values = np.concatenate(kept, axis=1)
-    return _describe(values, budgets, seed=seed, settled=settled, kg_limit=kg_limit)
+    return _describe(values, budgets, seed=seed, settled=settled, kg_limit=kg_limit, heavy=heavy)
+
+
+_HEAVY = 2.0
+"""Degrees of freedom up to which Student's t has no standard deviation: its intervals count."""
 
 
 class _Settling:
-    """Whether averages over blocks have settled to the numerical tolerance of every result."""
+    """Whether averages over blocks have settled to the numerical tolerance of every result.
 
-    def __init__(self, budgets: Sequence[Budget]) -> None:
+    With ``heavy`` tails only the ends of the intervals are asked to settle.
+    """
+
+    def __init__(self, budgets: Sequence[Budget], *, heavy: bool) -> None:
+        self.first = 2 if heavy else 0
         self.tolerance = [
             None if b.estimate.u is None else numerical_tolerance(b.estimate.u, _DIGITS) / 5.0
             for b in budgets
@@ -126,7 +135,7 @@ class _Settling:
     def _settled(self) -> bool:
         import numpy as np
 
-        blocks = np.array(self.seen)  # block, result, figure
+        blocks = np.array(self.seen)[:, :, self.first :]  # block, result, figure
         spread = 2.0 * blocks.std(axis=0, ddof=1) / math.sqrt(len(blocks))
         return all(
             tolerance is None or bool(np.all(row < tolerance))
@@ -170,6 +179,7 @@ def _describe(
     seed: int,
     settled: bool | None,
     kg_limit: float | None,
+    heavy: bool,
 ) -> Simulation:
     import numpy as np
 
@@ -177,12 +187,14 @@ def _describe(
     low, high = np.quantile(kg, [0.001, 0.999])
     counts, edges = np.histogram(kg, bins=60, range=(low, high))
     covariance = np.atleast_2d(np.cov(values[:4]))
+    if heavy:
+        covariance = np.full_like(covariance, np.nan)
     return Simulation(
         draws=values.shape[1],
         seed=seed,
         settled=settled,
         results=tuple(
-            _simulated(budget.key, row, budget.estimate)
+            _simulated(budget.key, row, budget.estimate, heavy=heavy)
             for row, budget in zip(values, budgets, strict=True)
             if budget.estimate.value is not None
         ),
@@ -195,16 +207,16 @@ def _describe(
     )
 
 
-def _simulated(key: str, values: Floats, first_order: Estimate) -> Simulated:
+def _simulated(key: str, values: Floats, first_order: Estimate, *, heavy: bool) -> Simulated:
     """Figures of one result, and the verdict on the first-order interval (JCGM 101, 8.1)."""
     symmetric = symmetric_interval(values)
-    u = float(values.std(ddof=1))
-    tolerance = numerical_tolerance(u, _DIGITS)
+    # The tolerance is that of the first-order u, which the verdict is about.
+    tolerance = numerical_tolerance(first_order.u or 0.0, _DIGITS)
     centre, expanded = first_order.value or 0.0, first_order.U or 0.0
     return Simulated(
         key=key,
-        mean=float(values.mean()),
-        u=u,
+        mean=None if heavy else float(values.mean()),
+        u=None if heavy else float(values.std(ddof=1)),
         symmetric=symmetric,
         shortest=shortest_interval(values),
         tolerance=tolerance,

@@ -60,10 +60,13 @@ def observe(trial: Trial, *, with_excluded: bool = False) -> Observations:
     import numpy as np
 
     length = {d.id: d.length for d in trial.devices}
+    level = _level_angles(trial)
     every = []
     for reading in trial.readings:
         reduced = reduce_reading(reading)
-        tangent = _tangent(reading, reduced.value, length[reading.device])
+        tangent = _tangent(
+            reading, reduced.value - level.get(reading.device, 0.0), length[reading.device]
+        )
         every.append(Observation(reading, reduced, tangent, with_excluded or not reading.excluded))
     counted = [o for o in every if o.counts]
     devices = tuple(d for d in trial.devices if any(o.reading.device == d.id for o in counted))
@@ -82,16 +85,38 @@ def observe(trial: Trial, *, with_excluded: bool = False) -> Observations:
     )
 
 
+_HAND, _HAND_ANGLE = 0.0005, 0.0001
+"""Scatter of a reading besides its resolution [m], [rad]: no device is read without any, so that a
+fine scale does not decide alone. Engineering judgement."""
+
+
 def _weights(devices: Sequence[Device], device: NDArray[np.intp]) -> Floats | None:
-    """Relative weights of the readings: one over the squared resolution in tangents."""
+    """Relative weights of the readings: one over what resolution and reading leave in tangents."""
     import numpy as np
 
-    steps = [None if d.resolution is None else d.resolution / (d.length or 1.0) for d in devices]
-    if any(s is None or s <= 0.0 for s in steps):
+    if any(d.resolution is None for d in devices):
         return None
-    by_device = np.array([1.0 / float(s or 1.0) ** 2 for s in steps])
+    squares = [
+        ((d.resolution or 0.0) ** 2 / 12.0 + (_HAND if d.length else _HAND_ANGLE) ** 2)
+        / (d.length or 1.0) ** 2
+        for d in devices
+    ]
+    by_device = 1.0 / np.array(squares)
     weight: Floats = by_device[device] / by_device[device].mean()
     return weight
+
+
+def _level_angles(trial: Trial) -> dict[str, float]:
+    """Mean angle [rad] of each inclinometer.
+
+    Its zero is arbitrary, and a tangent taken far from it would stretch the angles: they are
+    counted from their mean, which is the ship nearly upright.
+    """
+    angles: dict[str, list[float]] = {}
+    for r in trial.readings:
+        if r.quantity == "angle":
+            angles.setdefault(r.device, []).append(reduce_reading(r).value)
+    return {device: sum(v) / len(v) for device, v in angles.items()}
 
 
 def _tangent(reading: Reading, value: float, length: float | None) -> float:

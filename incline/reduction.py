@@ -110,7 +110,7 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
     slope = slope_uncertainty(seen, found.moments[seen.shift])
     looked = search(trial, seen, found.moments)
     hidden = () if looked is None else looked.hidden
-    sources = list_sources(trial, plan, given, seen, waterline, heel, slope, hidden)
+    sources = list_sources(trial, plan, given, found, seen, waterline, heel, slope, hidden)
     blocks = blocks_of(sources, trial.settings.correlations)
     model = TrialModel(plan, given, sources)
     budgets, covariance = budgets_of(model, KEYS, sources, blocks)
@@ -151,7 +151,7 @@ def _as_inclined(
         density=float(given.density),
         volume=float(b.volume),
         displacement=float(now.displacement),
-        lcb=None if b.x is None else float(b.x),
+        lcb=float(b.x) if plan.tells_lcg else None,
         kb=float(b.z),
         bmt=float(b.bmt),
         kmt=float(found.km),

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from typing import TYPE_CHECKING
 
 from incline.errors import Defect, FieldDataError, Where
@@ -9,9 +10,14 @@ from incline.hydrostatics import LEVEL
 from incline.observations import distinct
 
 if TYPE_CHECKING:
+    import numpy as np
+    from numpy.typing import NDArray
+
     from incline.chain import Plan, Yield
     from incline.observations import Observations
     from incline.record import Trial
+
+    Floats = NDArray[np.float64]
 
 __all__ = ["refuse"]
 
@@ -22,8 +28,10 @@ _FLAT = 1e-6
 def refuse(trial: Trial, plan: Plan, seen: Observations, found: Yield) -> None:
     """Raise FieldDataError with every reason why the trial gives no result."""
     defects = [*_line_defects(seen, found), *_table_defects(trial, plan, found)]
+    if not defects:
+        defects += _absurd(trial, seen, found)
     light = float(found.light_displacement)
-    if not light > 0.0:
+    if not light > 0.0 and not any(d.code == "waterline-outside-table" for d in defects):
         defects.append(
             Defect(
                 Where("ledger.csv"),
@@ -34,6 +42,36 @@ def refuse(trial: Trial, plan: Plan, seen: Observations, found: Yield) -> None:
         )
     if defects:
         raise FieldDataError(defects)
+
+
+_STEEP = 15.0
+"""Degrees of heel beyond which readings or lengths must be wrong: tests stay below 4."""
+
+
+def _absurd(trial: Trial, seen: Observations, found: Yield) -> list[Defect]:
+    """Results that no test and no ship can have; something was written in a wrong unit."""
+    defects = []
+    for j, device in enumerate(seen.devices):
+        mine = seen.tangents[seen.device == j]
+        swing = math.degrees(math.atan(float(mine.max() - mine.min()) / 2.0))
+        if swing > _STEEP:
+            hint = "check the unit of its readings and its length"
+            what = f"device {device.id} heels {swing:.1f} deg to each side"
+            defects.append(
+                _defect("heel-absurd", device.id, what, f"less than {_STEEP:.0f} deg", hint)
+            )
+    vcg, highest = float(found.light_vcg), 3.0 * trial.vessel.depth
+    if not defects and not 0.0 < vcg < highest:
+        defects.append(
+            Defect(
+                Where("trial"),
+                "kg-absurd",
+                f"a lightship KG of {vcg:.3f} m",
+                f"a KG between the baseline and three depths ({highest:.2f} m)",
+                "check the masses of the test weights, the lengths, and the units of all tables",
+            )
+        )
+    return defects
 
 
 def _line_defects(seen: Observations, found: Yield) -> list[Defect]:
@@ -52,13 +90,22 @@ def _line_defects(seen: Observations, found: Yield) -> list[Defect]:
             what, wanted = f"device {device.id} read at one moment only", "readings at two or more"
             defects.append(_defect("moments-too-few", device.id, what, wanted))
             continue
-        centred = moments[mine] - moments[mine].mean()
-        slopes[device.id] = float(centred @ seen.tangents[mine] / (centred @ centred))
+        slopes[device.id] = _middle_slope(moments[mine], seen.tangents[mine], near)
         if abs(slopes[device.id]) * span < _FLAT:
             what = f"device {device.id} does not move with the moment"
             wanted = "readings that change when weights are shifted"
             defects.append(_defect("slope-zero", device.id, what, wanted))
     return defects or _sign_defects(slopes)
+
+
+def _middle_slope(moments: Floats, tangents: Floats, near: float) -> float:
+    """Median slope over all pairs of readings: one gross misreading does not turn its sign."""
+    import numpy as np
+
+    i, j = np.triu_indices(len(moments), 1)
+    apart = np.abs(moments[j] - moments[i]) > near
+    steps = (tangents[j] - tangents[i])[apart] / (moments[j] - moments[i])[apart]
+    return float(np.median(steps))
 
 
 def _sign_defects(slopes: dict[str, float]) -> list[Defect]:
@@ -83,22 +130,25 @@ def _defect(code: str, device: str, found: str, expected: str, hint: str = "") -
 
 
 def _table_defects(trial: Trial, plan: Plan, found: Yield) -> list[Defect]:
-    now, curves = found.condition, plan.curves
-    trim, draft = float(now.tau) * trial.vessel.lpp, float(now.buoyancy.entry)
-    defects = []
-    if not curves.covers(draft, trim):
-        reach = f"drafts {curves.drafts[0]:.3f} to {curves.drafts[1]:.3f} m"
-        if not curves.even:
-            reach += f" and trims {curves.trims[0]:.3f} to {curves.trims[1]:.3f} m"
-        defects.append(
-            Defect(
-                Where("hydrostatics.csv"),
-                "waterline-outside-table",
-                f"a waterline at {draft:.3f} m with trim {trim:.3f} m",
-                f"a waterline inside the table: {reach}",
-                "a table is never extrapolated",
+    """Waterlines outside the table: that of the drafts, and that of the shifts."""
+    curves, lpp = plan.curves, trial.vessel.lpp
+    reach = f"drafts {curves.drafts[0]:.3f} to {curves.drafts[1]:.3f} m"
+    if not curves.even:
+        reach += f" and trims {curves.trims[0]:.3f} to {curves.trims[1]:.3f} m"
+    defects: list[Defect] = []
+    for when, ship in (("", found.as_read), (" after the changes", found.condition)):
+        trim, draft = float(ship.tau) * lpp, float(ship.buoyancy.entry)
+        if not curves.covers(draft, trim) and not defects:
+            defects.append(
+                Defect(
+                    Where("hydrostatics.csv"),
+                    "waterline-outside-table",
+                    f"a waterline at {draft:.3f} m with trim {trim:.3f} m{when}, by drafts.csv",
+                    f"a waterline inside the table: {reach}",
+                    "a table is never extrapolated; check the units of the drafts and the table",
+                )
             )
-        )
+    trim = float(found.as_read.tau) * lpp
     if curves.even and "lcf" not in curves.names and abs(trim - curves.trims[0]) >= LEVEL:
         defects.append(
             Defect(

@@ -22,6 +22,8 @@ def remarks_on(trial: Trial, outcome: Outcome) -> list[str]:
     return [
         *trial.remarks,
         *_waterline(outcome, system),
+        *_table(trial, outcome, system),
+        *_aboard(trial),
         *(
             ["One water sample: the scatter of the density cannot be seen."]
             if len(trial.samples) < 2
@@ -30,7 +32,8 @@ def remarks_on(trial: Trial, outcome: Outcome) -> list[str]:
         *_slope(outcome),
         "A straight line through heel and moment puts KG low by about"
         f" {_small(outcome.heel.curvature_kg, system)} at these heels if the hull is wall-sided."
-        " KG is not corrected for it; its uncertainty includes it.",
+        " KG is not corrected for it; its uncertainty includes it, and the probability of KG being"
+        " above a limit is low by as much.",
         *(
             f"Every reading of device {d.id} is excluded."
             for d in trial.devices
@@ -75,6 +78,45 @@ def _waterline(outcome: Outcome, system: UnitSystem) -> list[str]:
         if r.flagged
     )
     return said
+
+
+_TRIMMED = 0.005  # trim over length from which a table for another trim is worth a warning
+_COARSE = 0.003  # m of KM between straight-line and curved interpolation
+
+
+def _table(trial: Trial, outcome: Outcome, system: UnitSystem) -> list[str]:
+    """What the hydrostatic table leaves open at this waterline."""
+    ship, entry, said = outcome.as_inclined, outcome.as_inclined.entry, []
+    more = abs(ship.trim - entry.table_trims[0]) / trial.vessel.lpp
+    if entry.table_trims[0] == entry.table_trims[1] and more > _TRIMMED:
+        said.append(
+            f"The hydrostatic table is for another trim than the ship's, by {100.0 * more:.1f} % of"
+            " the length: how her waterplane changes with trim is not in it, and KM may be off by"
+            " more than shown where her ends are flared. Use a table for the actual trim."
+        )
+    apart = entry.linear_km - ship.kmt
+    if abs(apart) > _COARSE:
+        said.append(
+            "The rows of the hydrostatic table are far apart: straight lines between them would"
+            f" give a KM that differs by {_small(apart, system)}."
+        )
+    if ship.list_tan is None and any(s.vertical for s in outcome.heel.shifts):
+        said.append(
+            "Test weights moved up or down while the list is unknown: it is taken as zero there."
+        )
+    return said
+
+
+def _aboard(trial: Trial) -> list[str]:
+    """Things that came aboard after the drafts and are never taken off again."""
+    listed = {i.name.casefold() for i in trial.items} | {w.id.casefold() for w in trial.weights}
+    listed |= {p.name.casefold() for p in trial.people} | {t.name.casefold() for t in trial.tanks}
+    return [
+        f"{c.name} came aboard after the drafts and stands in no other list: it counts as part of"
+        " the lightship."
+        for c in trial.changes
+        if c.change == "aboard" and c.name.casefold() not in listed
+    ]
 
 
 def _slope(outcome: Outcome) -> list[str]:

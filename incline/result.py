@@ -186,7 +186,7 @@ class HeelFit:
     max_heel_starboard: float
     curvature_kg: float
     """What KG is low by [m] for the curvature that a straight line leaves out, as for a wall-sided
-    hull: half of BM times sum(t^4) / sum(t^2)."""
+    hull: half of BM times cov(t, t^3) / var(t), or sum(t^4) / sum(t^2) about the upright."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -290,13 +290,14 @@ class Budget:
 class Simulated:
     """One result by Monte Carlo: mean, standard uncertainty, 95 % intervals, and JCGM 101 clause 8.
 
+    ``mean`` and ``u`` are None where scatter with two degrees of freedom or less leaves none.
     ``agrees`` tells whether the first-order interval is validated: both ends within ``tolerance``
     of the simulated probabilistically symmetric ones.
     """
 
     key: str
-    mean: float
-    u: float
+    mean: float | None
+    u: float | None
     symmetric: tuple[float, float]
     shortest: tuple[float, float]
     tolerance: float

@@ -8,12 +8,11 @@ from functools import partial
 from typing import TYPE_CHECKING
 
 from incline.remarks import NAMES
-from incline.units import LENGTH, MASS, MOMENT, SYSTEMS, VOLUME
+from incline.units import DENSITY, LENGTH, MASS, MOMENT, SYSTEMS, VOLUME
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
-    from incline.record import Trial
     from incline.result import Estimate, Outcome, Reduction, Rolling, Simulation
     from incline.units import UnitSystem
 
@@ -22,17 +21,20 @@ __all__ = ["show", "summary"]
 _RULE = "-" * 72
 
 
-def summary(trial: Trial) -> str:
-    """What was read from a trial without defects."""
+def summary(reduction: Reduction) -> str:
+    """What was read from a trial that can be reduced."""
+    trial = reduction.trial
     excluded = sum(1 for r in trial.readings if r.excluded)
+    wrap = partial(textwrap.fill, width=80, initial_indent="  - ", subsequent_indent="    ")
     lines = [
         f"{trial.vessel.name}, {trial.occasion.date.isoformat()}, {trial.occasion.place}",
-        f"  {len(trial.weights)} test weights, {len(trial.shifts)} shifts,"
-        f" {len(trial.devices)} devices, {len(trial.readings)} readings ({excluded} excluded)",
-        f"  {len(trial.drafts)} draft readings, {len(trial.samples)} water samples,"
-        f" {len(trial.tanks)} tanks, {len(trial.items)} ledger items",
-        *(f"  Note: {remark}" for remark in trial.remarks),
-        "No problems found in the records.",
+        f"  test weights {len(trial.weights)}, shifts {len(trial.shifts)},"
+        f" devices {len(trial.devices)}, readings {len(trial.readings)} ({excluded} excluded)",
+        f"  draft readings {len(trial.drafts)}, water samples {len(trial.samples)},"
+        f" tanks {len(trial.tanks)}, ledger items {len(trial.items)}",
+        "The records read without defects and can be reduced.",
+        *(["Remarks"] if reduction.remarks else []),
+        *(wrap(r) for r in reduction.remarks),
     ]
     return "\n".join(lines)
 
@@ -62,18 +64,19 @@ def show(reduction: Reduction) -> str:
             *_lightship(reduction.with_excluded, system)[1:],
         ]
     if reduction.remarks:
-        wrap = partial(textwrap.fill, width=92, initial_indent="  - ", subsequent_indent="    ")
+        wrap = partial(textwrap.fill, width=80, initial_indent="  - ", subsequent_indent="    ")
         parts += ["", "Remarks", *(wrap(r) for r in reduction.remarks)]
     parts += [
         "",
-        "U covers every input at 95 %; assumed ones are engineering judgement, not measured.",
+        "u: standard uncertainty; U = k u covers 95 %, every input counted.",
+        "Assumed figures are engineering judgement, not measured.",
         "Acceptance rests with the flag administration or its recognised organisation.",
     ]
     return "\n".join(parts)
 
 
 def _row(label: str, value: str, unit: str, note: str = "") -> str:
-    return f"  {label:<34}{value:>12} {unit:<7}{note}".rstrip()
+    return f"  {label:<31}{value:>11} {unit:<6}{note}".rstrip()
 
 
 def _length(system: UnitSystem, value: float | None, decimals: int = 3) -> str:
@@ -87,6 +90,8 @@ def _as_inclined(outcome: Outcome, system: UnitSystem) -> list[str]:
     tilt = None if ship.list_tan is None else math.degrees(math.atan(ship.list_tan))
     sag = _length(system, water.deflection)
     tonnes = system.show(ship.displacement, MASS, system.mass, 2)
+    places = 4 if system.name == "metric" else 3
+    density = system.show(ship.density, DENSITY, system.density, places)
     cubic = system.show(ship.volume, VOLUME, system.volume, 2)
     return [
         "As inclined (test weights at their start; x from the after perpendicular)",
@@ -95,7 +100,7 @@ def _as_inclined(outcome: Outcome, system: UnitSystem) -> list[str]:
         _row("trim, positive by the stern", _length(system, ship.trim), system.length),
         _row("deflection, positive sagging", sag, system.length),
         _row("list, positive to starboard", "-" if tilt is None else f"{tilt:.2f}", "deg"),
-        _row("density of the water", f"{ship.density:.4f}", "t/m3"),
+        _row("density of the water", density, system.density),
         _row("volume from the table", cubic, system.volume),
         _row("displacement", tonnes, system.mass),
         _row("LCB", _length(system, ship.lcb), system.length),
@@ -110,18 +115,18 @@ def _heel(outcome: Outcome, system: UnitSystem) -> list[str]:
     port, starboard = (math.degrees(a) for a in (heel.max_heel_port, heel.max_heel_starboard))
     lines = [
         f"Heel: {heel.method} method, {len([p for p in heel.points if not p.excluded])} readings,"
-        f" up to {port:.2f} deg to port and {starboard:.2f} deg to starboard",
-        f"  {'device':<12}{'readings':>9}{'GM alone':>11}{'std. error':>12}"
-        f"  {system.length:<4} R squared",
+        f" to {port:.2f} deg port and {starboard:.2f} deg starboard",
+        f"  {'device':<12}{'readings':>9}{f'GM alone [{system.length}]':>15}"
+        f"{f'std. error [{system.length}]':>18}{'R squared':>12}",
     ]
     for d in heel.devices:
         r2 = "-" if d.r_squared is None else f"{d.r_squared:.6f}"
         lines.append(
-            f"  {d.id:<12}{d.readings:>9}{_length(system, d.gm, 4):>11}"
-            f"{_length(system, d.u_gm, 4):>12}       {r2}"
+            f"  {d.id:<12}{d.readings:>9}{_length(system, d.gm, 4):>15}"
+            f"{_length(system, d.u_gm, 4):>18}{r2:>12}"
         )
     moment = system.show(free.moment, MOMENT, system.moment, 2)
-    error = f"standard error {_length(system, heel.u_gm_fluid, 4)}, {heel.dof} degrees of freedom"
+    error = f"std. error {_length(system, heel.u_gm_fluid, 4)}"
     return [
         *lines,
         _row("GM as measured (liquids free)", _length(system, heel.gm_fluid), system.length, error),
@@ -146,17 +151,19 @@ def _ledger(outcome: Outcome, system: UnitSystem) -> list[str]:
     ledger = outcome.ledger
 
     def count(action: str) -> str:
-        return f"{sum(1 for line in ledger.lines if line.action == action)} line(s)"
+        number = sum(1 for line in ledger.lines if line.action == action)
+        return f"{number} line" if number == 1 else f"{number} lines"
 
     def mass(value: float) -> str:
         return system.show(value, MASS, system.mass, 3)
 
+    balance = system.show(ledger.balance, MOMENT, system.moment, 6)
     return [
         "Ledger",
         _row("to deduct", mass(ledger.deduct), system.mass, count("deduct")),
         _row("to add", mass(ledger.add), system.mass, count("add")),
         _row("to relocate", mass(ledger.relocate), system.mass, count("relocate")),
-        _row("moments about G sum to", f"{ledger.balance:.1e}", "t m", "zero to rounding"),
+        _row("moments about G sum to", balance, system.moment, "(self-check: zero)"),
     ]
 
 
@@ -178,7 +185,7 @@ def _lightship(outcome: Outcome, system: UnitSystem) -> list[str]:
         note = "" if estimate.u is None else f"u {system.show(estimate.u, kind, unit, places + 1)}"
         if estimate.U is not None and estimate.k is not None:
             expanded = system.show(estimate.U, kind, unit, places + 1)
-            note += f", U {expanded} (95 %, k = {estimate.k:.2f})"
+            note += f", U {expanded}, k {estimate.k:.2f}"
         lines.append(_row(label, system.show(estimate.value, kind, unit, places), unit, note))
     return lines
 
@@ -191,10 +198,11 @@ def _uncertainty(reduction: Reduction, system: UnitSystem) -> list[str]:
     outcome, simulation = reduction.outcome, reduction.simulation
     kg = next(b for b in outcome.budgets if b.key == "vcg")
     assumed = sum(line.share for line in kg.lines if line.basis.startswith("assumed"))
-    share = f"{100.0 * assumed:.0f} % of its variance from assumed figures"
+    share = f"{100.0 * assumed:.0f} % of its variance is assumed"
     lines = ["", f"What the uncertainty of KG comes from ({share})"]
     lines += [
-        f"  {100.0 * line.share:5.1f} %  {line.name} ({line.basis})" for line in kg.lines[:_SHOWN]
+        f"  {100.0 * line.share:5.1f} %  {line.name} ({line.basis.partition(':')[0]})"
+        for line in kg.lines[:_SHOWN]
     ]
     rest = kg.lines[_SHOWN:]
     if rest:

@@ -30,9 +30,13 @@ def plan_of(trial: Trial, seen: Observations) -> Plan:
     import numpy as np
 
     lines = lines_of(trial)
+    waterline = plan_waterline(trial.drafts, trial.vessel.lpp)
+    curves = Curves(trial.table, trial.vessel.lpp, trial.settings.interpolation)
+    tau = float(waterline.solve[1] @ np.array([d.draft for d in trial.drafts]))
     return Plan(
-        waterline=plan_waterline(trial.drafts, trial.vessel.lpp),
-        curves=Curves(trial.table, trial.vessel.lpp, trial.settings.interpolation),
+        waterline=waterline,
+        curves=curves,
+        tells_lcg=curves.tells_lcg(tau * trial.vessel.lpp),
         placing=place_weights(trial),
         line=slope_form(
             seen.shift,

@@ -22,7 +22,7 @@ if TYPE_CHECKING:
     import numpy as np
     from numpy.typing import NDArray
 
-    from incline.chain import Inputs, Plan
+    from incline.chain import Inputs, Plan, Yield
     from incline.diagnosis.search import Hidden
     from incline.observations import Observations
     from incline.record import Statements, Trial
@@ -64,6 +64,7 @@ def list_sources(
     trial: Trial,
     plan: Plan,
     given: Inputs,
+    found: Yield,
     seen: Observations,
     waterline: Waterline,
     heel: HeelFit,
@@ -71,7 +72,7 @@ def list_sources(
     hidden: Sequence[Hidden] = (),
 ) -> tuple[Source, ...]:
     """All sources whose uncertainty is above zero, in the order of the chain."""
-    found = [
+    sources = [
         *_drafts(trial, waterline),
         *_density(trial, given),
         *_test_weights(trial, plan),
@@ -80,11 +81,12 @@ def list_sources(
         _curvature(heel),
         *_hidden(trial, hidden),
         *_hydrostatics(trial, given),
+        *_trimmed(trial, plan, found),
         *_tanks(trial),
         *_lines(trial),
         *_changes(trial),
     ]
-    return tuple(s for s in found if s.u > 0.0)
+    return tuple(s for s in sources if s.u > 0.0)
 
 
 @dataclass(frozen=True, slots=True)
@@ -145,10 +147,12 @@ def _drafts(trial: Trial, waterline: Waterline) -> Iterator[Source]:
     if float(chdtrc(waterline.dof, excess)) >= 0.05:
         yield from sources
         return
-    for s in sources:
+    common = shared * min(s.u for s in sources) ** 2
+    wide = [math.hypot(math.sqrt(common), max(s.u, waterline.sd)) for s in sources]
+    for s, u in zip(sources, wide, strict=True):
         yield replace(
-            s, u=waterline.sd, basis=SEEN, shape="t", dof=waterline.dof, pool="drafts", group="",
-            shared=0.0,
+            s, u=u, basis=SEEN, shape="t", dof=waterline.dof, pool="drafts",
+            shared=common / max(wide) ** 2,
         )  # fmt: skip
 
 
@@ -164,15 +168,33 @@ def _density(trial: Trial, given: Inputs) -> Iterator[Source]:
         u=sum(w * r.u for w, r in zip(share, read, strict=True)),
         basis=next((r.basis for r in read if r.basis != STATED), STATED),
     )  # fmt: skip
-    if len(trial.samples) > 1:
-        mean = float(given.density)
-        weighed = zip(share, trial.samples, strict=True)
-        squares = sum(w * (s.density - mean) ** 2 for w, s in weighed)
-        yield Source(
-            name="density of the water, spread of samples", field="density", item=None,
-            u=math.sqrt(squares / (len(trial.samples) - 1)), quantity=DENSITY, basis=SEEN,
-            shape="t", dof=len(trial.samples) - 1, pool="density",
-        )  # fmt: skip
+    yield from _water_spread(trial, float(given.density), share)
+
+
+_MANY_SAMPLES = 4
+
+
+def _water_spread(trial: Trial, mean: float, share: list[float]) -> Iterator[Source]:
+    """How far the mean of the samples may be from the mean of the water round the hull.
+
+    Few samples tell no standard deviation worth the name; the mean is taken to lie anywhere in
+    their range (rectangular). From four on it is the standard deviation of the mean (JCGM 100,
+    4.2.3).
+    """
+    found = [s.density for s in trial.samples]
+    if len(found) < 2:
+        return
+    spread = Source(
+        name="density of the water, spread of samples", field="density", item=None,
+        u=(max(found) - min(found)) / math.sqrt(12.0), quantity=DENSITY, basis=SEEN,
+        shape="rectangular",
+    )  # fmt: skip
+    if len(found) < _MANY_SAMPLES:
+        yield spread
+        return
+    squares = sum(w * (d - mean) ** 2 for w, d in zip(share, found, strict=True))
+    free = len(found) - 1
+    yield replace(spread, u=math.sqrt(squares / free), shape="t", dof=free, pool="density")
 
 
 def _test_weights(trial: Trial, plan: Plan) -> Iterator[Source]:
@@ -181,7 +203,7 @@ def _test_weights(trial: Trial, plan: Plan) -> Iterator[Source]:
         default = "test_weight_mass" if w.certificate else "uncertified_weight_mass"
         yield make(
             f"test weight {w.id}, mass", "weights", i, w.stated, "mass", MASS, default, w.mass,
-            group=f"certificate {w.certificate}" if w.certificate else "",
+            group=f"certificate {w.certificate}",  # none: one scale for all of them
             shared=assumed("certificate_shared", overrides),
         )  # fmt: skip
     moves = {(m.weight, s.number): m for s in trial.shifts for m in s.moves}
@@ -212,12 +234,13 @@ def _moments(trial: Trial, given: Inputs) -> Iterator[Source]:
     if not len(given.moments):
         return
     make = _maker(trial).make
-    for i, s in enumerate(trial.shifts):
-        if "moment" in s.stated:
-            name = f"inclining moment at shift {s.number}"
-            yield make(name, "moments", i, s.stated, "moment", MOMENT, "moment")
     if not any("moment" in s.stated for s in trial.shifts):
         yield make("inclining moments as given", "moment_factor", None, {}, "", FRACTION, "moment")
+        return
+    for i, s in enumerate(trial.shifts):
+        name = f"inclining moment at shift {s.number}"
+        value = s.moment or 0.0
+        yield make(name, "moments", i, s.stated, "moment", MOMENT, "moment", value)
 
 
 def _side(trial: Trial, y: float) -> str:
@@ -230,21 +253,27 @@ def _length_of(trial: Trial, length: float) -> str:
     return f"{system.show(length, LENGTH, system.length, 2)} {system.length}"
 
 
+_COMMON_TAPE = 0.5
+"""Correlation of lengths measured with one tape or by one calibration: engineering judgement."""
+
+
 def _devices(trial: Trial, seen: Observations, slope: SlopeUncertainty) -> Iterator[Source]:
     make = _maker(trial).make
-    if not slope.lengths_seen:
-        for j, device in enumerate(seen.devices):
-            scale = float(seen.lengths[j])
-            if device.kind == "inclinometer" or device.length is None:
-                yield make(
-                    f"device {device.id}, scale", "lengths", j, device.stated, "scale", FRACTION,
-                    "inclinometer_scale", scale,
-                )  # fmt: skip
-            else:
-                yield make(
-                    f"device {device.id}, length", "lengths", j, device.stated, "length", LENGTH,
-                    "length",
-                )  # fmt: skip
+    for j, device in enumerate(seen.devices):
+        if slope.lengths_seen and not device.stated:
+            continue  # its error shows as disagreement with the other devices
+        scale = float(seen.lengths[j])
+        group, shared = f"measured by {device.calibration}", _COMMON_TAPE
+        if device.kind == "inclinometer" or device.length is None:
+            yield make(
+                f"device {device.id}, scale", "lengths", j, device.stated, "scale", FRACTION,
+                "inclinometer_scale", scale,
+            )  # fmt: skip
+        else:
+            yield make(
+                f"device {device.id}, length", "lengths", j, device.stated, "length", LENGTH,
+                "length", group=group if device.calibration else "", shared=shared,
+            )  # fmt: skip
     if slope.u is not None:
         yield Source(
             name="slope of heel against moment, scatter of readings", field="slope_shift",
@@ -289,6 +318,34 @@ def _hydrostatics(trial: Trial, given: Inputs) -> Iterator[Source]:
     yield make("hydrostatic table, LCB", "lcb_shift", None, stated, "lcb", LENGTH, "table_lcb")
 
 
+def _trimmed(trial: Trial, plan: Plan, found: Yield) -> Iterator[Source]:
+    """What a table for one trim does not say of a ship at another.
+
+    Its waterplane changes with trim where the ends are flared, and with it BM: the default is a
+    share of BM times the slope of the keel. Without BM_L the rise of B is missing as well.
+    """
+    curves, now = plan.curves, found.condition
+    if not curves.even:
+        return
+    lpp = trial.vessel.lpp
+    more = abs(float(now.tau) - curves.trims[0] / lpp)
+    make, b = _maker(trial).make, now.buoyancy
+    yield make(
+        "table used at another trim, KM", "km_shift", None, {}, "", LENGTH, "table_trim_km",
+        float(b.bmt) * more,
+    )  # fmt: skip
+    yield make(
+        "table used at another trim, LCB", "lcb_shift", None, {}, "", LENGTH, "table_trim_lcb",
+        lpp * more**2,
+    )  # fmt: skip
+    if "bml" not in curves.names:
+        yield Source(
+            name="rise of B by trim, not in the table", field="km_shift", item=None,
+            u=(lpp * more) ** 2 / (24.0 * float(b.entry)), quantity=LENGTH,
+            basis="estimated as for a box",
+        )  # fmt: skip
+
+
 def _tanks(trial: Trial) -> Iterator[Source]:
     make = _maker(trial).make
     for i, t in enumerate(trial.tanks):
@@ -308,10 +365,16 @@ _AXES = {"x": "x", "y": "y", "z": "height"}
 
 def _lines(trial: Trial) -> Iterator[Source]:
     make = _maker(trial).make
+    came = {c.name.casefold() for c in trial.changes if c.change == "aboard"}
     for i, line in enumerate(lines_of(trial)):
         mass, centre, kind = _LINE_DEFAULTS[line.source]
         label = f"{kind} {line.name}"
-        yield make(f"{label}, mass", "mass", i, line.stated, "mass", MASS, mass, line.mass)
+        # What came aboard after the drafts and comes off again is one thing, weighed once.
+        same = f"the one {line.name.casefold()}" if line.name.casefold() in came else ""
+        yield make(
+            f"{label}, mass", "mass", i, line.stated, "mass", MASS, mass, line.mass, group=same,
+            shared=1.0,
+        )  # fmt: skip
         for axis, word in _AXES.items():
             yield make(f"{label}, {word}", axis, i, line.stated, axis, LENGTH, centre)
             if line.to is not None:
@@ -323,7 +386,11 @@ def _changes(trial: Trial) -> Iterator[Source]:
     make = _maker(trial).make
     for i, c in enumerate(trial.changes):
         label = f"change {c.name}"
-        yield make(f"{label}, mass", "changes", i, c.stated, "mass", MASS, "item_mass", c.mass)
+        same = f"the one {c.name.casefold()}" if c.change == "aboard" else ""
+        yield make(
+            f"{label}, mass", "changes", i, c.stated, "mass", MASS, "item_mass", c.mass,
+            group=same, shared=1.0,
+        )  # fmt: skip
         for axis, word in _AXES.items():
             yield make(
                 f"{label}, {word}", f"change_{axis}", i, c.stated, axis, LENGTH, "item_centre"

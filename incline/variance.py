@@ -120,7 +120,12 @@ def slope_design(
     reading_alone = float(c @ c)
     reasons = []
     if free[1] == 0:
-        reasons.append("one device: an error of its length cannot show")
+        one = len(np.unique(device)) == 1
+        reasons.append(
+            "one device: an error of its length cannot show"
+            if one
+            else "the devices share too few shifts for an error of a length to show"
+        )
     if free[0] == 0 or free[2] == 0:
         q_reading, free[2] = np.eye(len(x)) - without_ship, len(x) - round(np.trace(without_ship))
         q_ship, free[0] = np.zeros_like(q_ship), 0
@@ -184,6 +189,6 @@ def slope_uncertainty(seen: Observations, moments: Floats) -> SlopeUncertainty:
         ship=math.sqrt(max(float(found.ship), 0.0)),
         device=math.sqrt(max(float(found.device), 0.0)),
         reading=math.sqrt(max(float(found.reading), 0.0)),
-        lengths_seen=not known,
+        lengths_seen=not known and design.freedom[1] > 0,
         reason=design.reason,
     )

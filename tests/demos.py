@@ -159,7 +159,7 @@ DUNLIN_HEAD = {
     "place": "Coal quay, Port Averil", "berth": "alongside to starboard, lines slacked by hand",
     "weather": "clear, wind 3 m/s from astern", "water_depth": "5.8", "rules": "IMO",
     "P1": "engine room", "P2": "hold", "P3": "forward store",
-    "more": '''
+    "more": """
 [rolling]
 condition = "20 %"
 
@@ -167,7 +167,7 @@ condition = "20 %"
 lines = "not excluded"
 weather = "log of wind and current, every ten minutes"
 drift = "the day tank was sounded before and after, the same"
-''',
+""",
 }  # fmt: skip
 
 DUNLIN_STYLE = replace(KESTREL_STYLE, seed=3096)

@@ -119,6 +119,15 @@ class Misreader:
         table = self.exact.table
         factor = 1.0 + default("table_volume") * float(self.rng.normal())
         lcb, km = (default(f"table_{n}") * float(self.rng.normal()) for n in ("lcb", "km"))
+        if len(table.trims) == 1:  # and what it does not say of the ship's own trim
+            tau = abs(self.exact.drafts[0].draft - self.exact.drafts[-1].draft) / abs(
+                self.exact.drafts[0].x - self.exact.drafts[-1].x
+            )
+            middle = table.bmt[0][len(table.drafts) // 2]
+            km += default("table_trim_km", middle * tau) * float(self.rng.normal())
+            lcb += default("table_trim_lcb", self.exact.vessel.lpp * tau**2) * float(
+                self.rng.normal()
+            )
         return replace(
             table,
             volume=tuple(tuple(v * factor for v in row) for row in table.volume),

@@ -52,8 +52,8 @@ def test_start_makes_a_trial_that_check_explains(tmp_path, units):
 def test_check_says_what_was_read():
     run = incline("check", WORKBOAT)
     assert run.returncode == 0
-    assert "9 shifts" in run.stdout
-    assert "27 readings" in run.stdout
+    assert "shifts 9" in run.stdout
+    assert "readings 27" in run.stdout
 
 
 def test_check_prints_every_criterion_in_80_columns():

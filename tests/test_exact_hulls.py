@@ -87,7 +87,9 @@ def test_box_with_trim(trims, tau, mean):
 def test_even_keel_table_without_bml_knows_b_only_on_its_own_trim():
     curves = Curves(box_table(bml=None), L, "cubic")
     assert at(curves, 3.0, 0.0).x == pytest.approx(L / 2)
-    assert at(curves, 3.0, 0.01).x is None
+    assert curves.tells_lcg(0.0)
+    assert not curves.tells_lcg(0.01 * L)
+    assert Curves(box_table(), L, "cubic").tells_lcg(0.01 * L)
 
 
 @pytest.mark.parametrize(

@@ -3,6 +3,7 @@
 import dataclasses
 import math
 import re
+from itertools import pairwise
 
 import numpy as np
 import pytest
@@ -14,6 +15,7 @@ from test_exact_hulls import B, L, box_table
 from textbook import HERE, item, single_shift, trial, with_weight
 
 from incline import FieldDataError, read_trial, reduce
+from incline.hydrostatics import Curves
 from incline.record import Change, DraftReading, Move, Point, Sample, Shift, Weight
 
 
@@ -366,3 +368,168 @@ def test_kg_limit_and_its_probability(workboat):
         # Normal distribution table; 50 000 draws give the share to 0.002.
         assert result.outcome.kg_above_limit == pytest.approx(chance, abs=0.001)
         assert result.simulation.kg_above_limit == pytest.approx(chance, abs=0.012)
+
+
+def test_level_ship_table_without_bml_and_changes():
+    # The table cannot tell the new trim; a box's BM_L follows it closely enough for a box, so that
+    # LCG comes out by moments and KG stays within the rise of B of a few millimetres of trim.
+    mass, x, y, z = 2214.0, 30.02, 0.0, 4.2
+    came = Point(50.0, 0.0, 7.0)
+    before = mass - 2.0
+    centre = [
+        (mass * g - 2.0 * getattr(came, a)) / before for a, g in zip("xyz", (x, y, z), strict=True)
+    ]
+    shift_x = L / 2 - centre[0]  # the ship of the drafts floats level: G over B amidships
+    centre[0] = L / 2
+    x += shift_x * before / mass
+    t = box_trial(mass, x, y, z, box_drafts(*box_equilibrium(before, *centre)))
+    t = dataclasses.replace(
+        t,
+        table=box_table(bml=None),
+        changes=(Change(change="aboard", name="gear", mass=2.0, centre=came, where=HERE),),
+    )
+    light = reduce(t).outcome.lightship
+    assert light.displacement.value == pytest.approx(mass, abs=1e-6)
+    assert light.vcg.value == pytest.approx(z, abs=1e-4)
+    assert light.lcg.value == pytest.approx(x, abs=1e-4)
+    assert light.lcg.u is not None
+    assert math.isfinite(light.lcg.u)
+    assert any("counts as part of the lightship" in r for r in reduce(t).remarks)
+
+
+@pytest.mark.parametrize("table_trim", [-0.6, 0.5, 1.0])
+def test_second_trim_correction_counts_from_the_tables_own_trim(table_trim):
+    # A hull whose waterplane's moment of inertia grows with draft: a vee of half-breadth z over the
+    # whole length. Volume at draft T amidships and slope tau, exactly: integral of (T - tau s)^2.
+    drafts = tuple(np.arange(2.0, 4.01, 0.25))
+
+    def exact(mean, tau):
+        volume = L * mean**2 + tau**2 * L**3 / 12.0
+        lcf = L / 2 - tau * L**2 / (12.0 * mean)
+        inertia = 2.0 * (mean * L**3 / 12.0) - 2.0 * mean * L * (lcf - L / 2) ** 2
+        return volume, lcf, inertia / volume
+
+    tau0 = table_trim / L
+    rows = [exact(d, tau0) for d in drafts]
+    table = box_table(
+        drafts=drafts, trims=(table_trim,), area=None,
+        volume=(tuple(r[0] for r in rows),), lcf=(tuple(r[1] for r in rows),),
+        bml=(tuple(r[2] for r in rows),),
+    )  # fmt: skip
+    curves = Curves(table, L, "cubic")
+    for trim in (-0.5, 0.0, 1.2):
+        found = curves.buoyancy(np.asarray(3.0), np.asarray(trim / L), None)
+        # The correction is good to the third order of the trim: 1e-3 m3 of 540 here.
+        assert found.volume == pytest.approx(
+            exact(3.0, trim / L)[0], abs=2e-3 + 0.1 * abs(trim - table_trim) ** 3
+        )
+
+
+def test_few_water_samples_do_not_blow_up_the_interval(workboat):
+    two = dataclasses.replace(workboat, samples=workboat.samples[:2])
+    result = reduce(two, draws=50_000)
+    displacement = result.outcome.lightship.displacement
+    assert 2.1 * displacement.u > displacement.U
+    simulated = result.simulation.results[0]
+    assert simulated.u == pytest.approx(displacement.u, rel=0.03)
+    assert simulated.agrees
+
+
+def test_scatter_with_two_degrees_of_freedom_has_intervals_but_no_deviation():
+    base = single_shift(10, 12, 0.25, 10, 8000, 7.0)
+    odd = tuple(
+        dataclasses.replace(r, values=(r.values[0] + e,))
+        for r, e in zip(base.readings, (0.0, 0.002, 0.0), strict=True)
+    )
+    result = reduce(dataclasses.replace(base, readings=odd), draws=20_000)  # one degree of freedom
+    assert result.outcome.slope_uncertainty.dof == 1
+    kg = next(r for r in result.simulation.results if r.key == "vcg")
+    assert (kg.mean, kg.u) == (None, None)
+    first = result.outcome.lightship.vcg
+    assert kg.tolerance < first.u
+    assert kg.symmetric[0] < first.value < kg.symmetric[1]
+
+
+def test_worse_drafts_never_shrink_the_uncertainty(workboat):
+    def u_with(noise):
+        rng = np.random.default_rng(5)
+        errors = rng.normal(size=len(workboat.drafts))
+        drafts = tuple(
+            dataclasses.replace(d, draft=d.draft + noise * float(e))
+            for d, e in zip(workboat.drafts, errors, strict=True)
+        )
+        return reduce(dataclasses.replace(workboat, drafts=drafts)).outcome.lightship.displacement.u
+
+    sizes = [u_with(noise) for noise in (0.0, 0.005, 0.010, 0.013, 0.016, 0.02, 0.03)]
+    assert all(b >= 0.98 * a for a, b in pairwise(sizes))  # other inputs move by 2 % with the draft
+
+
+def test_stated_length_of_one_device_counts(workboat):
+    from incline.record import Stated
+
+    one = tuple(
+        dataclasses.replace(d, stated={"length": Stated(0.04, "normal")}) if d.id == "P2" else d
+        for d in workboat.devices
+    )
+    plain = reduce(workboat).outcome
+    found = reduce(dataclasses.replace(workboat, devices=one)).outcome
+    names = [line.name for line in found.budgets[1].lines]
+    assert "device P2, length" in names
+    assert "device P1, length" not in names
+    assert found.lightship.vcg.u > plain.lightship.vcg.u
+
+
+def test_vertical_moves_count_from_the_heel_of_the_shifts():
+    # 20 t came aboard 3 m off the centreline after the drafts: the weights that rise feel that heel.
+    mass, x, z = 2214.0, 29.5, 4.2
+    came = Point(30.0, 3.0, 6.0)
+    y = 20.0 * came.y / mass
+    before = mass - 20.0
+    centre = [
+        (mass * g - 20.0 * getattr(came, a)) / before for a, g in zip("xyz", (x, y, z), strict=True)
+    ]
+    t = box_trial(mass, x, y, z, box_drafts(*box_equilibrium(before, *centre)))
+    mean, tau, start = box_equilibrium(mass, x, y, z)
+    gm = mean / 2 + L**2 * tau**2 / (24 * mean) + B**2 / (12 * mean) - z
+    w, ys, zs = 15.0, (0.0, 3.0, 6.0, -3.0, -6.0, 0.0), (5.0, 5.0, 7.0, 5.0, 7.0, 5.0)
+    # D GM t = w d + w h t + D TCG, exactly for a constant metacentre (small heel).
+    tangents = [
+        (w * d + mass * gm * start) / (mass * gm - w * (h - 5.0))
+        for d, h in zip(ys, zs, strict=True)
+    ]
+    t = dataclasses.replace(
+        t,
+        changes=(Change(change="aboard", name="crane", mass=20.0, centre=came, where=HERE),),
+        weights=(Weight(id="W", mass=w, certificate="", x=30.0, z=5.0, where=HERE),),
+        shifts=tuple(
+            Shift(number=n, time="", moment=None, where=HERE,
+                  moves=(Move(weight="W", y=d, x=None, z=h, where=HERE),))
+            for n, (d, h) in enumerate(zip(ys, zs, strict=True))
+        ),
+        readings=tuple(
+            dataclasses.replace(t.readings[0], shift=n, values=(v,)) for n, v in enumerate(tangents)
+        ),
+    )  # fmt: skip
+    assert reduce(t).outcome.as_inclined.vcg == pytest.approx(z, abs=1e-5)
+
+
+def test_drafts_outside_the_table_are_refused_even_if_changes_bring_her_in():
+    mass, x, z = 2214.0, 29.8, 4.2
+    came = Point(30.0, 0.0, 4.0)
+    t = box_trial(mass, x, 0.0, z, box_drafts(*box_equilibrium(mass - 20.0, x, 0.0, z)))
+    t = dataclasses.replace(
+        t,
+        table=box_table(drafts=(2.99, 3.5, 4.0)),
+        changes=(Change(change="aboard", name="load", mass=20.0, centre=came, where=HERE),),
+    )
+    assert codes(t) == ["waterline-outside-table"]
+
+
+def test_absurd_heels_and_heights_are_refused(workboat):
+    short = tuple(
+        dataclasses.replace(d, length=d.length / 1000.0) if d.id == "P1" else d
+        for d in workboat.devices
+    )
+    assert codes(dataclasses.replace(workboat, devices=short)) == ["heel-absurd"]
+    heavy = tuple(dataclasses.replace(w, mass=w.mass * 4.0) for w in workboat.weights)
+    assert codes(dataclasses.replace(workboat, weights=heavy)) == ["kg-absurd"]

@@ -69,8 +69,8 @@ def test_calculation_lines_show_the_values_put_in():
     assert f"ΣFSM / Δ {o.free_surface.moment:.3f} / {s.displacement:.3f} {rise:.3f} m" in text
     lcg = f"{s.lcb:.3f} + (0.017000) × ({s.vcg:.3f} − {s.kb:.3f}) {s.lcg:.3f} m"
     assert f"LCG = LCB + τ (KG − KB) {lcg}" in text
-    assert f"tangent of list {o.heel.gm_fluid:.3f} × (0.003000) {s.tcg:.3f} m" in text
-    assert f"{s.volume:.2f} × 1.0218 × (1 + 0.00600) {s.displacement:.3f} t" in text
+    assert f"tangent of list {o.heel.gm_fluid:.4f} × (0.003000) {s.tcg:.4f} m" in text
+    assert f"{s.volume:.3f} × 1.0218 × (1 + 0.00600) {s.displacement:.3f} t" in text
 
 
 def test_readings_print_as_recorded_with_tangents_of_five_decimals():

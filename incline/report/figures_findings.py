@@ -122,9 +122,7 @@ def _single(pairs: Sequence[tuple[float, float]]) -> bool:
     """Whether the pattern has one value at each place, to two hundredths of its range."""
     xs, ys = [x for x, _ in pairs], [y for _, y in pairs]
     near, alike = 0.01 * (max(xs) - min(xs)), 0.02 * (max(ys) - min(ys))
-    return all(
-        abs(b[1] - a[1]) <= alike for a, b in pairwise(pairs) if b[0] - a[0] <= near
-    )
+    return all(abs(b[1] - a[1]) <= alike for a, b in pairwise(pairs) if b[0] - a[0] <= near)
 
 
 def _clock(axes: Axes, heel: HeelFit, when: dict[int, float]) -> None:
@@ -134,7 +132,9 @@ def _clock(axes: Axes, heel: HeelFit, when: dict[int, float]) -> None:
     axes.set_xlabel("time" if clock else "shift")
     step = max(1, -(-len(heel.shifts) // 4)) if clock else max(1, len(heel.shifts) // 9)
     some = heel.shifts[::step]
-    axes.set_xticks([when[s.shift] for s in some], [s.time if clock else str(s.shift) for s in some])
+    axes.set_xticks(
+        [when[s.shift] for s in some], [s.time if clock else str(s.shift) for s in some]
+    )
 
 
 def _beside(axes: Axes, names: Sequence[str], width: float) -> None:

@@ -74,9 +74,7 @@ def _plot(sheet: Sheet, base: Sequence[float], expected: Sequence[float]) -> Fig
     return FigureFlowable(finding_plot(heel, base, expected, times, sheet.show, sheet.width))
 
 
-def _group(
-    sheet: Sheet, number: int, group: Sequence[Finding], base: Sequence[float]
-) -> list[Any]:
+def _group(sheet: Sheet, number: int, group: Sequence[Finding], base: Sequence[float]) -> list[Any]:
     """A finding, what explains the same nearly as well, and the plot."""
     first, rivals = group[0], group[1:]
     show = sheet.show

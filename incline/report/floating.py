@@ -205,7 +205,7 @@ def _entry(sheet: Sheet) -> list[Any]:
 
 def _displacement(sheet: Sheet) -> list[Any]:
     trial, show, state = sheet.reduction.trial, sheet.show, sheet.reduction.outcome.as_inclined
-    volume, density = show.number(state.volume, "volume"), show.number(state.density, "density")
+    volume, density = show.number(state.volume, "volume", 3), show.number(state.density, "density")
     allowance = trial.settings.allowance
     if allowance is None:
         formula, values = "Δ = ∇ ρ   (extreme volume)", f"{volume} × {density}"

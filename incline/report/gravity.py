@@ -123,5 +123,5 @@ def _tcg_line(sheet: Sheet) -> tuple[str, str, str]:
     formula = "TCG = GM fluid × tangent of list"
     if state.tcg is None:
         return formula, "see the remarks", NOT_DETERMINED
-    values = f"{show.number(heel.gm_fluid, 'length')} × ({show.plain(state.list_tan, 6)})"
-    return formula, values, show.full(state.tcg, "length")
+    values = f"{show.number(heel.gm_fluid, 'length', 4)} × ({show.plain(state.list_tan, 6)})"
+    return formula, values, show.full(state.tcg, "length", 4)

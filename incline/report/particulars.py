@@ -99,6 +99,7 @@ def conventions(sheet: Sheet) -> list[Any]:
         "length between perpendiculars.",
         "Method: a straight line of tangent on moment by least squares, because the reading is "
         "uncertain and the moment nearly exact. All devices share one slope b, each has a zero "
-        "offset of its own, and every counted reading has the same weight. GM = 1 / (b Δ).",
+        "offset of its own; counted readings have equal weights unless every device states the "
+        "resolution of its readings. GM = 1 / (b Δ).",
     )
     return [bullet(line) for line in lines]
