@@ -20,7 +20,7 @@ from incline.ledger import balance, lines_of, summarise, test_weight_lines
 from incline.model import KEYS, TrialModel
 from incline.montecarlo import seed_of, simulate
 from incline.observations import observe
-from incline.refusals import refuse
+from incline.refusals import refuse, refuse_absurd
 from incline.remarks import remarks_on, remarks_on_simulation
 from incline.result import AsInclined, FreeSurface, Lightship, Outcome, Reduction, TableEntry
 from incline.rolling import remarks_on_rolling, rolling_of
@@ -109,6 +109,7 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
     waterline = describe_waterline(plan.waterline, trial.drafts, trial.vessel.lpp)
     slope = slope_uncertainty(seen, found.moments[seen.shift])
     looked = search(trial, seen, found.moments)
+    refuse_absurd(trial, seen, found, looked)
     hidden = () if looked is None else looked.hidden
     sources = list_sources(trial, plan, given, found, seen, waterline, heel, slope, hidden)
     blocks = blocks_of(sources, trial.settings.correlations)

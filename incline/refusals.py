@@ -14,12 +14,13 @@ if TYPE_CHECKING:
     from numpy.typing import NDArray
 
     from incline.chain import Plan, Yield
+    from incline.diagnosis.search import Search, Sign
     from incline.observations import Observations
     from incline.record import Trial
 
     Floats = NDArray[np.float64]
 
-__all__ = ["refuse"]
+__all__ = ["refuse", "refuse_absurd"]
 
 _FLAT = 1e-6
 """A line that rises by less than this tangent over the whole range of moments is flat."""
@@ -28,8 +29,6 @@ _FLAT = 1e-6
 def refuse(trial: Trial, plan: Plan, seen: Observations, found: Yield) -> None:
     """Raise FieldDataError with every reason why the trial gives no result."""
     defects = [*_line_defects(seen, found), *_table_defects(trial, plan, found)]
-    if not defects:
-        defects += _absurd(trial, seen, found)
     light = float(found.light_displacement)
     if not light > 0.0 and not any(d.code == "waterline-outside-table" for d in defects):
         defects.append(
@@ -48,12 +47,18 @@ _STEEP = 15.0
 """Degrees of heel beyond which readings or lengths must be wrong: tests stay below 4."""
 
 
-def _absurd(trial: Trial, seen: Observations, found: Yield) -> list[Defect]:
-    """Results that no test and no ship can have; something was written in a wrong unit."""
+def refuse_absurd(trial: Trial, seen: Observations, found: Yield, search: Search | None) -> None:
+    """Raise FieldDataError for heels and heights that no test and no ship can have.
+
+    Something was written in a wrong unit or place; where the residuals point at it, that is said.
+    """
     defects = []
     for j, device in enumerate(seen.devices):
-        mine = seen.tangents[seen.device == j]
-        swing = math.degrees(math.atan(float(mine.max() - mine.min()) / 2.0))
+        mine = seen.device == j
+        moments = found.transverse[seen.shift][mine]
+        span = float(moments.max() - moments.min())
+        slope = _middle_slope(moments, seen.tangents[mine], 1e-9 * span)
+        swing = math.degrees(math.atan(abs(slope) * span / 2.0))
         if swing > _STEEP:
             hint = "check the unit of its readings and its length"
             what = f"device {device.id} heels {swing:.1f} deg to each side"
@@ -62,16 +67,27 @@ def _absurd(trial: Trial, seen: Observations, found: Yield) -> list[Defect]:
             )
     vcg, highest = float(found.light_vcg), 3.0 * trial.vessel.depth
     if not defects and not 0.0 < vcg < highest:
+        hint = "check the masses of the test weights, the lengths, and the units of all tables"
+        if search is not None and search.signs:
+            hint = f"the residuals point to this: {_pointer(search.signs[0])}"
         defects.append(
             Defect(
                 Where("trial"),
                 "kg-absurd",
                 f"a lightship KG of {vcg:.3f} m",
                 f"a KG between the baseline and three depths ({highest:.2f} m)",
-                "check the masses of the test weights, the lengths, and the units of all tables",
+                hint,
             )
         )
-    return defects
+    if defects:
+        raise FieldDataError(defects)
+
+
+def _pointer(sign: Sign) -> str:
+    """A finding in one line."""
+    at = "" if sign.shift is None else f", shift {sign.shift}"
+    by = "" if sign.device is None else f", device {sign.device}"
+    return f"{sign.cause}{at}{by}: {sign.size}"
 
 
 def _line_defects(seen: Observations, found: Yield) -> list[Defect]:

@@ -5,7 +5,7 @@ import math
 
 import pytest
 from conftest import DEMO_TRIALS
-from demos import DEMOS, demo_files
+from demos import CLEAN, DEMOS, demo_files
 from simulate import WallSided
 
 from incline import read_trial, reduce, to_json
@@ -27,7 +27,7 @@ def test_shipped_files_are_those_of_the_script(name):
     assert shipped == demo_files(name)
 
 
-@pytest.mark.parametrize("name", DEMOS)
+@pytest.mark.parametrize("name", CLEAN)
 def test_demo_recovers_its_true_lightship(name):
     result = reduce(read_trial(DEMO_TRIALS / name))
     for estimate, true in zip(found(result), truth(name), strict=True):
@@ -52,7 +52,7 @@ def straight_line_bias(name, result):
     return cubic * top / bottom * ship.displacement / truth(name)[0]
 
 
-@pytest.mark.parametrize("name", DEMOS)
+@pytest.mark.parametrize("name", CLEAN)
 @pytest.mark.parametrize("semicolon", [False, True])
 @pytest.mark.parametrize("units", ["metric", "us"])
 def test_noise_free_demo_recovers_everything_but_the_straight_line_bias(
@@ -74,7 +74,7 @@ def test_noise_free_demo_recovers_everything_but_the_straight_line_bias(
     assert tcg == pytest.approx(true[3] + list_tan * bias, abs=1e-6)
 
 
-@pytest.mark.parametrize("name", DEMOS)
+@pytest.mark.parametrize("name", CLEAN)
 def test_units_and_separators_do_not_change_the_result(name, demo_folder):
     def numbers(value):
         if isinstance(value, dict):

@@ -10,10 +10,13 @@ from demos import demo_files
 from simulated_faults import LONG, SHORT, layout, rate
 from test_regression import HANSEN, PENDULUM, TANGENT
 
-from incline import read_trial, reduce
+from incline import FieldDataError, read_trial, reduce
+from incline.diagnosis import search
 from incline.diagnosis.patterns import Layout
 from incline.diagnosis.scan import Scan, explain
 from incline.diagnosis.search import layout_of
+from incline.moments import place_weights
+from incline.observations import observe
 
 
 @pytest.mark.parametrize(
@@ -106,6 +109,13 @@ def first(t):
     return reduce(t).diagnosis.findings[0]
 
 
+def signs(t):
+    """What the search finds, also where the result itself is refused as absurd."""
+    placing = place_weights(t)
+    moments = placing.about_start(np.array([w.mass for w in t.weights]), placing.y)
+    return search(t, observe(t), moments).signs
+
+
 def test_a_clean_demo_has_no_findings(workboat):
     assert reduce(workboat).diagnosis.findings == ()
 
@@ -120,9 +130,14 @@ def test_a_clean_demo_has_no_findings(workboat):
     ],
 )
 def test_slips_of_the_pen_are_recognised(workboat, shift, device, change, words):
-    finding = first(with_reading(workboat, shift, device, change))
+    finding = signs(with_reading(workboat, shift, device, change))[0]
     assert (finding.cause, finding.shift, finding.device) == ("misread reading", shift, device)
     assert words in finding.size
+
+
+def test_a_slip_that_puts_kg_below_the_keel_is_refused_and_named(workboat):
+    with pytest.raises(FieldDataError, match=r"misread reading, shift 7, device P3: .*mm for cm"):
+        reduce(with_reading(workboat, 7, "P3", lambda v: v * 10.0))
 
 
 def test_transposed_digits(workboat):
@@ -139,7 +154,7 @@ def test_slips_on_one_reading_are_found_nearly_always(workboat):
     found = named = total = 0
     for r in workboat.readings:
         for change in (lambda v: -v, lambda v: v / 10.0, lambda v: v * 10.0):
-            findings = reduce(with_reading(workboat, r.shift, r.device, change)).diagnosis.findings
+            findings = signs(with_reading(workboat, r.shift, r.device, change))
             total += 1
             found += bool(findings)
             named += bool(findings) and (findings[0].cause, findings[0].shift, findings[0].device) == (
@@ -229,7 +244,5 @@ def test_clock_times_past_midnight(workboat):
             for n, s in enumerate(workboat.shifts)
         ),
     )
-    from incline.observations import observe
-
     times = layout_of(late, observe(late), np.arange(9.0)).times
     assert times == pytest.approx(np.linspace(0, 1, 9), abs=1e-12)

@@ -28,7 +28,7 @@ def _minus(text):
 def _section(kind):
     """Text of the uncertainty section alone."""
     text = " ".join(pages(kind))
-    return text[text.index("10 Uncertainty") :].split("Remarks")[0]
+    return re.split(r"\d+ Uncertainty ", text, maxsplit=1)[1].split("Remarks")[0]
 
 
 def _kg(units="metric"):

@@ -147,7 +147,11 @@ def trial_tables(scene: Scene, style: Style, places: tuple[float, ...]) -> dict[
             tanks,
         )  # fmt: skip
     if scene.rolls:
-        runs = [(n, rolls, f"{time:.1f}") for n, (rolls, time) in enumerate(scene.rolls, start=1)]
+        point = "," if style.semicolon else "."
+        runs = [
+            (n, rolls, f"{time:.1f}".replace(".", point))
+            for n, (rolls, time) in enumerate(scene.rolls, start=1)
+        ]
         files["rolls.csv"] = w.table((("run", ""), ("rolls", ""), ("time [s]", "")), runs)
     if ledger:
         files["ledger.csv"] = w.table(

@@ -101,6 +101,11 @@ def dictionary(layout: Layout) -> list[Pattern]:
     return found
 
 
+def _steps(layout: Layout) -> range:
+    """Shifts at which a step may lie: one at the first or last reading is that reading's own."""
+    return range(2, layout.shifts - 1)
+
+
 def _ship(layout: Layout) -> Iterator[Pattern]:
     import numpy as np
 
@@ -114,7 +119,7 @@ def _ship(layout: Layout) -> Iterator[Pattern]:
             yield Pattern(
                 "line, fender or ground holding", "ship", hold, one_sided=True, detail=word
             )
-    for k in range(1, layout.shifts):
+    for k in _steps(layout):
         after = (layout.shift >= k).astype(float)
         yield Pattern("wind or current changed once", "ship", after, shift=k)
     yield Pattern("slow drift", "ship", layout.times[layout.shift])
@@ -139,7 +144,7 @@ def _device(layout: Layout) -> Iterator[Pattern]:
             one[r] = 1.0
             yield Pattern("misread reading", "device", one, shift=int(layout.shift[r]), device=j)
         yield Pattern("wrong length or scale", "device", m * mine, device=j)
-        for k in range(1, layout.shifts):
+        for k in _steps(layout):
             after = ((layout.shift >= k) & mine).astype(float)
             yield Pattern("device disturbed", "device", after, shift=k, device=j)
         for onset in _ONSETS[1:]:

@@ -8,6 +8,7 @@ from incline.criteria import VERIFY, found_text, limit_text
 from incline.report.document import Sheet, bullet, note, paragraph, part
 from incline.report.show import MISSING, Kind, signed
 from incline.report.tables import Column, Row, grid
+from incline.report.text import elide
 from incline.telling import tally
 from incline.units import LENGTH, factor
 
@@ -25,8 +26,11 @@ _EVIDENCE = {
     "setting": "a setting of this program",
     "stated": "stated by the trial",
 }
+_RULES = {"IMO": "IMO. ", "US": "US practice. ", "class": "Class practice. "}
 _TOLD = f"The limit is from memory: {VERIFY}."
 """Said again by the evidence."""
+_CELL, _NOTE = 300, 2000
+"""Most characters of a cell, and of the notes under it."""
 _LENGTHS: dict[str, Kind] = {"cm": "reading", "m": "length"}
 
 
@@ -45,7 +49,7 @@ def criteria(sheet: Sheet) -> list[Any]:
     )
     return [
         *_sums(checks),
-        grid(columns, [row for c in checks for row in _rows(sheet, c)], sheet.width),
+        grid(columns, [row for c in checks for row in _rows(sheet, c)], sheet.width, whole=True),
         note(
             "✓ met, ✗ not met, ○ not recorded, – does not judge this trial and is shown for "
             "information. Limits are printed in the units in which they are published."
@@ -67,7 +71,7 @@ def criteria_line(sheet: Sheet) -> str:
 def _sums(checks: tuple[Check, ...]) -> list[Any]:
     failed = [c for c in checks if c.status == "fail"]
     rest = sum(c.status == "not applicable" for c in checks)
-    flow: list[Any] = [paragraph(f"{tally(checks)}; {rest} not applicable.")]
+    flow: list[Any] = [paragraph(f"{tally(checks)}, {rest} not applicable.")]
     if failed:
         flow += [
             *part("Not met", 50.0),
@@ -94,7 +98,16 @@ def _rows(sheet: Sheet, check: Check) -> list[Row]:
         "FAIL" if failed else check.status,
         check.source,
     )
-    return [Row(cells, "stress" if failed else "plain"), Row(("", _under(check)), "under")]
+    look = "stress" if failed else "plain"
+    return [
+        Row(tuple(_short(c, _CELL) for c in cells), look),
+        Row(("", _short(_under(check), _NOTE)), "under"),
+    ]
+
+
+def _short(text: str, most: int) -> str:
+    """Not more of a text than a row that must not split has room for."""
+    return text if len(text) <= most else elide(text, most)
 
 
 def _found(sheet: Sheet, check: Check) -> str:
@@ -111,7 +124,7 @@ def _found(sheet: Sheet, check: Check) -> str:
 def _under(check: Check) -> str:
     known = "; ".join(_EVIDENCE.get(e.strip(), e.strip()) for e in check.evidence.split(";"))
     edition = f"Edition: {check.edition}. " if check.edition else ""
-    rule = f"{check.rule_set}. " if check.rule_set else ""
+    rule = _RULES.get(check.rule_set, "")
     told = " ".join(check.note.replace(_TOLD, "").split())
     return f"{rule}{edition}Limit {known}. {told}".strip()
 

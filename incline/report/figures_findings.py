@@ -57,8 +57,8 @@ def finding_plot(
     when = {s.shift: t for s, t in zip(heel.shifts, times, strict=True)}
     with drawing_style():
         figure = blank_figure(width, 152.0)
-        each = (width - 40.0) / 3.0
-        panels = [add_panel(figure, 40.0 + i * each, 27.0, each - 14.0, 96.0) for i in range(3)]
+        each = (width - 30.0) / 3.0
+        panels = [add_panel(figure, 40.0 + i * each, 27.0, each - 16.0, 96.0) for i in range(3)]
         unit, names = show.scale("moment"), [d.id for d in heel.devices]
         far = max((abs(p.moment) for p in points), default=0.0) or 1.0
 
@@ -73,11 +73,13 @@ def finding_plot(
         for axes in panels:
             axes.axhline(0.0, color="black", linewidth=0.6, zorder=1)
             axes.set_ylim(-limit, limit)
+        for axes in panels[1:]:  # one scale for all three
+            axes.tick_params(axis="y", labelleft=False)
         panels[0].set_title("By moment")
         panels[0].set_xlabel(f"moment to starboard [{show.unit('moment')}]")
         panels[0].set_ylabel("residual of tangent × 1000")
         _clock(panels[1], heel, when)
-        _beside(panels[2], names, each - 14.0)
+        _beside(panels[2], names, each - 16.0)
         _keys(figure, names, pattern=bool(curve))
     return figure
 
@@ -160,5 +162,5 @@ def _keys(figure: Figure, names: Sequence[str], *, pattern: bool) -> None:
         for i, name in enumerate(names)
     ]  # fmt: skip
     if pattern:
-        keys.append(Line2D([], [], color=_PATTERN, linewidth=3.0, label="what the finding makes"))
+        keys.append(Line2D([], [], color=_PATTERN, linewidth=3.0, label="as the finding has it"))
     figure.legend(handles=keys, loc="upper left", ncols=5, columnspacing=1.4)

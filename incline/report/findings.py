@@ -78,13 +78,12 @@ def _group(sheet: Sheet, number: int, group: Sequence[Finding], base: Sequence[f
     """A finding, what explains the same nearly as well, and the plot."""
     first, rivals = group[0], group[1:]
     show = sheet.show
-    also = ", the findings above taken into account" if number > 1 else ""
     score = f"{show.plain(first.score, 1)}, critical value {show.plain(first.critical, 1)}"
     pairs = (
         ("Where", place_of(first)),
         ("Size", first.size),
         ("Score", score),
-        (f"KG of lightship if so{also}", _if_so(sheet, first)),
+        ("KG of lightship if so", _if_so(sheet, first, after=number > 1)),
         ("What to do", first.advice),
     )
     flow = [
@@ -95,8 +94,11 @@ def _group(sheet: Sheet, number: int, group: Sequence[Finding], base: Sequence[f
     return [*flow, *_rivals(sheet, rivals)] if rivals else flow
 
 
-def _if_so(sheet: Sheet, finding: Finding) -> str:
-    """KG under a finding, and by how much that is higher or lower than the reported one."""
+def _if_so(sheet: Sheet, finding: Finding, *, after: bool = False) -> str:
+    """KG under a finding, and by how much that is higher or lower than the reported one.
+
+    With ``after`` those before it are also at work.
+    """
     show, now = sheet.show, sheet.reduction.outcome.lightship.vcg
     if finding.vcg_if_so is None or now.value is None:
         return "cannot be told"
@@ -104,6 +106,7 @@ def _if_so(sheet: Sheet, finding: Finding) -> str:
     way = "higher" if change > 0.0 else "lower"
     decimals = show.decimals(now.u, "length", 3)
     kg = show.full(finding.vcg_if_so, "length", decimals)
+    kg += " together with the findings above" if after else ""
     return f"{kg}, {show.full(abs(change), 'reading')} {way} than the result"
 
 

@@ -79,7 +79,12 @@ def _looks(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
 def _under(i: int, *, stressed: bool) -> list[tuple[Any, ...]]:
     """Row ``i`` joined to the one above it: no rule between them, the same shade."""
     shade = [("BACKGROUND", (0, i), (-1, i), _SHADE)] if stressed else []
-    return [("SPAN", (1, i), (-1, i)), ("TOPPADDING", (0, i), (-1, i), 0), *shade]
+    return [
+        ("SPAN", (1, i), (-1, i)),
+        ("TOPPADDING", (0, i), (-1, i), 0),
+        ("NOSPLIT", (0, i - 1), (-1, i)),
+        *shade,
+    ]
 
 
 def _rules(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
@@ -100,8 +105,17 @@ def _gaps(columns: Sequence[Column]) -> list[tuple[Any, ...]]:
     ]
 
 
-def grid(columns: Sequence[Column], rows: Iterable[Row | Sequence[str]], width: float) -> Table:
-    """A table of ``width`` points under one header row; a cell taller than a page splits."""
+def grid(
+    columns: Sequence[Column],
+    rows: Iterable[Row | Sequence[str]],
+    width: float,
+    *,
+    whole: bool = False,
+) -> Table:
+    """A table of ``width`` points under one header row; a cell taller than a page splits.
+
+    With ``whole`` no row splits, nor leaves its ``under`` row; cells must be short of a page.
+    """
     listed = [r if isinstance(r, Row) else Row(tuple(r)) for r in rows]
     head = [_cell(c.title, c.align, bold=True) for c in columns]
     total = sum(c.share for c in columns)
@@ -124,7 +138,7 @@ def grid(columns: Sequence[Column], rows: Iterable[Row | Sequence[str]], width: 
         [head, *(_row_cells(columns, r) for r in listed)],
         colWidths=[width * c.share / total for c in columns],
         repeatRows=1,
-        splitInRow=1,
+        splitInRow=0 if whole else 1,
         style=style,
         hAlign="LEFT",
         spaceBefore=3,
