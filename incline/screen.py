@@ -8,6 +8,7 @@ from functools import partial
 from typing import TYPE_CHECKING
 
 from incline.remarks import NAMES
+from incline.telling import NOTHING, TOO_FEW, groups_of, place_of, tally
 from incline.units import DENSITY, LENGTH, MASS, MOMENT, SYSTEMS, VOLUME
 
 if TYPE_CHECKING:
@@ -56,6 +57,7 @@ def show(reduction: Reduction) -> str:
         *_lightship(outcome, system),
     ]
     parts += _uncertainty(reduction, system)
+    parts += _findings(reduction, system)
     if reduction.with_excluded is not None:
         excluded = sum(1 for r in trial.readings if r.excluded)
         parts += [
@@ -225,4 +227,29 @@ def _monte_carlo(simulation: Simulation, system: UnitSystem) -> list[str]:
         low, high = (system.show(v, kind, unit, places) for v in r.symmetric)
         verdict = "agrees with first order" if r.agrees else "first order NOT validated: use this"
         lines.append(f"  {NAMES[r.key]:<14}{low:>10} to {high:>10} {unit:<4} {verdict}")
+    return lines
+
+
+def _findings(reduction: Reduction, system: UnitSystem) -> list[str]:
+    """What the residuals point to, with KG if so, and how the criteria came out."""
+    diagnosis, lines = reduction.diagnosis, ["", "What the residuals say"]
+    wrap = partial(textwrap.fill, width=80, initial_indent="  ", subsequent_indent="    ")
+    if diagnosis is None:
+        lines.append(wrap(TOO_FEW))
+    elif not diagnosis.findings:
+        lines.append(wrap(NOTHING))
+    else:
+        for group in groups_of(diagnosis):
+            for finding in group:
+                also = "or " if finding.rank else ""
+                kg = _length(system, finding.vcg_if_so)
+                lines.append(
+                    wrap(
+                        f"{also}{finding.cause} ({place_of(finding)}): {finding.size};"
+                        f" KG {kg} {system.length} if so"
+                    )
+                )
+            lines.append(wrap(f"  {group[0].advice}"))
+    if reduction.checks:
+        lines.append(wrap(f"Criteria: {tally(reduction.checks)} (incline check lists them)"))
     return lines
