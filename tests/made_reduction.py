@@ -6,6 +6,7 @@ the few closed formulas below, not from the program.
 
 from dataclasses import replace
 
+import made_judged as judged
 import made_uncertainty as unsure
 from made_trial import (
     AT,
@@ -166,12 +167,17 @@ def _outcome(trial: Trial, *, all_counted: bool = False) -> Outcome:
 
 
 def made_reduction(units: str = "metric") -> Reduction:
-    """The whole reduction: every table filled, one reading excluded, hostile text in names."""
-    trial = made_trial(units)
+    """The whole reduction: every table filled, one reading excluded, two findings, hostile text in names."""
+    plain = made_trial(units)
+    settings = replace(plain.settings, evidence=judged.EVIDENCE)
+    trial = replace(plain, settings=settings, rolls=judged.ROLLS)
     outcome = _outcome(trial)
     return Reduction(
         trial=trial,
         outcome=outcome,
+        checks=judged.CHECKS,
+        diagnosis=judged.diagnosis(outcome),
+        rolling=judged.ROLLING,
         simulation=unsure.simulation(outcome.budgets, 0.0229),
         with_excluded=_outcome(trial, all_counted=True),
         remarks=("The u-values of the instruments are engineering judgement.",),
@@ -228,6 +234,8 @@ def long_reduction() -> Reduction:
         for n in range(140)
     )  # fmt: skip
     trial = replace(full, items=items)
+    outcome = _outcome(trial)
     return Reduction(
-        trial=trial, outcome=_outcome(trial), with_excluded=None, simulation=None, remarks=()
-    )
+        trial=trial, outcome=outcome, diagnosis=judged.diagnosis(outcome, found=False),
+        with_excluded=None, simulation=None, remarks=(),
+    )  # fmt: skip

@@ -22,6 +22,7 @@ SECTIONS = (
     "From as inclined to lightship",
     "Uncertainty",
     "With the excluded readings counted",
+    "Criteria",
     "Remarks",
     "Cautions, and who decides",
     "Signatures",

@@ -28,7 +28,8 @@ def _minus(text):
 def _section(kind):
     """Text of the uncertainty section alone."""
     text = " ".join(pages(kind))
-    return re.split(r"\d+ Uncertainty ", text, maxsplit=1)[1].split("Remarks")[0]
+    whole = re.split(r"\d+ Uncertainty ", text, maxsplit=1)[1]
+    return re.split(r"\d+ (?:Criteria|Remarks) ", whole, maxsplit=1)[0]
 
 
 def _kg(units="metric"):
@@ -115,7 +116,16 @@ def test_no_more_rows_than_asked_for():
 
 
 def test_only_kg_says_what_residuals_cannot_show():
-    assert _section("metric").count("disturbances that residuals cannot show: not assessed") == 1
+    said = "disturbances that residuals cannot show:"
+    assert _section("metric").count(f"{said} counted where the trial says “not excluded”") == 1
+    assert _section("metric").count(said) == 1
+    assert _section("bare").count(f"{said} not assessed") == 1
+
+
+def test_an_interval_is_not_said_to_hold_under_a_finding():
+    said = "The residuals point to a disturbance, see “What the residuals say”."
+    assert said in _section("metric")
+    assert said not in _section("long")
 
 
 def test_every_result_has_its_budget():

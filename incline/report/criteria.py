@@ -98,9 +98,8 @@ def _rows(sheet: Sheet, check: Check) -> list[Row]:
         "FAIL" if failed else check.status,
         check.source,
     )
-    look = "stress" if failed else "plain"
     return [
-        Row(tuple(_short(c, _CELL) for c in cells), look),
+        Row(tuple(_short(c, _CELL) for c in cells), "stress" if failed else "plain"),
         Row(("", _short(_under(check), _NOTE)), "under"),
     ]
 

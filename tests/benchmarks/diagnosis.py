@@ -30,7 +30,9 @@ def main() -> None:
     ):
         print(f"  {name:<42}{rate(at, faults.clean, trials=TRIALS).found:.4f}")
     unsettled = rate(layout(), faults.unsettled, trials=TRIALS)
-    print(f"Unsettled ship, a systematic cause named (aim: at most 0.10) {unsettled.systematic:.4f}")
+    print(
+        f"Unsettled ship, a systematic cause named (aim: at most 0.10) {unsettled.systematic:.4f}"
+    )
     print(f"{'fault':<34}{'found':>8}{'aim':>6}{'named':>8}{'aim':>6}")
     for cause, fault, found, named in CASES:
         rates = rate(layout(), fault, cause, trials=TRIALS)
