@@ -105,14 +105,11 @@ def _special(unit: str, quantity: Quantity) -> float | None:
         return {"deg": math.pi / 180.0, "°": math.pi / 180.0, "rad": 1.0}.get(unit.lower())
     if quantity is FRACTION:
         return {"%": 0.01, "1": 1.0}.get(unit)
-    if quantity is TIME:
-        from scipy.constants import minute
+    if quantity in (TIME, SPEED):
+        from scipy.constants import knot, minute
 
-        return {"s": 1.0, "min": float(minute)}.get(unit.lower())
-    if quantity is SPEED:
-        from scipy.constants import knot
-
-        return {"m/s": 1.0, "kn": float(knot)}.get(unit.lower())
+        sizes = {"s": 1.0, "min": minute} if quantity is TIME else {"m/s": 1.0, "kn": knot}
+        return sizes.get(unit.lower())
     return {"c": 1.0, "°c": 1.0, "f": 1.0, "°f": 1.0}.get(unit.lower())
 
 
@@ -167,6 +164,12 @@ _FEET = re.compile(
     r"(?:(?P<join>\s*-?\s*)(?P<inches>[\d.][\d./\s\-]*?)\s*(?:in|\"))?",
     re.IGNORECASE,
 )
+_LIKE_FEET = re.compile(
+    rf"(?![+-]?\s*{_DECIMAL}\s*[a-z]*$)"
+    r"(?:.*['\"\\].*|.*\d\s*(?:ft|in)\b.*|\d+(?:\s*-\s*\d+)+)",
+    re.IGNORECASE,
+)
+_FEET_SHOWN = "feet and inches such as 8 ft 3 1/2 in or 8'-3 1/2\""
 _NOT_FINITE = frozenset({"nan", "inf", "infinity", "#n/a", "#num!", "#value!", "#div/0!", "#ref!"})
 
 
@@ -217,13 +220,13 @@ def _feet_and_inches(text: str, decimal_comma: bool) -> float | None:
         return None
     if match["inches"] and not match["feet"] and match["join"].strip():
         return None
-    feet = parse_number(match["feet"]) if match["feet"] else 0.0
-    inches = parse_number(match["inches"]) if match["inches"] else 0.0
+    try:
+        feet, inches = (parse_number(match[part] or "0") for part in ("feet", "inches"))
+    except QuantityError as error:
+        expected = _FEET_SHOWN if error.code == "number-unreadable" else error.expected
+        raise QuantityError(error.code, expected) from error
     if match["feet"] and match["inches"] and not (inches < 12.0 and feet.is_integer()):
-        raise QuantityError(
-            "number-unreadable",
-            "whole feet and inches from 0 to less than 12, such as 8 ft 3 1/2 in",
-        )
+        raise QuantityError("number-unreadable", f"whole {_FEET_SHOWN}, with inches below 12")
     value = feet * factor("ft", LENGTH) + inches * factor("in", LENGTH)
     return -value if match["sign"] == "-" else value
 
@@ -243,6 +246,8 @@ def parse_quantity(
         feet = _feet_and_inches(plain, decimal_comma)
         if feet is not None:
             return feet
+        if _LIKE_FEET.fullmatch(plain):
+            raise QuantityError("number-unreadable", _FEET_SHOWN)
     if unit is not None:
         return to_inside(parse_number(plain, decimal_comma), unit, quantity)
     match = _WITH_UNIT.fullmatch(plain)

@@ -188,6 +188,19 @@ def map_columns(text: str, pattern: str, change: Callable[[str], str]) -> str:
     return table_text(rows)
 
 
+def from_amidships() -> dict[str, str]:
+    """The small trial with every x counted from amidships, 30 m forward of the perpendicular."""
+    columns = r"(to )?x \[m\]|lc[bf] \[m\]"
+    files = {
+        name: map_columns(text, columns, lambda c: str(float(c) - 30.0))
+        if name.endswith(".csv")
+        else text.replace("after perpendicular", "amidships").replace("20 m", "-10 m")
+        for name, text in SMALL.items()
+    }
+    assert 'x_origin = "amidships"' in files["trial.toml"]
+    return files
+
+
 _STATED_KEYS = {
     'length = "4 m"': 'tolerance_length = "3 mm"\nresolution = "1 mm"',
     'kind = "inclinometer"': 'u_scale = "0.1 %"\nresolution = "0.01 deg"',

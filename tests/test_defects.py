@@ -6,6 +6,7 @@ from typing import TYPE_CHECKING
 
 import pytest
 from defect_cases import CASES, TOML, Files, Found, key, row, text, without
+from slip_cases import SLIPS
 from small_trial import SMALL, write
 
 from incline.errors import Defect, FieldDataError, Where
@@ -59,6 +60,11 @@ CODES = [
     "table-empty",
     "uncertainty-twice",
     "uncertainty-too-large",
+    "implausible",
+    "outside-vessel",
+    "draft-twice",
+    "file-separator",
+    "header-missing",
 ]
 
 
@@ -92,8 +98,37 @@ def test_each_defect_and_no_other(tmp_path: Path, files: Files, expected: list[F
         assert "\n" not in str(defect)
 
 
+@pytest.mark.parametrize(("files", "expected", "words"), SLIPS, ids=_name)
+def test_each_slip_is_told_in_words(
+    tmp_path: Path, files: Files, expected: list[Found], words: str
+) -> None:
+    test_each_defect_and_no_other(tmp_path, files, expected)
+    if expected:
+        assert any(words in str(d) for d in defects_of(tmp_path, files))
+
+
 def test_every_code_has_a_case() -> None:
-    assert {code for _, expected in CASES for code, *_ in expected} == set(CODES)
+    expected = [found for _, found, *_ in [*CASES, *SLIPS]]
+    assert {code for found in expected for code, *_ in found} == set(CODES)
+
+
+def test_the_same_fault_in_many_rows_is_told_four_times(tmp_path: Path) -> None:
+    """Nine readings in a unit that does not exist: three of them in full, then how many more."""
+    readings = SMALL["readings.csv"].replace(",mm,", ",mmm,").replace(",deg,", ",degs,")
+    defects = defects_of(tmp_path, {**SMALL, "readings.csv": readings})
+    assert places(defects) == [("unit-wrong", "readings.csv", n, "unit") for n in (2, 3, 4, 5)]
+    assert "5 more rows of this column" in defects[-1].found
+    lines = readings.split("\n")
+    few = "\n".join([*lines[:6], *SMALL["readings.csv"].split("\n")[6:]])
+    assert len(defects_of(tmp_path, {**SMALL, "readings.csv": few})) == 5
+
+
+def test_unknown_names_are_each_told(tmp_path: Path) -> None:
+    readings = SMALL["readings.csv"].replace("P1,", "P7,")
+    extra = "".join(f"{n},Q,,0,,,mm,,\n" for n in range(4))
+    defects = defects_of(tmp_path, {**SMALL, "readings.csv": readings + extra})
+    names = {d.found for d in defects if d.code == "device-unknown"}
+    assert names == {'"P7"', '"Q"'}
 
 
 def test_the_small_trial_has_no_defect(tmp_path: Path) -> None:

@@ -9,7 +9,7 @@ import re
 from typing import TYPE_CHECKING, Any
 
 import pytest
-from small_trial import SMALL, changed, map_columns, table_rows, table_text, write
+from small_trial import SMALL, changed, from_amidships, map_columns, table_rows, table_text, write
 
 from incline.errors import FieldDataError, Where
 from incline.reading import read_trial
@@ -135,14 +135,8 @@ def test_headings_in_any_case_and_order(tmp_path: Path) -> None:
 
 
 def test_x_from_amidships(tmp_path: Path) -> None:
-    def from_amidships(text: str) -> str:
-        return map_columns(text, r"(to )?x \[m\]|lc[bf] \[m\]", lambda c: str(float(c) - 30.0))
-
-    files = {n: from_amidships(t) if n.endswith(".csv") else t for n, t in SMALL.items()}
-    files["trial.toml"] = (
-        SMALL["trial.toml"].replace("after perpendicular", "amidships").replace("20 m", "-10 m")
-    )
-    found, expected = content(read(tmp_path / "a", files)), content(read(tmp_path / "b", SMALL))
+    found = content(read(tmp_path / "a", from_amidships()))
+    expected = content(read(tmp_path / "b", SMALL))
     assert found["settings"].pop("x_origin") == "amidships"
     assert expected["settings"].pop("x_origin") == "after perpendicular"
     assert found == expected  # exact: every x is a multiple of a half

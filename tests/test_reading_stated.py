@@ -12,7 +12,7 @@ import re
 from typing import TYPE_CHECKING, Any
 
 import pytest
-from small_trial import SMALL, STATED, beside, changed, map_columns, write
+from small_trial import SMALL, STATED, beside, changed, from_amidships, map_columns, write
 
 from incline.errors import FieldDataError
 from incline.reading import read_trial
@@ -154,11 +154,11 @@ def test_density(tmp_path: Path) -> None:
 
 @pytest.mark.parametrize(("unit", "written"), [("1", "0.002"), ("%", "0.2")])
 def test_relative_density(tmp_path: Path, unit: str, written: str) -> None:
-    """Of a density of 1.000 x 0.5 t/m3, 0.2 % is 0.001 t/m3."""
+    """Of a density of 1.000 x 0.96 t/m3, 0.2 % is 0.00192 t/m3."""
     table = f"place,relative density [1],u relative density [{unit}]\nfore,1,{written}\n"
-    toml = SMALL["trial.toml"] + '\n[density]\nrelative_to = "0.5 t/m3"\n'
+    toml = SMALL["trial.toml"] + '\n[density]\nrelative_to = "0.96 t/m3"\n'
     trial = read(tmp_path, {**SMALL, "density.csv": table, "trial.toml": toml})
-    assert said(trial.samples[0].stated) == {"density": normal(0.001)}
+    assert said(trial.samples[0].stated) == {"density": normal(0.00192)}
 
 
 def test_tanks(tmp_path: Path) -> None:
@@ -271,11 +271,10 @@ def test_limit_assumptions_and_correlations(tmp_path: Path) -> None:
 
 
 def test_a_percentage_is_of_the_value_as_written_from_amidships(tmp_path: Path) -> None:
-    toml = SMALL["trial.toml"].replace("after perpendicular", "amidships")
-    table = beside("changes.csv", {"u x [%]": "1 ."})
-    change = read(tmp_path, {**SMALL, "trial.toml": toml, "changes.csv": table}).changes[0]
-    assert change.centre.x == 60.0
-    assert said(change.stated) == {"x": normal(0.3)}
+    table = beside("changes.csv", {"u x [%]": "1 ."}).replace("mat,1.5,30", "mat,1.5,20")
+    change = read(tmp_path, {**from_amidships(), "changes.csv": table}).changes[0]
+    assert change.centre.x == 50.0
+    assert said(change.stated) == {"x": normal(0.2)}
 
 
 def test_the_same_statements_in_us_units(tmp_path: Path) -> None:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, TypeVar
 
@@ -15,7 +16,7 @@ from incline.units import (
 )
 
 if TYPE_CHECKING:
-    from collections.abc import Sequence
+    from collections.abc import Mapping, Sequence
 
     from incline.reading.collect import Collector
     from incline.reading.csvtable import RawTable
@@ -70,8 +71,22 @@ class Row:
         return Where(self.sheet.file, self.number, column)
 
     def fault(self, column: str, code: str, found: str, expected: str, hint: str = "") -> None:
-        """Collect a defect of this row."""
+        """Collect a defect of this row; none of one whose cells are known to be out of place."""
+        if self.number in self.sheet.shifted and code != "cells-too-many":
+            return
         self.sheet.collector.add(self.where(column), code, found, expected, hint)
+
+    @property
+    def whole(self) -> bool:
+        """Whether every cell stands under its own heading."""
+        return self.number not in self.sheet.broken and self.number not in self.sheet.shifted
+
+    def written(self, column: str) -> tuple[str, str]:
+        """A cell and the unit it is in; without one for feet and inches, or after a defect."""
+        text = self.raw(column)
+        placed = self.sheet.placed.get(column)
+        feet = re.search(r"['\"’′‘”″“]|ft|in", text, re.IGNORECASE)
+        return text, "" if feet or placed is None else placed.unit or ""
 
     def raw(self, column: str) -> str:
         """The text of a cell; empty when blank or when there is no such column."""
@@ -90,13 +105,20 @@ class Row:
         return found
 
     def choice(
-        self, column: str, allowed: Sequence[_Word], blank: _Word | None = None
+        self,
+        column: str,
+        allowed: Sequence[_Word],
+        blank: _Word | None = None,
+        also: Mapping[str, _Word] | None = None,
     ) -> _Word | None:
-        """One of the words allowed, whatever its case; None after a defect."""
+        """One of the words allowed, or another word for it in ``also``; None after a defect.
+
+        Case does not matter; the words of ``also`` are in lower case.
+        """
         found = self.text(column)
-        for word in allowed:
-            if found.casefold() == word.casefold():
-                return word
+        words = {word.casefold(): word for word in allowed} | dict(also or {})
+        if found.casefold() in words:
+            return words[found.casefold()]
         if not found and blank is not None:
             return blank
         expected = " or ".join(allowed)
@@ -109,7 +131,7 @@ class Row:
 
     def missing(self, column: str, expected: str, hint: str = "") -> None:
         """Collect that a cell is blank, unless its column or the rest of its row is known lost."""
-        if column not in self.sheet.absent and self.number not in self.sheet.broken:
+        if column not in self.sheet.absent and self.whole:
             self.fault(column, "cell-missing", NOTHING, expected, hint)
 
     def maybe(self, column: str) -> float | None:
@@ -135,7 +157,7 @@ class Row:
         try:
             return parse(text, quantity, unit, self.sheet.decimal_comma)
         except QuantityError as error:
-            self.sheet.collector.add_unreadable(self.where(column), text, error)
+            self.fault(column, error.code, quoted(text), error.expected, error.hint)
             return BAD
 
     def need(self, column: str) -> float:
@@ -151,7 +173,8 @@ class Sheet:
     """A table whose header has been understood.
 
     ``placed`` are the columns found, ``absent`` the required ones that were not (their cells give
-    no further defects), ``broken`` the rows cut short by a stray quotation mark.
+    no further defects), ``broken`` the rows cut short by a stray quotation mark,
+    ``shifted`` those whose cells a decimal comma has put out of place.
     """
 
     def __init__(self, raw: RawTable, collector: Collector) -> None:
@@ -162,6 +185,7 @@ class Sheet:
         self.placed: dict[str, Placed] = {}
         self.absent: set[str] = set()
         self.broken = raw.broken
+        self.shifted: set[int] = set()
         self.rows: tuple[Row, ...] = tuple(Row(self, n, cells) for n, cells in raw.rows)
 
     def has(self, column: str) -> bool:

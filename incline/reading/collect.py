@@ -4,16 +4,17 @@ from __future__ import annotations
 
 import difflib
 import math
+from dataclasses import replace
 from typing import TYPE_CHECKING
 
-from incline.errors import Defect, Where
+from incline.errors import Defect
 
 if TYPE_CHECKING:
     from collections.abc import Iterable
 
-    from incline.units import QuantityError
+    from incline.errors import Where
 
-__all__ = ["BAD", "NOTHING", "Collector", "Sign", "nearest", "quoted", "sign_defect"]
+__all__ = ["BAD", "NOTHING", "Collector", "Sign", "folded", "nearest", "quoted", "sign_defect"]
 
 BAD = math.nan
 """Stands for a number that could not be read, once its defect has been collected.
@@ -24,6 +25,8 @@ false, so checks must be written to find fault only where a comparison is true.
 
 NOTHING = "nothing"
 _CUT = 60
+_MANY = 5
+_TOLD = 3
 
 
 def quoted(text: str) -> str:
@@ -49,10 +52,6 @@ class Collector:
         """Keep one defect."""
         self.defects.append(Defect(where, code, found, expected, hint))
 
-    def add_unreadable(self, where: Where, found: str, error: QuantityError) -> None:
-        """Keep the defect of a quantity that could not be read."""
-        self.add(where, error.code, quoted(found), error.expected, error.hint)
-
 
 class Sign:
     """Which values a quantity may have."""
@@ -69,3 +68,25 @@ def sign_defect(value: float, sign: str) -> tuple[str, str] | None:
     if sign == Sign.NOT_NEGATIVE and value < 0.0:
         return "number-negative", "zero or a number above zero"
     return None
+
+
+def folded(defects: Iterable[Defect]) -> list[Defect]:
+    """The defects with those of more than five rows of one column told by the first three.
+
+    One more, at the fourth row, says how many there are. What is not known is told name by name.
+    """
+    groups: dict[tuple[str, str, str, str], list[Defect]] = {}
+    for defect in sorted(set(defects)):
+        where = defect.where
+        name = defect.found if defect.code.endswith("-unknown") else ""
+        groups.setdefault((where.file, where.column, defect.code, name), []).append(defect)
+    kept: list[Defect] = []
+    for group in groups.values():
+        rest = group[_TOLD:]
+        if len({d.where.row for d in group}) <= _MANY:
+            kept.extend(group)
+            continue
+        column = " of this column" if rest[0].where.column else ""
+        found = f"the same in {len(rest)} more rows{column}"
+        kept += [*group[:_TOLD], replace(rest[0], found=found)]
+    return kept

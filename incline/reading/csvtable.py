@@ -17,7 +17,7 @@ __all__ = ["RawTable", "decode", "read_table"]
 _LINE_END = re.compile(r"\r\n|\r|\n")
 _BYTE_LINE_END = re.compile(rb"\r\n|\r|\n")
 _QUOTED = re.compile(r'"((?:[^"]|"")*+)"[ \t]*')
-_SAVE_AS = 'save the file as "CSV UTF-8"'
+_OTHER_MARKS = (("\t", "tabs"), ("|", "vertical bars"))
 
 
 @dataclass(frozen=True, slots=True)
@@ -35,11 +35,13 @@ class RawTable:
     broken: frozenset[int]
 
 
-def decode(file: str, data: bytes, collector: Collector) -> str | None:
+def decode(
+    file: str, data: bytes, collector: Collector, remedy: str = 'save the file as "CSV UTF-8"'
+) -> str | None:
     """UTF-8 text with or without a byte order mark; None and a defect for anything else."""
     expected = "text in UTF-8"
     if data[:2] in (b"\xff\xfe", b"\xfe\xff"):
-        collector.add(Where(file, 1), "file-encoding", "UTF-16 text", expected, _SAVE_AS)
+        collector.add(Where(file, 1), "file-encoding", "UTF-16 text", expected, remedy)
         return None
     data = data.removeprefix(b"\xef\xbb\xbf")
     place = data.find(b"\0")
@@ -51,7 +53,7 @@ def decode(file: str, data: bytes, collector: Collector) -> str | None:
         return text
     row = 1 + len(_BYTE_LINE_END.findall(data[:place]))
     found = f"the byte 0x{data[place]:02X}"
-    collector.add(Where(file, row), "file-encoding", found, expected, _SAVE_AS)
+    collector.add(Where(file, row), "file-encoding", found, expected, remedy)
     return None
 
 
@@ -64,14 +66,15 @@ def read_table(file: str, data: bytes, collector: Collector) -> RawTable | None:
     text = decode(file, data, collector)
     if text is None:
         return None
-    lines = enumerate(_LINE_END.split(text), start=1)
+    lines = enumerate(_without_strays(file, _LINE_END.split(text), collector), start=1)
     header_row, line = next(((n, s) for n, s in lines if not _is_blank(s)), (0, ""))
     where = Where(file, header_row)
     mark = ";" if ";" in line else ","
     header, whole = _split(line, mark, where, collector)
-    if mark not in line and "\t" in line:
+    other = next((name for odd, name in _OTHER_MARKS if odd in line), "")
+    if mark not in line and other:
         expected = "commas or semicolons between columns"
-        collector.add(where, "file-unreadable", "tabs between columns", expected)
+        collector.add(where, "file-unreadable", f"{other} between columns", expected)
         return None
     if not header_row or not whole:
         return None
@@ -87,6 +90,21 @@ def read_table(file: str, data: bytes, collector: Collector) -> RawTable | None:
         if any(cells) or not whole:
             rows.append((number, cells))
     return RawTable(file, header_row, header, tuple(rows), mark == ";", frozenset(broken))
+
+
+def _without_strays(file: str, lines: list[str], collector: Collector) -> list[str]:
+    """The lines of a table with commas, freed of semicolons that end the header or most rows."""
+    filled = [(n, s.rstrip(" \t")) for n, s in enumerate(lines, start=1) if not _is_blank(s)]
+    header = filled[0][1].rstrip(";, \t") if filled else ""
+    ending = [n for n, s in filled if s.endswith(";")]
+    if "," not in header or ";" in header or not ending:
+        return lines
+    if ending[0] != filled[0][0] and 2 * len(ending) <= len(filled) - 1:
+        return lines
+    found = "stray semicolons at the ends of the lines"
+    expected = "nothing after the last cell, where commas stand between columns"
+    collector.add(Where(file, ending[0]), "file-separator", found, expected)
+    return [s if _is_blank(s) else s.rstrip("; \t") for s in lines]
 
 
 def _is_blank(line: str) -> bool:

@@ -9,7 +9,7 @@ from pathlib import Path
 from typing import TYPE_CHECKING, TypeVar
 
 from incline.errors import Defect, FieldDataError, Where
-from incline.reading.collect import Collector, quoted
+from incline.reading.collect import Collector, folded, quoted
 from incline.reading.csvtable import read_table
 from incline.reading.headings import open_sheet
 from incline.reading.hydrostatics import TABLE_COLUMNS, read_hydrostatics
@@ -17,9 +17,11 @@ from incline.reading.ledger import (
     CHANGE_COLUMNS,
     ITEM_COLUMNS,
     check_names,
+    check_no_test_weights,
     read_changes,
     read_items,
 )
+from incline.reading.oddities import shift_remarks, weight_remarks
 from incline.reading.readings import check_devices, check_shifts, read_readings, reading_columns
 from incline.reading.rolls import ROLL_COLUMNS, read_rolls
 from incline.reading.settings import read_head
@@ -65,6 +67,19 @@ _COLUMNS: dict[str, tuple[Column, ...]] = {
 }
 _FILES = ("trial.toml", *_COLUMNS)
 _OPTIONAL = frozenset({"weights.csv", "tanks.csv", "ledger.csv", "changes.csv", "rolls.csv"})
+_ROWS = {
+    "weights.csv": "test weights",
+    "shifts.csv": "shifts",
+    "readings.csv": "readings",
+    "drafts.csv": "draft readings",
+    "density.csv": "water samples",
+    "hydrostatics.csv": "hydrostatics",
+}
+"""What stands in the rows of the tables that must have some."""
+_ABSENT = {
+    "tanks.csv": "No tanks.csv: no liquid is deducted and no free surface is taken.",
+    "ledger.csv": "No ledger.csv: no item is deducted, added or relocated.",
+}
 _EXPECTED = "a file that a trial must have"
 _Record = TypeVar("_Record")
 
@@ -84,7 +99,7 @@ def read_trial(folder: str | os.PathLike[str]) -> Trial:
     remarks = _strangers(path, files, collector)
     trial = _Reader(files, collector).trial(str(path), remarks)
     if collector.defects:
-        raise FieldDataError(collector.defects)
+        raise FieldDataError(folded(collector.defects))
     return trial
 
 
@@ -152,21 +167,28 @@ class _Reader:
         before = len(self.collector.defects)
         raw = read_table(name, data, self.collector)
         unhurt = len(self.collector.defects) == before
-        if (raw is None or not raw.rows) and unhurt and name not in _OPTIONAL:
-            self._empty(name)
-        if raw is None:
-            return None
-        return open_sheet(raw, _COLUMNS[name] or reading_columns(raw), self.collector)
+        sheet = None
+        if raw is not None:
+            sheet = open_sheet(raw, _COLUMNS[name] or reading_columns(raw), self.collector)
+        empty = sheet is not None and not sheet.rows
+        if (empty or raw is None) and unhurt and name not in _OPTIONAL:
+            self._empty(name, header=empty)
+        return sheet
 
-    def _empty(self, name: str) -> None:
-        self.collector.add(Where(name), "table-empty", "no rows", "a header and rows below it")
+    def _empty(self, name: str, *, header: bool) -> None:
+        found = "a header and no rows" if header else "no rows"
+        below = f"a row of {_ROWS[name]} below the header"
+        expected = below if header else f"a header and {below}"
+        self.collector.add(Where(name), "table-empty", found, expected)
 
     def trial(self, folder: str, remarks: list[str]) -> Trial:
         """Read everything; of no use once a defect has been collected."""
         head, frame = self.head, self.head.frame
         weights, shifts, by_moment = self._weights()
         drafts, assumed = self._drafts()
-        tanks, partial = self._tanks()
+        samples, warm = self._pairs("density.csv", read_samples)
+        tanks, partial = self._pairs("tanks.csv", read_tanks)
+        table, rough = read_hydrostatics(self.sheets["hydrostatics.csv"], frame)
         return Trial(
             folder=folder,
             digest=_digest(self.files),
@@ -179,15 +201,23 @@ class _Reader:
             shifts=tuple(shifts.shifts),
             readings=self._readings(shifts),
             drafts=drafts,
-            samples=self._rows("density.csv", read_samples),
+            samples=samples,
             tanks=tanks,
             items=self._items(weights, tanks),
             changes=self._rows("changes.csv", read_changes),
-            table=read_hydrostatics(self.sheets["hydrostatics.csv"], frame),
+            table=table,
             rolls=self._rolls(),
             environment=head.environment,
             hydrometer=head.hydrometer,
-            remarks=(*remarks, *by_moment, *assumed, *partial),
+            remarks=(
+                *remarks,
+                *by_moment,
+                *assumed,
+                *warm,
+                *partial,
+                *rough,
+                *(said for name, said in _ABSENT.items() if name not in self.files),
+            ),
         )
 
     def _rows(
@@ -196,8 +226,15 @@ class _Reader:
         sheet = self.sheets[name]
         return read(sheet, self.head.frame) if sheet else ()
 
+    def _pairs(
+        self, name: str, read: Callable[[Sheet, Frame], tuple[tuple[_Record, ...], list[str]]]
+    ) -> tuple[tuple[_Record, ...], list[str]]:
+        """Records with remarks on them."""
+        sheet = self.sheets[name]
+        return read(sheet, self.head.frame) if sheet else ((), [])
+
     def _weights(self) -> tuple[tuple[Weight, ...], ShiftTable, list[str]]:
-        """Test weights and shifts, and a remark when moments were recorded instead of moves."""
+        """Test weights and shifts, and remarks, as when moments were recorded instead of moves."""
         weights = self._rows("weights.csv", read_weights)
         sheet = self.sheets["shifts.csv"]
         if sheet is None:
@@ -208,7 +245,7 @@ class _Reader:
                 found = "no such file"
                 self.collector.add(Where("weights.csv"), "file-missing", found, _EXPECTED)
             elif self.sheets["weights.csv"] or not self._hurt("weights.csv"):
-                self._empty("weights.csv")
+                self._empty("weights.csv", header=self.sheets["weights.csv"] is not None)
         if table.whole and (table.by_moment or sheet.has("weight")):
             if weights:
                 check_moves(sheet, weights, table.shifts)
@@ -217,7 +254,12 @@ class _Reader:
             "The moments of the test weights were recorded as such: no test weight comes into the"
             " ledger by itself."
         )
-        return weights, table, [remark] if table.by_moment else []
+        of_weights = self.sheets["weights.csv"]
+        return weights, table, [
+            *([remark] if table.by_moment else []),
+            *(weight_remarks(of_weights, weights) if of_weights else []),
+            *shift_remarks(weights, table.shifts),
+        ]  # fmt: skip
 
     def _hurt(self, name: str) -> bool:
         return any(d.where.file == name for d in self.collector.defects)
@@ -245,10 +287,6 @@ class _Reader:
         sheet = self.sheets["rolls.csv"]
         return read_rolls(sheet, self.head.settings.roll_condition) if sheet else ()
 
-    def _tanks(self) -> tuple[tuple[Tank, ...], list[str]]:
-        sheet = self.sheets["tanks.csv"]
-        return read_tanks(sheet, self.head.frame) if sheet else ((), [])
-
     def _items(self, weights: Sequence[Weight], tanks: Sequence[Tank]) -> tuple[Item, ...]:
         sheet = self.sheets["ledger.csv"]
         if sheet is None:
@@ -261,4 +299,5 @@ class _Reader:
             **dict.fromkeys(people, "a person aboard"),
         }
         check_names(sheet, items, others)
+        check_no_test_weights(sheet, items, weights)
         return items

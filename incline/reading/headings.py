@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import itertools
 import re
 from dataclasses import replace
 from typing import TYPE_CHECKING
@@ -20,17 +21,25 @@ if TYPE_CHECKING:
 
 __all__ = ["open_sheet"]
 
+_NO_HEADER = "the first row does not look like a header; commas or semicolons stand between cells"
 _HEADING = re.compile(r"([^\[\]]*)(?:\[([^\[\]]*)\])?")
 
 
-def open_sheet(raw: RawTable, columns: Iterable[Column], collector: Collector) -> Sheet:
+def open_sheet(raw: RawTable, columns: Iterable[Column], collector: Collector) -> Sheet | None:
     """Match a header against the columns known; every table may have a ``note`` column too.
+
+    None when most of the first row is no heading at all: it is told once.
 
     A column that is not required and blank in every row counts as not there.
     """
     sheet = Sheet(raw, collector)
     named = (*columns, Column("note"))
     known = {c.name: c for c in (*named, *uncertainty_columns(named))}
+    strange = [h for h in raw.header if h and not _resembles(h, known)]
+    if 2 * len(strange) > sum(map(bool, raw.header)):
+        found, expected = f"{quoted(strange[0])} in the first row", f"a header: {_required(known)}"
+        sheet.fault("", "header-missing", found, expected, _NO_HEADER)
+        return None
     for index, heading in enumerate(raw.header):
         _place(sheet, index, heading, known)
     for name, column in known.items():
@@ -42,6 +51,19 @@ def open_sheet(raw: RawTable, columns: Iterable[Column], collector: Collector) -
     for row in sheet.rows:
         _check_width(row, len(raw.header))
     return sheet
+
+
+def _resembles(heading: str, known: Mapping[str, Column]) -> bool:
+    """Whether a cell of the first row could be meant as one of the headings."""
+    name = " ".join(re.split(r"[\[(]", heading)[0].split()).casefold()
+    if heading.count("[") > 1:  # a whole header with other marks between its headings
+        return False
+    return name in known or (name[:1].isalpha() and nearest(name, known) != "")
+
+
+def _required(known: Mapping[str, Column]) -> str:
+    """The headings of a table, its uncertainties left out."""
+    return ", ".join(name for name, column in known.items() if column.of is None)
 
 
 def _is_blank(sheet: Sheet, column: str) -> bool:
@@ -68,8 +90,25 @@ def _check_width(row: Row, width: int) -> None:
         "cells-too-many",
         quoted((";" if comma else ",").join(row.cells[width:])),
         f"no more than {width} cells, as in the header of row {row.sheet.header_row}",
-        "" if comma else "where commas stand between columns, decimals have a point",
+        "" if comma else _split_number(row, width),
     )
+
+
+def _split_number(row: Row, width: int) -> str:
+    """A hint at decimals behind a comma, where that comma stands between columns too."""
+    plain = "where commas stand between columns, decimals have a point"
+    numeric = {p.index for p in row.sheet.placed.values() if p.column.quantity or p.column.loose}
+    pairs = [
+        f"{a}.{b}"
+        for i, (a, b) in enumerate(itertools.pairwise(row.cells))
+        if i in numeric and re.fullmatch(r"[+-]?[0-9]+", a) and re.fullmatch(r"[0-9]+", b)
+    ]
+    if len(row.cells) != width + 1 or not pairs:
+        return plain
+    row.sheet.shifted.add(row.number)
+    which = "the" if len(pairs) == 1 else "a"
+    such = "write" if len(pairs) == 1 else "write, for example,"
+    return f"a decimal comma splits {which} number: {such} {pairs[0]}; decimals have a point"
 
 
 def _place(sheet: Sheet, index: int, heading: str, known: Mapping[str, Column]) -> None:
@@ -83,6 +122,10 @@ def _place(sheet: Sheet, index: int, heading: str, known: Mapping[str, Column]) 
             )
         return
     if match is None or name not in known:
+        base, _, unit = (part.strip() for part in name.partition("("))
+        if base in known and unit:
+            _place_in_round_brackets(sheet, index, heading, known[base])
+            return
         hint = nearest(re.split(r"[\[(]", name)[0].strip(), known)
         if not hint and ("(" in heading or match is None):
             hint = "a heading is a name and a unit in square brackets, such as mass [t]"
@@ -97,6 +140,18 @@ def _place(sheet: Sheet, index: int, heading: str, known: Mapping[str, Column]) 
     if column.of and unit == PERCENT:
         column = replace(column, quantity=FRACTION)
     sheet.placed[name] = Placed(column, index, _checked_unit(sheet, column, heading, unit))
+
+
+def _place_in_round_brackets(sheet: Sheet, index: int, heading: str, column: Column) -> None:
+    """Tell of ``mass (t)`` and go on as if ``mass [t]`` stood there."""
+    unit = heading.partition("(")[2].partition(")")[0].strip()
+    hint = f"write the unit in square brackets: {column.name} [{unit}]"
+    expected = f"{column.name} and its unit in square brackets"
+    found = quoted(heading)
+    sheet.fault(quoted_name(heading.casefold()), "column-unknown", found, expected, hint)
+    if not sheet.has(column.name):
+        known = _checked_unit(sheet, column, heading, unit)
+        sheet.placed[column.name] = Placed(column, index, known)
 
 
 def _one_of(known: Mapping[str, Column]) -> str:

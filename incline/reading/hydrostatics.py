@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING
 from incline.errors import Where
 from incline.reading.cells import Column
 from incline.reading.collect import BAD, NOTHING, Sign, quoted
+from incline.reading.smoothness import Figure, Station, smoothness_remarks
 from incline.record import HydrostaticTable
 from incline.units import AREA, LENGTH, MASS, MASS_PER_LENGTH, MOMENT_PER_LENGTH, VOLUME
 
@@ -75,10 +76,13 @@ _NO_TABLE = HydrostaticTable(
 )  # fmt: skip
 
 
-def read_hydrostatics(sheet: Sheet | None, frame: Frame) -> HydrostaticTable:
-    """The table; of no use once a defect has been collected, as when there is no sheet."""
+def read_hydrostatics(sheet: Sheet | None, frame: Frame) -> tuple[HydrostaticTable, list[str]]:
+    """The table, and remarks on figures that look like slips.
+
+    Of no use once a defect has been collected, as when there is no sheet.
+    """
     if sheet is None:
-        return _NO_TABLE
+        return _NO_TABLE, []
     choice = _Choice(
         sheet.one_of(("volume", "displacement"), required=True),
         sheet.one_of(("km", "bm"), required=True),
@@ -95,7 +99,7 @@ def read_hydrostatics(sheet: Sheet | None, frame: Frame) -> HydrostaticTable:
     def grid(name: str) -> tuple[tuple[float, ...], ...]:
         return tuple(tuple(float(getattr(e, name)) for e in group) for group in groups)
 
-    return HydrostaticTable(
+    table = HydrostaticTable(
         drafts=tuple(e.draft for e in groups[0]) if groups else (),
         trims=tuple(group[0].trim for group in groups),
         volume=grid("volume"),
@@ -108,6 +112,33 @@ def read_hydrostatics(sheet: Sheet | None, frame: Frame) -> HydrostaticTable:
         bml_basis=_BASIS.get(choice.bml or "", ""),
         where=Where(sheet.file),
         stated=frame.table_stated,
+    )
+    return table, _remarks(groups, choice, density, frame)
+
+
+def _remarks(
+    groups: list[list[_Entry]], choice: _Choice, density: float, frame: Frame
+) -> list[str]:
+    if choice.volume is None or choice.km is None:
+        return []
+    size = density if choice.volume == "displacement" else 1.0
+    above = choice.km == "km"
+    stations = [
+        [
+            Station(
+                row=e.row, draft=e.draft, volume=e.volume, lcb=e.lcb, km=e.kb + e.bmt, area=e.area
+            )
+            for e in group
+        ]
+        for group in groups
+    ]
+    kb = {e.row.number: e.kb for group in groups for e in group}
+    return smoothness_remarks(
+        stations,
+        Figure(choice.volume, lambda _, v: v * size),
+        Figure(choice.km, lambda s, v: v if above else v - kb[s.row.number]),
+        Figure("lcb", lambda _, v: v - frame.x_shift),
+        frame.lpp,
     )
 
 
@@ -135,15 +166,19 @@ def _entry(row: Row, choice: _Choice, density: float, frame: Frame) -> _Entry:
         bml -= kb
     elif choice.bml == "mct":
         bml *= frame.lpp / (volume * density)
+    lcb = row.need("lcb") + frame.x_shift
+    lcf = row.need("lcf") + frame.x_shift if row.sheet.has("lcf") else BAD
+    frame.hull.centre(row, "lcb", lcb)
+    frame.hull.centre(row, "lcf", lcf)
     return _Entry(
         row=row,
         draft=row.need("draft") - frame.table_down,
         trim=row.need("trim") if row.sheet.has("trim") else 0.0,
         volume=volume,
-        lcb=row.need("lcb") + frame.x_shift,
+        lcb=lcb,
         kb=kb,
         bmt=_above_keel(row, choice.km, kb),
-        lcf=row.need("lcf") + frame.x_shift if row.sheet.has("lcf") else BAD,
+        lcf=lcf,
         area=area / density if choice.area == "tpc" else area,
         bml=_positive(row, choice.bml, bml),
     )

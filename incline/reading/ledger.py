@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from typing import TYPE_CHECKING, Literal
 
 from incline.errors import Where
@@ -16,8 +17,16 @@ if TYPE_CHECKING:
 
     from incline.reading.cells import Row, Sheet
     from incline.reading.settings import Frame
+    from incline.record import Weight
 
-__all__ = ["CHANGE_COLUMNS", "ITEM_COLUMNS", "check_names", "read_changes", "read_items"]
+__all__ = [
+    "CHANGE_COLUMNS",
+    "ITEM_COLUMNS",
+    "check_names",
+    "check_no_test_weights",
+    "read_changes",
+    "read_items",
+]
 
 _CENTRE = (
     Column("mass", MASS, required=True, sign=Sign.POSITIVE, stated=True),
@@ -36,6 +45,7 @@ ITEM_COLUMNS = (
 )
 CHANGE_COLUMNS = (Column("change", required=True), Column("item", required=True), *_CENTRE)
 _TO = ("to x", "to y", "to z")
+_TEST_WEIGHTS = re.compile(r"\btest[\s-]*weights?\b", re.IGNORECASE)
 
 
 def read_items(sheet: Sheet, frame: Frame) -> tuple[Item, ...]:
@@ -71,7 +81,9 @@ def _check_once(row: Row, name: str, key: str, seen: dict[str, int]) -> None:
 
 def _centre(row: Row, columns: tuple[str, str, str], frame: Frame) -> Point:
     x, y, z = (row.need(c) for c in columns)
-    return Point(x + frame.x_shift, y, z)
+    centre = Point(x + frame.x_shift, y, z)
+    frame.hull.place(row, centre, columns)
+    return centre
 
 
 def _destination(row: Row, action: str | None, frame: Frame) -> Point | None:
@@ -105,6 +117,25 @@ def read_changes(sheet: Sheet, frame: Frame) -> tuple[Change, ...]:
             )
         )
     return tuple(changes)
+
+
+def check_no_test_weights(sheet: Sheet, items: Iterable[Item], weights: Iterable[Weight]) -> None:
+    """An item to deduct that is the test weights by its name: they would come off twice."""
+    ids = [w.id for w in weights if w.id]
+    every = [re.compile(rf"(?<!\w){re.escape(name)}(?!\w)", re.IGNORECASE) for name in ids]
+    taken = {name.casefold() for name in ids}
+    for item in items:
+        named = _TEST_WEIGHTS.search(item.name) is not None
+        listed = len(every) > 1 and all(e.search(item.name) for e in every)
+        if item.action == "deduct" and item.name.casefold() not in taken and (named or listed):
+            sheet.collector.add(
+                Where(sheet.file, item.where.row, "item"),
+                "item-listed-twice",
+                quoted(item.name),
+                "no test weights among the items",
+                "the test weights of weights.csv come off by themselves; another thing needs"
+                " another name",
+            )
 
 
 def check_names(sheet: Sheet, items: Iterable[Item], others: Mapping[str, str]) -> None:

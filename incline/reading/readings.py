@@ -8,9 +8,9 @@ from dataclasses import dataclass
 from typing import TYPE_CHECKING, Literal
 
 from incline.errors import Where
+from incline.reading.aboard import LENGTH_KEYS
 from incline.reading.cells import Column
 from incline.reading.collect import nearest, quoted
-from incline.reading.settings import LENGTH_KEYS
 from incline.reading.tomlfile import FILE
 from incline.reading.weights import shift_number
 from incline.record import Reading

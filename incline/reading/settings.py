@@ -6,15 +6,17 @@ from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
 from incline.errors import Where
+from incline.reading.aboard import read_device, read_person
 from incline.reading.assumptions import read_assumed, read_correlations
 from incline.reading.collect import BAD, Sign, quoted
 from incline.reading.occasion import read_environment, read_hydrometer, read_occasion
 from incline.reading.overrides import read_overrides
+from incline.reading.plausible import WATER, Hull, check, check_vessel, hull_of
 from incline.reading.rolls import read_condition
 from incline.reading.tomlfile import FILE, Document, shown
-from incline.reading.uncertainty import of_key
-from incline.record import Device, Environment, Occasion, Person, Point, Settings, Stated, Vessel
-from incline.units import ANGLE, DENSITY, FRACTION, LENGTH, MASS
+from incline.reading.uncertainty import of_key, present
+from incline.record import Device, Environment, Occasion, Person, Settings, Stated, Vessel
+from incline.units import DENSITY, FRACTION, LENGTH
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -24,7 +26,7 @@ if TYPE_CHECKING:
     from incline.reading.tomlfile import Section
     from incline.record import Statements
 
-__all__ = ["LENGTH_KEYS", "Frame", "Head", "read_head"]
+__all__ = ["Frame", "Head", "read_head"]
 
 _BASE, _KEEL = "baseline", "underside of keel"
 _SECTIONS = (
@@ -32,21 +34,21 @@ _SECTIONS = (
     "devices", "people", "limits", "uncertainty", "correlations", "rolling", "evidence",
     "environment", "instruments", "overrides",
 )  # fmt: skip
-LENGTH_KEYS = {"pendulum": "length", "u-tube": "span", "inclinometer": ""}
-"""The key that gives the length by which a device's readings are divided."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Frame:
     """What the tables need from ``trial.toml``; BAD where it could not be read.
 
-    ``x_shift`` [m] is added to every x. ``marks_down`` and ``table_down`` [m] are taken off drafts
-    read at the marks and drafts of the hydrostatic table. ``table_density`` and ``relative_to``
-    [t/m3] are None when not given. ``table_stated`` are the table's uncertainties.
+    ``hull`` is what positions are checked against. ``x_shift`` [m] is added to every x.
+    ``marks_down`` and ``table_down`` [m] are taken off drafts read at the marks and drafts of the
+    hydrostatic table. ``table_density`` and ``relative_to`` [t/m3] are None when not given.
+    ``table_stated`` are the table's uncertainties.
     """
 
     lpp: float
     beam: float
+    hull: Hull
     x_shift: float
     marks_down: float
     table_down: float
@@ -73,13 +75,13 @@ class Head:
 def read_head(data: bytes | None, collector: Collector) -> Head:
     """Read ``trial.toml``; ``None`` when there is no such file, which is the caller's defect."""
     document = Document(data, collector)
-    vessel = _vessel(document.section("vessel"))
-    settings, frame = _choices(document, vessel)
-    devices = tuple(_device(s) for s in document.sections("devices"))
+    vessel, sound = _vessel(document.section("vessel"))
+    settings, frame = _choices(document, vessel, sound=sound)
+    devices = tuple(read_device(s) for s in document.sections("devices"))
     if document.readable and not document.has("devices"):
         where, expected = Where(FILE, 0, "devices"), "a section [[devices]] for each device"
         collector.add(where, "key-missing", "no devices", expected)
-    people = tuple(_person(s, frame.x_shift) for s in document.sections("people"))
+    people = tuple(read_person(s, frame.hull) for s in document.sections("people"))
     _check_ids([d.id for d in devices], "devices", "id", collector)
     _check_ids([p.name for p in people], "people", "name", collector)
     head = Head(
@@ -107,7 +109,8 @@ def _check_ids(names: Sequence[str], section: str, key: str, collector: Collecto
             collector.add(where, "id-twice", quoted(names[n - 1]), expected)
 
 
-def _vessel(section: Section) -> Vessel:
+def _vessel(section: Section) -> tuple[Vessel, bool]:
+    """The vessel, and whether a ship can have its dimensions."""
     vessel = Vessel(
         name=section.text("name", required=True),
         number=section.text("number", required=True),
@@ -119,10 +122,10 @@ def _vessel(section: Section) -> Vessel:
         builder=section.text("builder"),
     )
     section.close()
-    return vessel
+    return vessel, check_vessel(section, vessel)
 
 
-def _choices(document: Document, vessel: Vessel) -> tuple[Settings, Frame]:
+def _choices(document: Document, vessel: Vessel, *, sound: bool) -> tuple[Settings, Frame]:
     axes, output = document.section("axes"), document.section("output")
     rules, method = document.section("rules"), document.section("method")
     drafts, table = document.section("drafts"), document.section("hydrostatics")
@@ -149,10 +152,13 @@ def _choices(document: Document, vessel: Vessel) -> tuple[Settings, Frame]:
         overrides=read_overrides(document.sections("overrides")),
         evidence={key: evidence.text(key) for key in ("liquids", "lines", "weather", "drift")},
     )
+    lpp = vessel.lpp if sound else BAD
+    x_shift = lpp / 2.0 if x_origin == "amidships" else 0.0
     frame = Frame(
-        lpp=vessel.lpp,
+        lpp=lpp,
         beam=vessel.beam,
-        x_shift=vessel.lpp / 2.0 if x_origin == "amidships" else 0.0,
+        hull=hull_of(vessel, BAD if "x_origin" in axes.failed else x_shift, known=sound),
+        x_shift=x_shift,
         marks_down=settings.keel_thickness,
         table_down=keel if table_from == _KEEL else 0.0,
         table_density=_given(table, "density"),
@@ -166,21 +172,17 @@ def _choices(document: Document, vessel: Vessel) -> tuple[Settings, Frame]:
 
 def _table_stated(section: Section) -> dict[str, Stated]:
     """Uncertainties of the hydrostatic table: volume as a fraction, KM and LCB [m]."""
-    return _present(
+    return present(
         volume=of_key(section, "volume", FRACTION, 1.0, Sign.POSITIVE),
         km=of_key(section, "km", LENGTH, BAD, share=False),
         lcb=of_key(section, "lcb", LENGTH, BAD, share=False),
     )
 
 
-def _present(**stated: Stated | None) -> dict[str, Stated]:
-    return {key: s for key, s in stated.items() if s is not None}
-
-
 def _given(section: Section, key: str) -> float | None:
     """A density; BAD also when its section cannot be looked at."""
     value = section.maybe(key, DENSITY, Sign.POSITIVE)
-    return value if section.readable else BAD
+    return value if section.readable and check(section, key, value, WATER) else BAD
 
 
 def _keel_thickness(section: Section, *, needed: bool) -> float:
@@ -209,67 +211,3 @@ def _allowance(section: Section) -> float | None:
         )
         section.fault("allowance", "value-wrong", found, expected)
     return None
-
-
-def _device(section: Section) -> Device:
-    kind: Literal["pendulum", "u-tube", "inclinometer"] = section.choice(
-        "kind", ("pendulum", "u-tube", "inclinometer")
-    )
-    known = "kind" not in section.failed
-    keys = [k for k in ((LENGTH_KEYS[kind],) if known else LENGTH_KEYS.values()) if k]
-    lengths = [section.maybe(k, LENGTH, Sign.POSITIVE) for k in keys]
-    stated = [
-        of_key(section, k, LENGTH, value, Sign.POSITIVE)
-        for k, value in zip(keys, lengths, strict=True)
-    ]
-    device = Device(
-        id=section.text("id", required=True),
-        kind=kind,
-        length=lengths[0] if lengths else None,
-        place=section.text("place"),
-        calibration=section.text("calibration"),
-        where=Where(FILE, 0, section.path),
-        resolution=_resolution(section, kind, known=known),
-        stated=_present(
-            length=stated[0] if stated else None,
-            scale=_scale(section) if kind == "inclinometer" or not known else None,
-        ),
-    )
-    section.close()
-    return device
-
-
-def _resolution(section: Section, kind: str, *, known: bool) -> float | None:
-    """The step of a device's readings: a length [m], or an angle [rad]."""
-    if not known:
-        section.value("resolution")  # a key that is known, though not what it should hold
-        return None
-    quantity = ANGLE if kind == "inclinometer" else LENGTH
-    return section.maybe("resolution", quantity, Sign.POSITIVE)
-
-
-def _scale(section: Section) -> Stated | None:
-    """The uncertainty of an inclinometer's scale, a fraction."""
-    return of_key(section, "scale", FRACTION, 1.0, Sign.POSITIVE)
-
-
-def _person(section: Section, x_shift: float) -> Person:
-    name = section.text("name", required=True)
-    role = section.text("role", required=True)
-    aboard = [k for k in ("mass", "x", "y", "z") if section.value(k) is not None]
-    mass = x = y = z = centre = None
-    if aboard:
-        mass = section.need("mass", MASS, Sign.POSITIVE)
-        x = section.need("x", LENGTH)
-        y = section.need("y", LENGTH, transverse=True)
-        z = section.need("z", LENGTH)
-        centre = Point(x + x_shift, y, z)
-    stated = _present(
-        mass=of_key(section, "mass", MASS, mass, Sign.POSITIVE),
-        x=of_key(section, "x", LENGTH, x),
-        y=of_key(section, "y", LENGTH, y),
-        z=of_key(section, "z", LENGTH, z),
-    )
-    section.close()
-    where = Where(FILE, 0, section.path)
-    return Person(name=name, role=role, mass=mass, centre=centre, where=where, stated=stated)

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Literal
 
 from incline.reading.cells import Column
 from incline.reading.collect import BAD, Sign, quoted
+from incline.reading.plausible import LIQUID, check
 from incline.reading.uncertainty import PERCENT, combined, of_row, written
 from incline.record import Point, Stated, Tank
 from incline.units import DENSITY, LENGTH, MASS, MOMENT, SECOND_MOMENT, VOLUME, to_inside
@@ -130,6 +131,8 @@ def _liquid(row: Row, state: _State | None, frame: Frame) -> tuple[float, Point 
                 _contradiction(row, column, quoted(row.raw(column)), "nothing in an empty tank")
         return 0.0, None
     centre = Point(row.need("x") + frame.x_shift, row.need("y"), row.need("z"))
+    frame.hull.place(row, centre)
+    check(row, "density", row.maybe("density"), LIQUID)
     amounts = _masses(row)
     if not amounts:
         return BAD, centre
@@ -201,6 +204,7 @@ def _free_surface(row: Row, state: _State | None) -> tuple[float, str]:
     """Free-surface moment [t m] and how it was found; zero unless the tank is slack."""
     fsm = row.maybe("fsm")
     if state != "slack":
+        _check_no_surface(row, state)
         if state == "pressed full" and fsm is not None and fsm > 0.0:
             expected = "no free surface in a tank that is pressed full"
             _contradiction(row, "fsm", quoted(row.raw("fsm")), expected)
@@ -223,6 +227,16 @@ def _free_surface(row: Row, state: _State | None) -> tuple[float, str]:
     else:
         found += [(how, (row.maybe("density") or BAD) * inertia) for how, inertia in inertias]
     return _agreed(row, found)
+
+
+def _check_no_surface(row: Row, state: _State | None) -> None:
+    """Only a slack tank has a surface; of a box length and breadth give the volume too."""
+    names = ["second moment"] if row.raw("shape") else ["second moment", "length", "breadth"]
+    said = [c for c in names if row.raw(c)]
+    if state is None or said in (["length"], ["breadth"]) or not said:
+        return
+    expected = f"no surface of the liquid in a tank that is {state}, or state slack"
+    _contradiction(row, said[0], quoted(row.raw(said[0])), expected)
 
 
 def _agreed(row: Row, found: list[tuple[str, float]]) -> tuple[float, str]:

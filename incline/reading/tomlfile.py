@@ -4,12 +4,12 @@ from __future__ import annotations
 
 import math
 import re
-import tomllib
 from typing import TYPE_CHECKING, TypeVar
 
 from incline.errors import Where
 from incline.reading.collect import BAD, NOTHING, Sign, nearest, quoted, sign_defect
 from incline.reading.csvtable import decode
+from incline.reading.tomlwords import parse, syntax_error
 from incline.units import QuantityError, parse_quantity, parse_transverse
 
 if TYPE_CHECKING:
@@ -48,7 +48,7 @@ class Section:
     ) -> None:
         self.file = file
         self.path = path
-        self.readable = values is not None
+        self.readable = self.whole = values is not None
         self.collector = collector
         self._values = values or {}
         self._asked: dict[str, None] = {}
@@ -71,6 +71,12 @@ class Section:
             self.fault(key, "value-wrong", '""', expected)
         else:
             self.fault(key, "key-missing", "no such key", expected)
+
+    def written(self, key: str) -> tuple[str, str]:
+        """A quantity as it stands in the file, and its unit; without one for feet and inches."""
+        text = shown(self.value(key))
+        match = re.fullmatch(r"[^A-Za-z'\"]*([A-Za-z][A-Za-z0-9/]*)(\s*[PSps])?\s*", text)
+        return text, match[1] if match else ""
 
     def value(self, key: str) -> object:
         """The value as TOML gives it; None when absent or an empty text."""
@@ -180,19 +186,16 @@ class Document:
             self._parse(data)
 
     def _parse(self, data: bytes) -> None:
-        text = decode(self.file, data, self.collector)
+        text = decode(self.file, data, self.collector, "save the file as UTF-8 text")
         if text is None:
             return
         text = re.sub(r"\r\n?", "\n", text)
         try:
-            self._tables = tomllib.loads(text)
+            self._tables = parse(text)
         except (ValueError, RecursionError) as error:
-            at = re.search(r"\s*\(at (?:line (\d+)|end).*", str(error))
-            lines = text.split("\n")
-            row = int(at[1]) if at and at[1] else len(lines)
-            reason = str(error)[: at.start()] if at else "simple values"
-            found = quoted(lines[row - 1].strip()) if lines[row - 1].strip() else NOTHING
-            self.collector.add(Where(self.file, row), "toml-syntax", found, f"TOML: {reason}")
+            row, line, expected, hint = syntax_error(text, error)
+            found = quoted(line) if line else NOTHING
+            self.collector.add(Where(self.file, row), "toml-syntax", found, expected, hint)
             return
         self.readable = True
 

@@ -25,7 +25,7 @@ if TYPE_CHECKING:
     from incline.reading.tomlfile import Section
     from incline.units import Quantity
 
-__all__ = ["PERCENT", "combined", "of_key", "of_row", "uncertainty_columns", "written"]
+__all__ = ["PERCENT", "combined", "of_key", "of_row", "present", "uncertainty_columns", "written"]
 
 PERCENT = "%"
 _FORMS: Mapping[str, tuple[float, Literal["normal", "rectangular"]]] = {
@@ -156,3 +156,8 @@ def combined(parts: Iterable[Stated]) -> Stated | None:
     if len(some) < 2:
         return some[0] if some else None
     return Stated(math.hypot(*(p.u for p in some)), "normal")
+
+
+def present(**stated: Stated | None) -> dict[str, Stated]:
+    """The uncertainties that there are."""
+    return {key: s for key, s in stated.items() if s is not None}

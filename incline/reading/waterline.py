@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING
 from incline.errors import Where
 from incline.reading.cells import Column
 from incline.reading.collect import BAD, NOTHING, Sign, quoted
+from incline.reading.plausible import WATER, check, temperature_remark
 from incline.reading.uncertainty import combined, of_row, written
 from incline.record import DraftReading, Sample
 from incline.units import DENSITY, FRACTION, LENGTH, TEMPERATURE
@@ -46,6 +47,12 @@ _HALF_STATED = (
     "{} of {} draft readings state an uncertainty of only one of the freeboard and the height of"
     " its point: the other counts as exact."
 )
+_NONE_AFT = (
+    "x counts from amidships and no draft mark stands abaft it: check x_origin in trial.toml."
+)
+_SIDES: dict[str, Side] = {
+    "port": "P", "starboard": "S", "stbd": "S", "centre": "C", "center": "C", "cl": "C",
+}  # fmt: skip
 _APART = 0.01
 """Marks closer than this share of the length stand at one place."""
 
@@ -56,9 +63,14 @@ def read_drafts(sheet: Sheet, frame: Frame) -> tuple[tuple[DraftReading, ...], l
         sheet.lack("draft", "a column draft or freeboard")
     readings: list[DraftReading] = []
     assumed = 0
+    seen: dict[tuple[str, ...], int] = {}
     sides: tuple[Side, ...] = ("P", "S", "C")
     for row in sheet.rows:
-        side = row.choice("side", sides)
+        _check_once(row, seen)
+        side = row.choice("side", sides, also=_SIDES)
+        x = row.need("x") + frame.x_shift
+        frame.hull.x(row, "x", x)
+        frame.hull.y(row, "y", row.maybe("y"))
         y = _off_centre(row, side)
         if y is None:
             assumed += 1
@@ -66,7 +78,7 @@ def read_drafts(sheet: Sheet, frame: Frame) -> tuple[tuple[DraftReading, ...], l
         draft, freeboard = _draft(row, frame)
         readings.append(
             DraftReading(
-                x=row.need("x") + frame.x_shift,
+                x=x,
                 side=side or "C",
                 y=y,
                 draft=draft,
@@ -79,7 +91,19 @@ def read_drafts(sheet: Sheet, frame: Frame) -> tuple[tuple[DraftReading, ...], l
     half = sum(_is_half_stated(row) for row in sheet.rows)
     if half:
         remarks.append(_HALF_STATED.format(half, len(readings)))
+    if frame.x_shift > 0.0 and all(d.x >= frame.x_shift for d in readings):
+        remarks.append(_NONE_AFT)
     return tuple(readings), remarks
+
+
+def _check_once(row: Row, seen: dict[tuple[str, ...], int]) -> None:
+    """The same row again is a copy; a mark read again shows another draft, or has a note on it."""
+    cells = tuple(" ".join(c.casefold().split()) for c in row.cells)
+    before = seen.setdefault(cells, row.number)
+    if before != row.number and any(cells) and row.whole:
+        found, expected = f"all of row {before} again", "each reading once"
+        hint = "for a second reading that agrees with the first, say so in a column note"
+        row.fault("", "draft-twice", found, expected, hint)
 
 
 def _is_half_stated(row: Row) -> bool:
@@ -132,6 +156,7 @@ def _draft(row: Row, frame: Frame) -> tuple[float, float | None]:
             column = "draft" if row.sheet.has("draft") else "freeboard"
             row.missing(column, "a draft or a freeboard")
             return BAD, None
+        frame.hull.draft(row, "draft", draft)
         found = draft - frame.marks_down
         if found <= 0.0:
             expected = "a draft greater than the thickness of the keel"
@@ -146,6 +171,8 @@ def _draft(row: Row, frame: Frame) -> tuple[float, float | None]:
     if height - freeboard <= 0.0:
         expected = "a freeboard less than the height of its point"
         row.fault("freeboard", "number-not-positive", quoted(row.raw("freeboard")), expected)
+    frame.hull.z(row, "point height", height)
+    frame.hull.draft(row, "freeboard", max(0.0, height - freeboard))
     return height - freeboard, freeboard
 
 
@@ -158,8 +185,11 @@ def check_drafts(sheet: Sheet, drafts: Sequence[DraftReading], frame: Frame) -> 
         sheet.collector.add(Where(sheet.file), "drafts-too-few", found, expected)
 
 
-def read_samples(sheet: Sheet, frame: Frame) -> tuple[Sample, ...]:
-    """Water samples; a relative density is multiplied by the density it is relative to."""
+def read_samples(sheet: Sheet, frame: Frame) -> tuple[tuple[Sample, ...], list[str]]:
+    """Water samples, and remarks on their temperatures.
+
+    A relative density is multiplied by the density it is relative to.
+    """
     column = sheet.one_of(("density", "relative density"), required=True)
     relative_to = 1.0
     if column == "relative density":
@@ -173,20 +203,25 @@ def read_samples(sheet: Sheet, frame: Frame) -> tuple[Sample, ...]:
                 " relative densities",
             )
     samples: list[Sample] = []
+    remarks: list[str] = []
     for row in sheet.rows:
         share = row.maybe("share")
+        density = row.need(column) * relative_to if column else BAD
+        check(row, column or "density", density, WATER)
+        place, temperature = row.text("place", required=True), row.maybe("temperature")
+        remarks += temperature_remark(place, temperature)
         samples.append(
             Sample(
-                place=row.text("place", required=True),
+                place=place,
                 depth=row.maybe("depth"),
-                density=row.need(column) * relative_to if column else BAD,
-                temperature=row.maybe("temperature"),
+                density=density,
+                temperature=temperature,
                 share=1.0 if share is None else share,
                 where=row.where(),
                 stated=_density_stated(row, relative_to),
             )
         )
-    return tuple(samples)
+    return tuple(samples), remarks
 
 
 def _density_stated(row: Row, relative_to: float) -> dict[str, Stated]:

@@ -53,12 +53,15 @@ def read_weights(sheet: Sheet, frame: Frame) -> tuple[Weight, ...]:
     seen: dict[str, int] = {}
     kinds: tuple[Literal["solid", "liquid"], ...] = ("solid", "liquid")
     for row in sheet.rows:
+        x, z = row.need("x") + frame.x_shift, row.need("z")
+        frame.hull.x(row, "x", x)
+        frame.hull.z(row, "z", z)
         weight = Weight(
             id=row.text("id", required=True),
             mass=row.need("mass"),
             certificate=row.text("certificate"),
-            x=row.need("x") + frame.x_shift,
-            z=row.need("z"),
+            x=x,
+            z=z,
             where=row.where(),
             kind=row.choice("kind", kinds, "solid") or "solid",
             stated=of_row(row, "mass", "x", "z"),
@@ -175,13 +178,18 @@ def _moves(rows: list[Row], frame: Frame) -> tuple[Move, ...]:
         if any(m.weight == name for m in moves):
             expected = f"one place for each weight at shift {row.text('shift')}"
             row.fault("weight", "weight-in-two-places", quoted(name), expected)
-        x = row.maybe("x")
+        x, y, z = row.maybe("x"), row.need("y"), row.maybe("z")
+        if x is not None:
+            x += frame.x_shift
+            frame.hull.x(row, "x", x)
+        frame.hull.y(row, "y", y)
+        frame.hull.z(row, "z", z)
         moves.append(
             Move(
                 weight=name,
-                y=row.need("y"),
-                x=None if x is None else x + frame.x_shift,
-                z=row.maybe("z"),
+                y=y,
+                x=x,
+                z=z,
                 where=row.where(),
                 stated=of_row(row, "y", "x", "z"),
             )
