@@ -329,3 +329,14 @@ def test_shown_values_have_no_negative_zero() -> None:
     assert us.show(-0.0001, LENGTH, us.length, 2) == "0.00"
     assert us.show(-FOOT, LENGTH, us.length, 2) == "-1.00"
     assert us.show(1.0160469088, MASS, us.mass, 3) == "1.000"
+
+
+@pytest.mark.parametrize("unit", ["m", None])
+@pytest.mark.parametrize(
+    "text",
+    ["7' 0 3/8", "6-8-4", r"6 ft 4 7\8 in", "7' 0 3/ in", "6 ft. 4 in", "6 4 ft", "7 ft 12 in"],
+)
+def test_slips_in_feet_and_inches_are_shown_how_to_write_them(text: str, unit: str | None) -> None:
+    with pytest.raises(QuantityError, match="8 ft 3 1/2 in or 8'-3 1/2\"") as caught:
+        parse_quantity(text, LENGTH, unit)
+    assert caught.value.code == "number-unreadable"

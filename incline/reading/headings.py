@@ -122,8 +122,8 @@ def _place(sheet: Sheet, index: int, heading: str, known: Mapping[str, Column]) 
             )
         return
     if match is None or name not in known:
-        base, _, unit = (part.strip() for part in name.partition("("))
-        if base in known and unit:
+        base, _, rest = (part.strip() for part in name.partition("("))
+        if base in known and rest:
             _place_in_round_brackets(sheet, index, heading, known[base])
             return
         hint = nearest(re.split(r"[\[(]", name)[0].strip(), known)

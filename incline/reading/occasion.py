@@ -46,13 +46,13 @@ def _date(section: Section, key: str) -> datetime.date | None:
     found = section.value(key)
     if found is None or type(found) is datetime.date:  # one with a time of day is a subclass
         return found
-    text = found.strip() if isinstance(found, str) else ""
+    text, expected = found.strip() if isinstance(found, str) else "", _DATE
     try:
         if re.fullmatch(r"[0-9]{4}-[0-9]{2}-[0-9]{2}", text):
             return datetime.date.fromisoformat(text)
     except ValueError:  # such as the 30th of February
-        pass
-    section.fault(key, "value-wrong", quoted(shown(found)), _DATE)
+        expected = "a day of the calendar: there is no such day"
+    section.fault(key, "value-wrong", quoted(shown(found)), expected)
     return None
 
 

@@ -96,9 +96,8 @@ def _off_curve(
     left = list(range(len(group)))
     found: list[tuple[Station, float]] = []
     while len(left) >= _LEAST and len(found) < len(group) // 4:
-        ratios = [
-            d / least[i] for i, d in zip(left[1:-1], _distances(x, values, left), strict=True)
-        ]
+        apart = zip(left[1:-1], _distances(x, values, left), strict=True)
+        ratios = [d / least[i] if least[i] > 0.0 else 0.0 for i, d in apart]
         worst = sorted(range(len(ratios)), key=ratios.__getitem__, reverse=True)
         suspects = (_culprit(x, values, left, k + 1) for k in worst if ratios[k] > 1.0)
         at = next((k for k in suspects if k is not None), None)
