@@ -1,6 +1,6 @@
 """Sensitivities of the chain against exact derivatives of the same physics written again.
 
-The reference is a plain transcription of the formulas with the closed form of the wall-sided demo
+The reference writes the formulas out again, plainly, with the closed form of the wall-sided demo
 hull in place of its table, differentiated by the complex step (Squire and Trapp, SIAM Review 40(1),
 1998).
 """
