@@ -202,8 +202,9 @@ def _uncertainty(reduction: Reduction, system: UnitSystem) -> list[str]:
     assumed = sum(line.share for line in kg.lines if line.basis.startswith("assumed"))
     share = f"{100.0 * assumed:.0f} % of its variance is assumed"
     lines = ["", f"What the uncertainty of KG comes from ({share})"]
+    fold = partial(textwrap.fill, width=80, initial_indent="  ", subsequent_indent=" " * 12)
     lines += [
-        f"  {100.0 * line.share:5.1f} %  {line.name} ({line.basis.partition(':')[0]})"
+        fold(f"{100.0 * line.share:5.1f} %  {line.name} ({line.basis.partition(':')[0]})")
         for line in kg.lines[:_SHOWN]
     ]
     rest = kg.lines[_SHOWN:]

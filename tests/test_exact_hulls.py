@@ -6,6 +6,7 @@ import numpy as np
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
+from scipy.integrate import simpson
 from textbook import HERE, single_shift, trial
 
 from incline import reduce
@@ -62,6 +63,21 @@ def test_b12_box_of_150_by_24():
     least = int(np.argmin(b.z + b.bmt))
     assert drafts[least] == pytest.approx(4.08, abs=0.005)
     assert (b.z + b.bmt)[least] == pytest.approx(4.08, abs=0.005)
+
+
+def test_b13_waterplane_by_simpsons_rule_sets_the_entry_draft():
+    # Barrass & Derrett, 5th ed., p. 262 (read): half-ordinates from forward at 3 m: area 51.6 m2,
+    # centre of flotation 9.767 m from forward. Simpson's rule by scipy; the centre then decides at
+    # which draft the table of a trimmed ship is entered.
+    half = np.array([0.0, 1.2, 1.5, 1.8, 1.8, 1.5, 1.2])
+    x = 18.0 - 3.0 * np.arange(7)  # forward of the after end
+    area = -2.0 * simpson(half, x=x)
+    lcf = -2.0 * simpson(half * x, x=x) / area
+    assert area == pytest.approx(51.6, abs=0.05)
+    assert 18.0 - lcf == pytest.approx(9.767, abs=0.0005)
+    table = box_table(length=18.0, beam=area / 18.0, lcf=((lcf,) * 5,))
+    found = at(Curves(table, 18.0, "cubic"), 2.5, 0.3 / 18.0)
+    assert found.entry == pytest.approx(2.65 - 0.3 / 18.0 * (18.0 - 9.767), abs=1e-5)
 
 
 def test_least_km_of_a_box():
