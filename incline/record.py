@@ -14,9 +14,10 @@ from typing import Literal
 from incline.errors import Where
 
 __all__ = [
-    "Change", "Correlation", "Device", "DraftReading", "Environment", "HydrostaticTable", "Item",
-    "Move", "Occasion", "Override", "Person", "Point", "Reading", "RollCondition", "RollingRun",
-    "Sample", "Settings", "Shift", "Stated", "Statements", "Tank", "Trial", "Vessel", "Weight",
+    "Body", "Change", "Correlation", "Device", "DraftReading", "Environment", "HydrostaticTable",
+    "Item", "Method", "Move", "Occasion", "OffsetPoint", "Offsets", "Override", "Person", "Point",
+    "Reading", "RollCondition", "RollingRun", "Sample", "Settings", "Shift", "Stated", "Statements",
+    "Station", "Tank", "Trial", "Vessel", "Weight",
 ]  # fmt: skip
 
 
@@ -230,7 +231,8 @@ class Tank:
     """A tank: liquid mass [t], centre, and free-surface moment [t m] (zero unless slack).
 
     ``level`` of the liquid and ``depth`` of the tank are above its bottom; ``length`` and
-    ``breadth`` are those of the free surface [m]. ``type`` is empty when not recorded.
+    ``breadth`` are those of the free surface [m]. ``type`` is empty when not recorded. ``box`` says
+    that the tank is a box of that length, breadth and depth.
     """
 
     name: str
@@ -248,6 +250,7 @@ class Tank:
     length: float | None = None
     breadth: float | None = None
     type: Literal["", "deep", "double bottom"] = ""
+    box: bool = False
     stated: Statements = field(default_factory=dict)
 
 
@@ -314,12 +317,72 @@ class HydrostaticTable:
     stated: Statements = field(default_factory=dict)
 
 
+@dataclass(frozen=True, slots=True)
+class OffsetPoint:
+    """A point of a station: half-breadth ``y`` from the body's centreplane, height ``z`` [m].
+
+    Points with the same ``line`` name at all stations of a body lie on one line along the hull,
+    such as a chine or the deck edge; empty for others.
+    """
+
+    y: float
+    z: float
+    line: str = ""
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Station:
+    """A transverse section at ``x`` [m]: points of each side from the keel to the deck edge.
+
+    Both sides start at one point of the body's centreplane. The two are the same tuple where they
+    are alike. Straight lines join the points.
+    """
+
+    name: str
+    x: float
+    starboard: tuple[OffsetPoint, ...]
+    port: tuple[OffsetPoint, ...]
+    where: Where
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Body:
+    """One closed body of the hull; stations ascend in x.
+
+    Two stations at one x end one smooth run of lines and begin the next. ``y`` [m] is where the
+    body's centreplane lies; ``mirrored`` adds its mirror image on the other side of the ship. An
+    ``appendage`` may lie wholly under water, a ``hull`` must keep its deck edge dry.
+    """
+
+    name: str
+    kind: Literal["hull", "appendage"] = "hull"
+    y: float = 0.0
+    mirrored: bool = False
+    stations: tuple[Station, ...]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Offsets:
+    """The hull's shape. ``allowance`` as in `Settings`, for the volume integrated from it."""
+
+    bodies: tuple[Body, ...]
+    allowance: float | None
+    stated: Statements = field(default_factory=dict)
+
+
+Method = Literal["straight-line", "wall-sided", "heeled-hull"]
+"""How the curve of righting levers is taken: a line, with the wall-sided term, or integrated."""
+
+
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Settings:
     """Choices of the trial: axes, output units, rule set, method, and how drafts and tables count.
 
-    ``allowance`` multiplies a moulded volume by (1 + allowance) for shell and appendages; None
-    means the table is extreme. ``keel_thickness`` [m] is taken off drafts whose marks start at the
+    ``method`` None leaves the choice to the program: heeled-hull where the hull's offsets are used.
+    ``use`` says which hydrostatics count where a trial has both offsets and a table; ``layers``
+    whether the water is taken as layers by the depths of the samples instead of mixed.
+    ``allowance`` multiplies a table's moulded volume by (1 + allowance) for shell and appendages;
+    None means the table is extreme. ``keel_thickness`` [m] is taken off drafts whose marks start at the
     underside of keel. ``kg_limit`` [m] is a KG not to be exceeded; ``evidence``
     says what speaks against disturbances that residuals may hide; ``assumed`` replaces the
     program's default uncertainties by name (see `incline.defaults`), ``overrides`` limits of
@@ -329,10 +392,12 @@ class Settings:
     x_origin: Literal["after perpendicular", "amidships"]
     units: Literal["metric", "us"]
     rule_set: str
-    method: Literal["straight-line"]
+    method: Method | None
     allowance: float | None
     keel_thickness: float
     interpolation: Literal["cubic", "linear"]
+    use: Literal["offsets", "table"] = "offsets"
+    layers: bool = False
     kg_limit: float | None = None
     evidence: Mapping[str, str] = field(default_factory=dict)
     assumed: Mapping[str, float] = field(default_factory=dict)
@@ -345,7 +410,8 @@ class Settings:
 class Trial:
     """One inclining test as recorded. ``digest`` is the sha256 over its files.
 
-    ``hydrometer`` is the range of relative density that the hydrometer covers.
+    ``hydrometer`` is the range of relative density that the hydrometer covers. At least one of
+    ``table`` and ``offsets`` is there.
     """
 
     folder: str
@@ -363,7 +429,8 @@ class Trial:
     tanks: tuple[Tank, ...]
     items: tuple[Item, ...]
     changes: tuple[Change, ...]
-    table: HydrostaticTable
+    table: HydrostaticTable | None
+    offsets: Offsets | None = None
     rolls: tuple[RollingRun, ...] = ()
     environment: Environment = field(default_factory=Environment)
     hydrometer: tuple[float, float] | None = None
