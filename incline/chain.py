@@ -6,21 +6,25 @@ with a few draws it gives sensitivities, with many it is a Monte Carlo.
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
+
+from incline.buoyancy import Condition
 
 if TYPE_CHECKING:
     import numpy as np
     from numpy.typing import NDArray
 
+    from incline.buoyancy import Afloat, Buoyancy
     from incline.flotation import WaterlineFit
-    from incline.hydrostatics import Buoyancy, Curves
+    from incline.levers import Lever
+    from incline.liquids import Liquids
     from incline.moments import Placing
     from incline.regression import SlopeForm
 
     Floats = NDArray[np.float64]
 
-__all__ = ["Condition", "Inputs", "Plan", "Yield", "run"]
+__all__ = ["Heeling", "Inputs", "Plan", "Yield", "run"]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
@@ -66,15 +70,20 @@ class Inputs:
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
 class Plan:
-    """What does not vary between draws: structure of the trial and its table.
+    """What does not vary between draws: structure of the trial and its table or hull.
 
     ``line`` holds the readings that count. ``sign`` (N) is -1 for deductions, +1 for additions, 0
-    for relocations, ``moved`` (N) is 1 for relocations. ``allowance`` is the share added to the
-    tabulated volume; ``tells_lcg`` whether the table says where B is at the trim read.
+    for relocations, ``moved`` (N) is 1 for relocations. ``afloat`` carries the ship of the draft
+    readings and ``afloat_later`` that of the shifts. ``lever`` is None for the straight-line
+    method; ``liquids`` counts only with a lever. ``allowance`` is the share added to the volume;
+    ``tells_lcg`` whether the hydrostatics say where B is at the trim read.
     """
 
     waterline: WaterlineFit
-    curves: Curves
+    afloat: Afloat
+    afloat_later: Afloat
+    lever: Lever | None
+    liquids: Liquids
     placing: Placing
     line: SlopeForm
     sign: Floats
@@ -84,15 +93,23 @@ class Plan:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
-class Condition:
-    """The floating ship during the shifts. ``mean`` and ``tau`` as in `Curves.buoyancy`."""
+class Heeling:
+    """What the readings say: slope [1/(t m)] and the line it belongs to, one value a shift.
 
-    mean: Floats
-    tau: Floats
-    deflection: Floats | None
-    list_tan: Floats | None
-    buoyancy: Buoyancy
-    displacement: Floats
+    ``moments`` [t m] are the test weights' heeling moments, vertical travel counted; ``regressor``
+    [t m] what the line runs through and ``bend`` how far each shift's heel lies off that line on
+    the curve of the method: for the straight line ``moments`` and zero. ``heel`` are fitted
+    tangents from the upright, ``stiffness`` [t m] is displacement x GM with the liquids held,
+    ``restoring`` [m] the slope of the righting lever at each heel.
+    """
+
+    slope: Floats
+    stiffness: Floats
+    moments: Floats
+    regressor: Floats
+    bend: Floats
+    heel: Floats
+    restoring: Floats
 
 
 @dataclass(frozen=True, slots=True, kw_only=True, eq=False)
@@ -100,14 +117,14 @@ class Yield:
     """Results of the chain [m, t, t m]; lcg and tcg are None where they cannot be found.
 
     ``as_read`` is the ship of the draft readings, ``condition`` that of the shifts. ``transverse``
-    and ``vertical`` are moments by shift, ``moments`` what the line was fitted to.
+    and ``vertical`` are moments by shift.
     """
 
     as_read: Condition
     condition: Condition
     transverse: Floats
     vertical: Floats
-    moments: Floats
+    heeling: Heeling
     slope: Floats
     gm_fluid: Floats
     fsm: Floats
@@ -125,32 +142,27 @@ def run(plan: Plan, given: Inputs) -> Yield:
     """One pass: waterline, displacement, slope, GM, KG, LCG, TCG, ledger."""
     import numpy as np
 
-    as_read = _condition_as_read(plan, given)
+    as_read = now = _condition_as_read(plan, given)
     fsm = given.fsm.sum(axis=-1)
     transverse, vertical = _moments(plan, given)
-    slope, moments = _slope(plan, given, transverse, vertical, as_read.list_tan)
-    slope = slope + given.slope_shift
-    stiffness = 1.0 / slope + fsm  # D GM of the ship with its liquids held
-    now = as_read
+    heeling = _heeling(plan, given, transverse, vertical, now)
     if given.changes.shape[-1]:
-        now = _after_changes(plan, given, as_read, stiffness, fsm)
-        if np.any(vertical):  # the heel of the shifts counts, not that of the drafts
-            slope, moments = _slope(plan, given, transverse, vertical, now.list_tan)
-            slope = slope + given.slope_shift
-            stiffness = 1.0 / slope + fsm
-            now = _after_changes(plan, given, as_read, stiffness, fsm)
-    b, displacement = now.buoyancy, now.displacement
-    km = b.z + b.bmt + given.km_shift
-    vcg = km - stiffness / displacement
+        now = _after_changes(plan, given, as_read, heeling.stiffness)
+        if plan.lever is not None or vertical.any():  # the ship of the shifts counts
+            heeling = _heeling(plan, given, transverse, vertical, now)
+            now = _after_changes(plan, given, as_read, heeling.stiffness)
+    b, displacement, slope = now.buoyancy, now.displacement, heeling.slope
+    km = b.kb + b.bmt + given.km_shift
+    vcg = km - heeling.stiffness / displacement
     lcg = b.x + given.lcb_shift + now.tau * (vcg - b.z) if plan.tells_lcg else None
-    tcg = None if now.list_tan is None else now.list_tan / (slope * displacement)
+    tcg = None if now.list_tan is None else _tcg(plan, given, now, vcg)
     light, centres = _ledger(plan, given, displacement, (lcg, tcg, vcg))
     return Yield(
         as_read=as_read,
         condition=now,
         transverse=transverse,
         vertical=vertical,
-        moments=moments,
+        heeling=heeling,
         slope=slope,
         gm_fluid=1.0 / (slope * displacement),
         fsm=fsm,
@@ -169,12 +181,13 @@ def _condition_as_read(plan: Plan, given: Inputs) -> Condition:
     found = given.drafts @ plan.waterline.solve.T
     mean, tau = found[..., 0], found[..., 1]
     deflection = found[..., 2] if plan.waterline.has_deflection else None
-    buoyancy = plan.curves.buoyancy(mean, tau, deflection)
+    list_tan = found[..., 3] if plan.waterline.has_list else None
+    buoyancy = plan.afloat.buoyancy(mean, tau, deflection, list_tan)
     return Condition(
         mean=mean,
         tau=tau,
         deflection=deflection,
-        list_tan=found[..., 3] if plan.waterline.has_list else None,
+        list_tan=list_tan,
         buoyancy=buoyancy,
         displacement=_mass_of(plan, given, buoyancy),
     )
@@ -196,53 +209,163 @@ def _moments(plan: Plan, given: Inputs) -> tuple[Floats, Floats]:
     )
 
 
-def _slope(
-    plan: Plan, given: Inputs, transverse: Floats, vertical: Floats, list_tan: Floats | None
-) -> tuple[Floats, Floats]:
-    """Common slope, and the moments by shift that it belongs to.
+def _heeling(
+    plan: Plan, given: Inputs, transverse: Floats, vertical: Floats, ship: Condition
+) -> Heeling:
+    """The slope by the plan's method, its uncertainty's shift added."""
+    line = _straight(plan, given, transverse, vertical, ship)
+    if plan.lever is None:
+        return line
+    return _curved(plan, given, transverse, vertical, ship, line)
+
+
+def _straight(
+    plan: Plan, given: Inputs, transverse: Floats, vertical: Floats, ship: Condition
+) -> Heeling:
+    """The common straight line.
 
     A weight that also rises by h adds w h tan(heel) to its moment, so the moment is corrected with
     the heel that the first fit gives.
     """
-    import numpy as np
-
     slope = plan.line.slope(transverse, given.lengths)
-    if not np.any(vertical):
-        return slope, transverse
-    upright = np.zeros_like(slope) if list_tan is None else list_tan
     moments = transverse
-    for _ in range(2):
-        heel = upright[..., None] + slope[..., None] * moments
-        moments = transverse + vertical * heel
-        slope = plan.line.slope(moments, given.lengths)
-    return slope, moments
+    if vertical.any():
+        for _ in range(2):
+            heel = ship.start[..., None] + slope[..., None] * moments
+            moments = transverse + vertical * heel
+            slope = plan.line.slope(moments, given.lengths)
+    slope = slope + given.slope_shift
+    heel = ship.start[..., None] + slope[..., None] * moments
+    return Heeling(
+        slope=slope,
+        stiffness=1.0 / slope + given.fsm.sum(axis=-1),
+        moments=moments,
+        regressor=moments,
+        bend=0.0 * moments,
+        heel=heel,
+        restoring=0.0 * moments + 1.0 / (slope * ship.displacement)[..., None],
+    )
 
 
-def _after_changes(
-    plan: Plan, given: Inputs, before: Condition, stiffness: Floats, fsm: Floats
-) -> Condition:
+_ROUNDS = 6
+"""Gauss-Newton rounds for KG, each with one Newton step for the heels; the curve is so nearly
+straight that each round gains about three digits."""
+
+
+def _curved(
+    plan: Plan,
+    given: Inputs,
+    transverse: Floats,
+    vertical: Floats,
+    ship: Condition,
+    line: Heeling,
+) -> Heeling:
+    """KG by least squares of the tangents on the equilibrium of every shift.
+
+    N(t) + km_shift t = (KG + H / D) t + TCG + (M + liquids(t)) / D, less the same at the start with
+    M = H = 0, gives the heel t of each shift for a KG; KG minimises the residuals of all readings
+    with a zero for each device. Starts from the straight line.
+    """
+    if plan.lever is None:
+        return line
+    b, fsm = ship.buoyancy, given.fsm
+    displacement, start = ship.displacement[..., None], ship.start[..., None]
+    km = b.kb + b.bmt + given.km_shift
+    shift = given.km_shift[..., None]
+    at_start = plan.lever.start(ship)[..., None]
+    at_start = at_start - plan.liquids.start(ship.start, fsm)[..., None] / displacement
+    slope = line.slope - given.slope_shift
+    vcg = km - (1.0 / slope + fsm.sum(axis=-1)) / ship.displacement
+    rise = vertical / displacement
+    heel = start + slope[..., None] * line.moments
+    pulled = (plan.line.pull / given.lengths[..., None, :]).sum(axis=-1)
+    for _ in range(_ROUNDS):
+        lever, stiff = plan.lever.at(heel, ship, vcg)
+        moving, moving_slope = plan.liquids.at(heel, fsm)
+        away = heel - start
+        miss = lever - moving / displacement - at_start + shift * away - vcg[..., None] * away
+        miss = miss - rise * heel - transverse / displacement
+        stiff = stiff - moving_slope / displacement + shift - vcg[..., None] - rise
+        heel = heel - miss / stiff
+        by_vcg = (heel - start) / stiff
+        pull = ((pulled - heel @ plan.line.spread) * by_vcg).sum(axis=-1)
+        step = pull / ((by_vcg @ plan.line.spread) * by_vcg).sum(axis=-1)
+        vcg = vcg + step
+        heel = heel + by_vcg * step[..., None]
+    slope = 1.0 / ((km - vcg) * ship.displacement - fsm.sum(axis=-1))
+    regressor = by_vcg / (slope**2 * ship.displacement)[..., None]
+    bend = heel - start - slope[..., None] * regressor
+    slope = slope + given.slope_shift
+    return Heeling(
+        slope=slope,
+        stiffness=1.0 / slope + fsm.sum(axis=-1),
+        moments=transverse + vertical * heel,
+        regressor=regressor,
+        bend=bend,
+        heel=heel,
+        restoring=stiff,
+    )
+
+
+def _tcg(plan: Plan, given: Inputs, ship: Condition, vcg: Floats) -> Floats:
+    """TCG from the list: GM times its tangent, or the equilibrium on the method's own curve."""
+    b, t = ship.buoyancy, ship.start
+    if plan.lever is None:
+        km = b.kb + b.bmt + given.km_shift
+        tcg: Floats = b.yb + (km - vcg - given.fsm.sum(axis=-1) / ship.displacement) * t
+        return tcg
+    liquids = plan.liquids.start(t, given.fsm) / ship.displacement
+    return plan.lever.start(ship) + (given.km_shift - vcg) * t - liquids
+
+
+def _after_changes(plan: Plan, given: Inputs, before: Condition, stiffness: Floats) -> Condition:
     """The waterline after masses came aboard or left since the drafts were read.
 
-    Newton on mean draft and trim until the table's displacement and the moments about G both
-    agree; the KG found on the way closes the loop.
+    Mean draft, trim and list at which the displacement and the moments about G all agree; the KG
+    found on the way closes the loop.
     """
     moved = given.changes
     displacement = before.displacement + moved.sum(axis=-1)
-    mean, tau = before.mean + 0.0 * displacement, before.tau + 0.0 * displacement
+    lever_y = (moved * given.change_y).sum(axis=-1)
+    lever_z = (moved * given.change_z).sum(axis=-1)
+    ship = _trimmed_anew(plan, given, before, before, stiffness)
+    if before.list_tan is None:
+        return ship
+    turning = stiffness - given.fsm.sum(axis=-1)
+    for _ in range(1 if plan.lever is None else 3):
+        vcg = _vcg_of(given, ship.buoyancy, stiffness, displacement)
+        vcg_before = (vcg * displacement - lever_z) / before.displacement
+        wanted = _tcg(plan, given, before, vcg_before) * before.displacement + lever_y
+        miss = wanted - _tcg(plan, given, ship, vcg) * displacement
+        listed = replace(ship, list_tan=ship.start + miss / turning)
+        ship = listed
+        if plan.lever is not None:  # the hull's B goes with the list
+            ship = _trimmed_anew(plan, given, before, listed, stiffness)
+    return ship
+
+
+def _vcg_of(given: Inputs, b: Buoyancy, stiffness: Floats, displacement: Floats) -> Floats:
+    vcg: Floats = b.kb + b.bmt + given.km_shift - stiffness / displacement
+    return vcg
+
+
+def _trimmed_anew(
+    plan: Plan, given: Inputs, before: Condition, guess: Condition, stiffness: Floats
+) -> Condition:
+    """Mean draft and trim of the ship after the changes, at the list of ``guess``: by Newton."""
+    moved = given.changes
+    displacement = before.displacement + moved.sum(axis=-1)
+    mean, tau = guess.mean + 0.0 * displacement, guess.tau + 0.0 * displacement
     lever_x = (moved * given.change_x).sum(axis=-1)
     lever_z = (moved * given.change_z).sum(axis=-1)
 
     def at(m: Floats, t: Floats) -> Buoyancy:
-        return plan.curves.buoyancy(m, t, before.deflection)
-
-    def vcg_of(b: Buoyancy) -> Floats:
-        vcg: Floats = b.z + b.bmt + given.km_shift - stiffness / displacement
-        return vcg
+        return plan.afloat_later.buoyancy(m, t, guess.deflection, guess.list_tan)
 
     def misses(m: Floats, t: Floats) -> tuple[Floats, Floats]:
         b = at(m, t)
         heavy = _mass_of(plan, given, b) - displacement
-        vcg = vcg_of(b)
+        vcg = _vcg_of(given, b, stiffness, displacement)
         vcg_before = (vcg * displacement - lever_z) / before.displacement
         lcg_before = before.buoyancy.x + before.tau * (vcg_before - before.buoyancy.z)
         lcg = (lcg_before * before.displacement + lever_x) / displacement
@@ -255,22 +378,7 @@ def _after_changes(
         ft, gt = ((b - a) / step_t for a, b in zip((f, g), misses(mean, tau + step_t), strict=True))
         det = fm * gt - ft * gm
         mean, tau = mean - (f * gt - g * ft) / det, tau - (g * fm - f * gm) / det
-    after = at(mean, tau)
-    list_tan = before.list_tan
-    if list_tan is not None:
-        vcg_before = (vcg_of(after) * displacement - lever_z) / before.displacement
-        km_before = before.buoyancy.z + before.buoyancy.bmt + given.km_shift
-        turning = (km_before - vcg_before) * before.displacement - fsm
-        lever_y = (moved * given.change_y).sum(axis=-1)
-        list_tan = (list_tan * turning + lever_y) / (stiffness - fsm)
-    return Condition(
-        mean=mean,
-        tau=tau,
-        deflection=before.deflection,
-        list_tan=list_tan,
-        buoyancy=after,
-        displacement=displacement,
-    )
+    return replace(guess, mean=mean, tau=tau, buoyancy=at(mean, tau), displacement=displacement)
 
 
 def _ledger(

@@ -11,12 +11,14 @@ from dataclasses import asdict
 from typing import TYPE_CHECKING, Any
 
 import incline
+from incline.model import KEYS
 
 if TYPE_CHECKING:
     from incline.result import (
         Budget,
         Diagnosis,
         Estimate,
+        HullEntry,
         Outcome,
         Reduction,
         Rolling,
@@ -110,6 +112,22 @@ def _as_inclined(outcome: Outcome) -> dict[str, Any]:
         "vcg_m": ship.vcg,
         "lcg_m": ship.lcg,
         "tcg_m": ship.tcg,
+        "hull": None if ship.hull is None else _hull(ship.hull),
+    }
+
+
+def _hull(hull: HullEntry) -> dict[str, Any]:
+    """How the hull was integrated; shares of volume, KM and LCB [m] as lists."""
+    surface = [None if math.isnan(m) else m for m in hull.surface]
+    return {
+        "stations": hull.stations,
+        "points": hull.points,
+        "least_freeboard_m": hull.freeboard,
+        "layers": [list(layer) for layer in hull.layers],
+        "spacing_of_stations": list(hull.by_stations),
+        "spacing_of_points": list(hull.by_points),
+        "table_less_integration": None if hull.table is None else list(hull.table),
+        "response_surface_error": dict(zip(KEYS, surface, strict=False)),
     }
 
 
@@ -128,7 +146,9 @@ def _heel(outcome: Outcome) -> dict[str, Any]:
         ],
         "max_heel_deg_port": math.degrees(heel.max_heel_port),
         "max_heel_deg_starboard": math.degrees(heel.max_heel_starboard),
-        "other_methods": [],
+        "other_methods": [
+            {"method": m.method, "vcg_m": m.vcg, "gm_fluid_m": m.gm_fluid} for m in heel.others
+        ],
     }
 
 

@@ -10,7 +10,7 @@ from incline.diagnosis.evidence import EVIDENCE, NOT_EXCLUDED
 from incline.result import Diagnosis, Finding, Influence, Unseen
 
 if TYPE_CHECKING:
-    from collections.abc import Mapping
+    from collections.abc import Mapping, Sequence
 
     from incline.diagnosis import Search
     from incline.model import TrialModel
@@ -18,8 +18,13 @@ if TYPE_CHECKING:
 __all__ = ["diagnosis_of"]
 
 
-def diagnosis_of(search: Search, model: TrialModel, evidence: Mapping[str, str]) -> Diagnosis:
-    """KG if each finding is the cause, what hidden disturbances are worth, and influences [m]."""
+def diagnosis_of(
+    search: Search, model: TrialModel, evidence: Mapping[str, str], bend: Sequence[float]
+) -> Diagnosis:
+    """KG if each finding is the cause, what hidden disturbances are worth, and influences [m].
+
+    ``bend`` are tangents by which the readings that count were straightened before the search.
+    """
     import numpy as np
 
     changes = [
@@ -45,7 +50,7 @@ def diagnosis_of(search: Search, model: TrialModel, evidence: Mapping[str, str])
                 vcg_if_so=None if s.slope_change is None else vcg,
                 advice=s.advice,
                 rank=s.rank,
-                expected=s.expected,
+                expected=tuple(a + b for a, b in zip(s.expected, bend, strict=False)),
             )
             for s, vcg in zip(search.signs, signs, strict=True)
         ),

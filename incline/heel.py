@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from typing import TYPE_CHECKING
 
+from incline.liquids import pocketing_tanks
 from incline.regression import fit_grouped_line
 from incline.result import DeviceFit, HeelFit, HeelPoint, ShiftMoment
 
@@ -16,32 +17,45 @@ if TYPE_CHECKING:
 
     from incline.chain import Yield
     from incline.observations import Observation, Observations
-    from incline.record import Trial
+    from incline.record import Method, Trial
     from incline.regression import GroupedLine
+    from incline.result import MethodResult
 
     Floats = NDArray[np.float64]
 
 __all__ = ["describe_heel"]
 
 
-def describe_heel(trial: Trial, seen: Observations, found: Yield) -> HeelFit:
-    """The fit of record with every reading placed against it."""
+def describe_heel(
+    trial: Trial,
+    seen: Observations,
+    found: Yield,
+    method: Method,
+    aside: Sequence[MethodResult] = (),
+) -> HeelFit:
+    """The fit of record with every reading placed against it.
+
+    ``aside`` are the results by the other methods.
+    """
     import numpy as np
 
-    moments = found.moments[seen.shift]
-    line = fit_grouped_line(moments, seen.tangents, seen.device, seen.weight)
+    heeling = found.heeling
+    straight = seen.straightened(heeling.bend)
+    moments = heeling.regressor[seen.shift]
+    line = fit_grouped_line(moments, straight.tangents, seen.device, seen.weight)
     displacement, gm = float(found.condition.displacement), float(found.gm_fluid)
     zero = {d.id: at for d, at in zip(seen.devices, line.intercepts, strict=True)}
-    at_shift = {s.number: float(found.moments[i]) for i, s in enumerate(trial.shifts)}
+    number = {s.number: i for i, s in enumerate(trial.shifts)}
+    curve = heeling.bend + line.slope * heeling.regressor
     points = tuple(
-        _point(o, zero, at_shift[o.reading.shift], line.slope)
+        _point(o, zero, float(heeling.moments[i]), float(curve[i]))
         for o in seen.every
         if o.reading.device in zero
+        for i in [number[o.reading.shift]]
     )
-    upright = found.condition.list_tan
-    heels = _heels(points, zero, 0.0 if upright is None else float(upright))
+    heels = _heels(points, zero, float(found.condition.start))
     return HeelFit(
-        method="straight-line",
+        method=method,
         slope=line.slope,
         u_slope=line.u_slope,
         gm_fluid=gm,
@@ -52,7 +66,7 @@ def describe_heel(trial: Trial, seen: Observations, found: Yield) -> HeelFit:
             _alone(
                 d.id,
                 moments[seen.device == j],
-                seen.tangents[seen.device == j],
+                straight.tangents[seen.device == j],
                 zero[d.id],
                 displacement,
             )
@@ -75,17 +89,31 @@ def describe_heel(trial: Trial, seen: Observations, found: Yield) -> HeelFit:
         ),
         max_heel_port=max(0.0, -math.atan(min(heels))),
         max_heel_starboard=max(0.0, math.atan(max(heels))),
-        curvature_kg=_curvature(heels, float(found.condition.buoyancy.bmt)),
+        curvature_kg=_left_out(method, aside, heels, found),
+        others=tuple(aside),
+        pocketing=pocketing_tanks(trial.tanks, heels),
     )
 
 
-def _point(seen: Observation, zero: dict[str, float], moment: float, slope: float) -> HeelPoint:
+def _left_out(
+    method: Method, aside: Sequence[MethodResult], heels: list[float], found: Yield
+) -> float:
+    """What KG may be off by [m] for curvature that the method leaves out."""
+    if method == "heeled-hull":
+        return 0.0
+    exact = [m for m in aside if m.method == "heeled-hull"]
+    if exact:
+        return exact[0].vcg - float(found.light_vcg)
+    return _curvature(heels, float(found.condition.buoyancy.bmt))
+
+
+def _point(seen: Observation, zero: dict[str, float], moment: float, curve: float) -> HeelPoint:
     return HeelPoint(
         shift=seen.reading.shift,
         device=seen.reading.device,
         moment=moment,
         tangent=seen.tangent,
-        fitted=zero[seen.reading.device] + slope * moment,
+        fitted=zero[seen.reading.device] + curve,
         reading=seen.reduced,
         excluded="" if seen.counts else seen.reading.excluded,
     )

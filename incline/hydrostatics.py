@@ -5,6 +5,8 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, Any, Literal
 
+from incline.buoyancy import Buoyancy
+
 if TYPE_CHECKING:
     import numpy as np
     from numpy.typing import NDArray
@@ -13,7 +15,7 @@ if TYPE_CHECKING:
 
     Floats = NDArray[np.float64]
 
-__all__ = ["Buoyancy", "Curves", "TableValues"]
+__all__ = ["LEVEL", "Curves", "TableValues"]
 
 _MOMENTS = frozenset({"lcb", "kb", "bmt", "bml"})
 """Columns that are moments over the volume: the cubic rule interpolates the moments themselves,
@@ -26,24 +28,6 @@ class TableValues:
 
     value: dict[str, Floats]
     slope: dict[str, Floats]
-
-
-@dataclass(frozen=True, slots=True)
-class Buoyancy:
-    """What carries the ship at one waterline: volume [m3], centre and metacentric radius [m].
-
-    ``x`` of a table for one trim without BM_L is an estimate (see `Curves.tells_lcg`). ``entry``
-    [m] is the draft at which the table was entered, ``trim_volume`` [m3] the second trim
-    correction, ``deflection_factor`` the share of the deflection that counts in the entry draft.
-    """
-
-    volume: Floats
-    x: Floats
-    z: Floats
-    bmt: Floats
-    entry: Floats
-    trim_volume: Floats
-    deflection_factor: Floats
 
 
 class Curves:
@@ -122,7 +106,13 @@ class Curves:
         blended: Floats = np.einsum("...tc,...t->...c", values, self._across(trim))
         return blended
 
-    def buoyancy(self, mean: Floats, tau: Floats, deflection: Floats | None) -> Buoyancy:
+    def buoyancy(
+        self,
+        mean: Floats,
+        tau: Floats,
+        deflection: Floats | None,
+        list_tan: Floats | None = None,  # noqa: ARG002 - a table is for the upright ship
+    ) -> Buoyancy:
         """Volume and centre of buoyancy at a waterline.
 
         ``mean`` [m] is the mean of the drafts at the perpendiculars, ``tau`` trim over length,
@@ -141,8 +131,7 @@ class Curves:
                 share = self._deflection_factor(self.at(mean, trim), mean)
             entry = mean + share * deflection
         v = self.at(entry, trim, slopes=False).value
-        nothing = np.zeros_like(entry)
-        return Buoyancy(v["volume"], v["lcb"], v["kb"], v["bmt"], entry, nothing, share)
+        return _upright(v, v["lcb"], v["kb"], v["bmt"], entry, share)
 
     def _even_keel(self, mean: Floats, tau: Floats, deflection: Floats | None) -> Buoyancy:
         import numpy as np
@@ -166,21 +155,13 @@ class Curves:
             # B's travel as for a box, so that small trims have their effect; whether LCG may be
             # told from it is decided by `tells_lcg`.
             box = self.lpp**2 / (12.0 * entry)
-            nothing = np.zeros_like(entry)
-            x = v["lcb"] - box * more
-            return Buoyancy(v["volume"], x, v["kb"], v["bmt"], entry, nothing, share)
+            return _upright(v, v["lcb"] - box * more, v["kb"], v["bmt"], entry, share)
         inertia_slope = s["volume"] * v["bml"] + v["volume"] * s["bml"]
         trim_volume = 0.5 * more**2 * inertia_slope
-        volume = v["volume"] + trim_volume
-        return Buoyancy(
-            volume,
-            v["lcb"] - v["bml"] * more,
-            v["kb"] + 0.5 * v["bml"] * (tau**2 - table_tau**2),
-            v["bmt"] * v["volume"] / volume,
-            entry,
-            trim_volume,
-            share,
-        )
+        kb = v["kb"] + 0.5 * v["bml"] * (tau**2 - table_tau**2)
+        bmt = v["bmt"] * v["volume"] / (v["volume"] + trim_volume)
+        x = v["lcb"] - v["bml"] * more
+        return _upright(v, x, kb, bmt, entry, share, trim_volume)
 
     def _deflection_factor(self, found: TableValues, like: Floats) -> Floats:
         """Share of the midship deflection that adds volume: 1 - 4 I_mid / (L^2 Aw), or 3/4."""
@@ -193,6 +174,32 @@ class Curves:
         about_mid = v["bml"] * v["volume"] + area * (v["lcf"] - self.lpp / 2.0) ** 2
         share: Floats = 1.0 - 4.0 * about_mid / (self.lpp**2 * area)
         return share
+
+
+def _upright(
+    values: dict[str, Floats],
+    x: Floats,
+    kb: Floats,
+    bmt: Floats,
+    entry: Floats,
+    share: Floats,
+    trim_volume: Floats | None = None,
+) -> Buoyancy:
+    import numpy as np
+
+    more = np.zeros_like(entry) if trim_volume is None else trim_volume
+    return Buoyancy(
+        volume=values["volume"] + more,
+        x=x,
+        y=np.zeros_like(entry),
+        z=kb,
+        yb=np.zeros_like(entry),
+        kb=kb,
+        bmt=bmt,
+        entry=entry,
+        trim_volume=more,
+        deflection_factor=share,
+    )
 
 
 LEVEL = 0.0005

@@ -18,7 +18,7 @@ if TYPE_CHECKING:
 
     Floats = NDArray[np.float64]
 
-__all__ = ["KEYS", "TrialModel"]
+__all__ = ["KEYS", "TrialModel", "draft_spread", "surface_miss"]
 
 KEYS = ("displacement", "vcg", "lcg", "tcg", "gm_fluid")
 """Names of the results, in the order in which the model gives them."""
@@ -43,6 +43,40 @@ class TrialModel:
         found = results_of(run(self.plan, shifted(self.given, self.sources, deviations)))
         draws = deviations.shape[1]
         return np.stack([np.full(draws, np.nan) if r is None else r for r in found])
+
+
+_FAR = 4.0
+"""Standard uncertainties of the drafts over which a response surface is expanded."""
+
+
+def draft_spread(plan: Plan, sources: Sequence[Source]) -> Floats:
+    """Ranges (4,) of mean draft [m], tau, deflection [m] and list in which draws fall."""
+    import numpy as np
+
+    u = np.zeros(plan.waterline.solve.shape[1])
+    for s in sources:
+        if s.field == "drafts" and s.item is not None:
+            u[s.item] = s.u
+    # Drafts go together in part: between the sum of squares and the plain sum.
+    moved = np.abs(plan.waterline.solve) * u
+    spread: Floats = _FAR * np.maximum(np.sqrt((moved**2).sum(axis=1)), 0.5 * moved.sum(axis=1))
+    return np.maximum(spread, [1e-3, 1e-5, 1e-4, 1e-5])
+
+
+_PROBES = 6
+
+
+def surface_miss(exact: TrialModel, near: TrialModel) -> tuple[float, ...]:
+    """Largest difference in each result between a model and its response surface.
+
+    At a few draws of all inputs together, half as wide again as their uncertainties.
+    """
+    import numpy as np
+
+    rng = np.random.default_rng(20)
+    u = np.array([s.u for s in exact.sources])
+    away = 1.5 * u[:, None] * rng.standard_normal((len(u), _PROBES))
+    return tuple(float(m) for m in np.abs(exact(away) - near(away)).max(axis=1))
 
 
 def results_of(found: Yield) -> list[Floats | None]:

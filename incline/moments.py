@@ -23,7 +23,8 @@ class Placing:
     ``owner`` (W, K) is 1 where a weight has a place, ``y`` and ``z`` (K,) the places [m],
     ``change`` (K, n) is +1 where a place is taken at a shift and -1 where it was the start, so that
     (mass @ owner y) @ change is the moment about the start. ``start`` (K, W) is 1 at each weight's
-    first place, ``start_x`` (W,) its x there. ``names`` (K,) says whose place it is and the shift
+    first place, ``start_x`` (W,) its x there, and ``trimming`` (n,) the longitudinal moments about
+    the start [t m]. ``names`` (K,) says whose place it is and the shift
     at which it is first taken.
     """
 
@@ -34,6 +35,7 @@ class Placing:
     change: Floats
     start: Floats
     start_x: Floats
+    trimming: Floats
 
     def about_start(self, mass: Floats, arm: Floats) -> Floats:
         """Moments about the start [t m], (..., n); mass (..., W) [t], arm (..., K) [m]."""
@@ -54,6 +56,7 @@ def place_weights(trial: Trial) -> Placing:
     start: dict[str, int] = {}
     start_x: dict[str, float] = {}
     held: list[dict[str, int]] = []
+    trimming: list[float] = []
     for shift in trial.shifts:
         for move in shift.moves:
             heights[move.weight] = heights[move.weight] if move.z is None else move.z
@@ -66,6 +69,7 @@ def place_weights(trial: Trial) -> Placing:
             start.setdefault(move.weight, standing[move.weight])
             start_x.setdefault(move.weight, along[move.weight])
         held.append(dict(standing))
+        trimming.append(sum(w.mass * (along[w.id] - start_x.get(w.id, w.x)) for w in trial.weights))
     change = np.zeros((len(places), len(held)))
     for n, where in enumerate(held):
         for weight, place in where.items():
@@ -84,4 +88,5 @@ def place_weights(trial: Trial) -> Placing:
         change=change,
         start=first,
         start_x=np.array([start_x[w.id] for w in trial.weights]),
+        trimming=np.array(trimming),
     )

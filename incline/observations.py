@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import dataclasses
 import math
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
@@ -53,6 +54,10 @@ class Observations:
     def counted(self) -> list[Observation]:
         """Those that count."""
         return [o for o in self.every if o.counts]
+
+    def straightened(self, bend: Floats) -> Observations:
+        """The same with ``bend`` (n,) of each shift taken off the tangents that count."""
+        return dataclasses.replace(self, tangents=self.tangents - bend[self.shift])
 
 
 def observe(trial: Trial, *, with_excluded: bool = False) -> Observations:

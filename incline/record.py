@@ -382,11 +382,10 @@ class Settings:
     ``use`` says which hydrostatics count where a trial has both offsets and a table; ``layers``
     whether the water is taken as layers by the depths of the samples instead of mixed.
     ``allowance`` multiplies a table's moulded volume by (1 + allowance) for shell and appendages;
-    None means the table is extreme. ``keel_thickness`` [m] is taken off drafts whose marks start at the
-    underside of keel. ``kg_limit`` [m] is a KG not to be exceeded; ``evidence``
-    says what speaks against disturbances that residuals may hide; ``assumed`` replaces the
-    program's default uncertainties by name (see `incline.defaults`), ``overrides`` limits of
-    published criteria.
+    None means the table is extreme. ``keel_thickness`` [m] is taken off drafts whose marks start
+    at the underside of keel. ``kg_limit`` [m] is a KG not to be exceeded; ``evidence`` says what
+    speaks against disturbances that residuals may hide; ``assumed`` replaces the program's default
+    uncertainties by name (see `incline.defaults`), ``overrides`` limits of published criteria.
     """
 
     x_origin: Literal["after perpendicular", "amidships"]

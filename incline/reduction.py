@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import dataclasses
 import math
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
@@ -11,20 +12,28 @@ from incline.chain import run
 from incline.correlation import blocks_of
 from incline.criteria import judge
 from incline.diagnosis import search
+from incline.entry import hull_entry, lever_curve, table_entry
 from incline.errors import InclineError
 from incline.findings import diagnosis_of
 from incline.flotation import describe_waterline
 from incline.heel import describe_heel
-from incline.hydrostatics import Curves
 from incline.ledger import balance, lines_of, summarise, test_weight_lines
-from incline.model import KEYS, TrialModel
+from incline.local import localised
+from incline.model import KEYS, TrialModel, draft_spread, surface_miss
 from incline.montecarlo import seed_of, simulate
 from incline.observations import observe
 from incline.refusals import refuse, refuse_absurd
 from incline.remarks import remarks_on, remarks_on_simulation
-from incline.result import AsInclined, FreeSurface, Lightship, Outcome, Reduction, TableEntry
+from incline.result import (
+    AsInclined,
+    FreeSurface,
+    Lightship,
+    MethodResult,
+    Outcome,
+    Reduction,
+)
 from incline.rolling import remarks_on_rolling, rolling_of
-from incline.setup import inputs_of, plan_of
+from incline.setup import hull_of, inputs_of, lever_of, methods_of, plan_of
 from incline.sources import list_sources
 from incline.variance import slope_uncertainty
 
@@ -34,9 +43,10 @@ if TYPE_CHECKING:
     from incline.chain import Inputs, Plan, Yield
     from incline.correlation import Block
     from incline.diagnosis import Search
+    from incline.hull import Hull
     from incline.observations import Observations
-    from incline.record import Trial
-    from incline.result import Waterline
+    from incline.record import Method, Trial
+    from incline.result import HullEntry, Waterline
 
 __all__ = ["Stage", "reduce", "work_out"]
 
@@ -73,7 +83,7 @@ def reduce(
     remarks.extend(remarks_on_rolling(trial, rolling))
     diagnosis = None
     if stage.search is not None:
-        diagnosis = diagnosis_of(stage.search, stage.model, trial.settings.evidence)
+        diagnosis = diagnosis_of(stage.search, stage.model, trial.settings.evidence, stage.bend)
     return Reduction(
         trial=trial,
         outcome=stage.outcome,
@@ -94,30 +104,44 @@ class Stage:
     model: TrialModel
     blocks: tuple[Block, ...]
     search: Search | None
+    bend: tuple[float, ...]
 
 
 def work_out(trial: Trial, seen: Observations) -> Stage:
     """One pass through all stages for the readings that count; raises FieldDataError."""
     import numpy as np
 
-    plan = plan_of(trial, seen)
+    hull = hull_of(trial)
+    plan = plan_of(trial, seen, hull)
     given = inputs_of(trial, plan, seen)
-    with np.errstate(divide="ignore", invalid="ignore"):  # what comes of that is refused next
+    with np.errstate(all="ignore"):  # what comes of that is refused next
         found = run(plan, given)
-    refuse(trial, plan, seen, found)
-    heel = describe_heel(trial, seen, found)
+        refuse(trial, plan, seen, found)
+    method, *others = methods_of(trial, hull)
+    aside = [_by(m, plan, given, hull) for m in others]
+    heel = describe_heel(trial, seen, found, method, aside)
+    heel = dataclasses.replace(heel, levers=lever_curve(found, hull))
     waterline = describe_waterline(plan.waterline, trial.drafts, trial.vessel.lpp)
-    slope = slope_uncertainty(seen, found.moments[seen.shift])
-    looked = search(trial, seen, found.moments)
+    straight, line = seen.straightened(found.heeling.bend), found.heeling.regressor
+    slope = slope_uncertainty(straight, line[seen.shift])
+    looked = search(trial, straight, line)
     refuse_absurd(trial, seen, found, looked)
     hidden = () if looked is None else looked.hidden
-    sources = list_sources(trial, plan, given, found, seen, waterline, heel, slope, hidden)
+    entry = None if hull is None else hull_entry(trial, plan, found)
+    sources = list_sources(trial, plan, given, found, seen, waterline, heel, slope, entry, hidden)
     blocks = blocks_of(sources, trial.settings.correlations)
     model = TrialModel(plan, given, sources)
+    if hull is not None or plan.lever is not None:
+        near = localised(
+            plan, found, draft_spread(plan, sources), len(trial.tanks), hull=hull is not None
+        )
+        model, exact = TrialModel(near, given, sources), model
+        if entry is not None:
+            entry = dataclasses.replace(entry, surface=surface_miss(exact, model))
     budgets, covariance = budgets_of(model, KEYS, sources, blocks)
     displacement, vcg, lcg, tcg, _ = (b.estimate for b in budgets)
     lines = (*test_weight_lines(trial, plan.placing), *lines_of(trial))
-    inclined = _as_inclined(trial, plan, waterline, given, found)
+    inclined = _as_inclined(trial, plan, waterline, given, found, entry)
     residual = balance(
         lines,
         inclined.displacement,
@@ -138,22 +162,36 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
         budgets=budgets,
         kg_above_limit=probability_above(vcg, trial.settings.kg_limit),
     )
-    return Stage(outcome, model, blocks, looked)
+    bend = tuple(float(b) for b in found.heeling.bend[seen.shift])
+    return Stage(outcome, model, blocks, looked, bend)
+
+
+def _by(method: Method, plan: Plan, given: Inputs, hull: Hull | None) -> MethodResult:
+    """The result by another method."""
+    lever = lever_of(method, hull, plan.placing.trimming)
+    found = run(dataclasses.replace(plan, lever=lever), given)
+    return MethodResult(method=method, vcg=float(found.light_vcg), gm_fluid=float(found.gm_fluid))
 
 
 def _as_inclined(
-    trial: Trial, plan: Plan, waterline: Waterline, given: Inputs, found: Yield
+    trial: Trial,
+    plan: Plan,
+    waterline: Waterline,
+    given: Inputs,
+    found: Yield,
+    entry: HullEntry | None,
 ) -> AsInclined:
     now, b = found.condition, found.condition.buoyancy
     half = trial.vessel.lpp / 2.0
     return AsInclined(
         waterline=waterline,
-        entry=_entry(trial, plan, found),
+        entry=table_entry(trial, plan, found),
+        hull=entry,
         density=float(given.density),
         volume=float(b.volume),
         displacement=float(now.displacement),
         lcb=float(b.x) if plan.tells_lcg else None,
-        kb=float(b.z),
+        kb=float(b.kb),
         bmt=float(b.bmt),
         kmt=float(found.km),
         vcg=float(found.vcg),
@@ -164,26 +202,4 @@ def _as_inclined(
         draft_mid=float(now.mean) + (waterline.deflection or 0.0),
         trim=float(now.tau) * trial.vessel.lpp,
         list_tan=None if now.list_tan is None else float(now.list_tan),
-    )
-
-
-def _entry(trial: Trial, plan: Plan, found: Yield) -> TableEntry:
-    now, b = found.condition, found.condition.buoyancy
-    straight = Curves(trial.table, trial.vessel.lpp, "linear")
-    by_line = straight.buoyancy(now.mean, now.tau, now.deflection)
-    if now.deflection is None:
-        basis = "no deflection was measured"
-    elif {"bml", "lcf"} <= set(plan.curves.names):
-        basis = "from the waterplane's area and moment of inertia"
-    else:
-        basis = "3/4, the table having no BM_L to work it out"
-    return TableEntry(
-        draft=float(b.entry),
-        at_lcf=plan.curves.even and "lcf" in plan.curves.names,
-        deflection_factor=float(b.deflection_factor),
-        deflection_basis=basis,
-        trim_volume=float(b.trim_volume),
-        linear_km=float(by_line.z + by_line.bmt),
-        table_drafts=plan.curves.drafts,
-        table_trims=plan.curves.trims,
     )

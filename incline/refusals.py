@@ -5,8 +5,10 @@ from __future__ import annotations
 import math
 from typing import TYPE_CHECKING
 
+from incline.entry import shift_freeboards
 from incline.errors import Defect, FieldDataError, Where
-from incline.hydrostatics import LEVEL
+from incline.hull import Integrated, pose_of
+from incline.hydrostatics import LEVEL, Curves
 from incline.observations import distinct
 
 if TYPE_CHECKING:
@@ -29,8 +31,9 @@ _FLAT = 1e-6
 def refuse(trial: Trial, plan: Plan, seen: Observations, found: Yield) -> None:
     """Raise FieldDataError with every reason why the trial gives no result."""
     defects = [*_line_defects(seen, found), *_table_defects(trial, plan, found)]
+    defects += _hull_defects(trial, plan, found, steady=not defects)
     light = float(found.light_displacement)
-    if not light > 0.0 and not any(d.code == "waterline-outside-table" for d in defects):
+    if not light > 0.0 and not any(d.code in _WRONG_WATERLINE for d in defects):
         defects.append(
             Defect(
                 Where("ledger.csv"),
@@ -43,6 +46,9 @@ def refuse(trial: Trial, plan: Plan, seen: Observations, found: Yield) -> None:
         raise FieldDataError(defects)
 
 
+_WRONG_WATERLINE = frozenset(
+    {"waterline-outside-table", "waterline-below-hull", "deck-edge-immersed"}
+)
 _STEEP = 15.0
 """Degrees of heel beyond which readings or lengths must be wrong: tests stay below 4."""
 
@@ -147,7 +153,9 @@ def _defect(code: str, device: str, found: str, expected: str, hint: str = "") -
 
 def _table_defects(trial: Trial, plan: Plan, found: Yield) -> list[Defect]:
     """Waterlines outside the table: that of the drafts, and that of the shifts."""
-    curves, lpp = plan.curves, trial.vessel.lpp
+    curves, lpp = plan.afloat, trial.vessel.lpp
+    if not isinstance(curves, Curves):
+        return []
     reach = f"drafts {curves.drafts[0]:.3f} to {curves.drafts[1]:.3f} m"
     if not curves.even:
         reach += f" and trims {curves.trims[0]:.3f} to {curves.trims[1]:.3f} m"
@@ -175,3 +183,62 @@ def _table_defects(trial: Trial, plan: Plan, found: Yield) -> list[Defect]:
             )
         )
     return defects
+
+
+def _hull_defects(trial: Trial, plan: Plan, found: Yield, *, steady: bool) -> list[Defect]:
+    """Waterlines below the hull or above its deck edge, and a ship that does not stand upright.
+
+    Without a ``steady`` line through the readings the shifts are not looked at.
+    """
+    import numpy as np
+
+    if not isinstance(plan.afloat, Integrated):
+        return []
+    hull, ship = plan.afloat.hull, found.as_read
+    low, _ = hull.reach
+    drafts = f"mean draft {float(ship.mean):.3f} m, trim {float(ship.tau) * hull.lpp:.3f} m"
+    if not float(ship.buoyancy.volume) > 0.0:
+        return [
+            Defect(
+                Where("drafts.csv"),
+                "waterline-below-hull",
+                f"a waterline that does not touch the hull: {drafts}",
+                f"a waterline above the hull's lowest point, {low:.3f} m above baseline",
+                "check the units and the baseline of the drafts and of the offsets",
+            )
+        ]
+    pose = pose_of(ship.mean, ship.tau, ship.deflection, ship.list_tan)
+    dry = float(hull.freeboard(pose))
+    if dry < 0.0:
+        return [_deck_defect("drafts.csv", 0, f"at the draft readings ({drafts})", dry)]
+    if not steady:
+        return []
+    heel, stiff = found.heeling.heel, found.heeling.restoring
+    unstable = [s for s, k in zip(trial.shifts, stiff, strict=True) if not float(k) > 0.0]
+    if unstable or not np.all(np.isfinite(heel)):
+        shifts = ", ".join(str(s.number) for s in unstable) or "every"
+        return [
+            Defect(
+                Where("readings.csv"),
+                "equilibrium-none",
+                f"no stable equilibrium at shift {shifts}: the hull has no righting lever there",
+                "a ship with positive GM over the heels of the test",
+                "if the records are right the ship is unstable: stop the test, land no more weight"
+                " high up, and do not correct a loll by moving weight to the high side",
+            )
+        ]
+    return [
+        _deck_defect("shifts.csv", s.where.row, f"at shift {s.number}", float(f))
+        for s, f in zip(trial.shifts, shift_freeboards(plan, found), strict=True)
+        if float(f) < 0.0
+    ]
+
+
+def _deck_defect(file: str, row: int, when: str, freeboard: float) -> Defect:
+    return Defect(
+        Where(file, row),
+        "deck-edge-immersed",
+        f"the waterline {-freeboard:.3f} m above the deck edge {when}",
+        "a waterline below the deck edge all along the hull",
+        "check the units of the drafts, or carry the offsets up to a higher deck",
+    )

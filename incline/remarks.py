@@ -9,7 +9,7 @@ from incline.units import LENGTH, SYSTEMS
 
 if TYPE_CHECKING:
     from incline.record import Trial
-    from incline.result import Outcome, Simulation
+    from incline.result import HullEntry, Outcome, Simulation
     from incline.units import UnitSystem
 
 __all__ = ["NAMES", "remarks_on", "remarks_on_simulation"]
@@ -30,10 +30,7 @@ def remarks_on(trial: Trial, outcome: Outcome) -> list[str]:
             else []
         ),
         *_slope(outcome),
-        "A straight line through heel and moment puts KG low by about"
-        f" {_small(outcome.heel.curvature_kg, system)} at these heels if the hull is wall-sided."
-        " KG is not corrected for it; its uncertainty includes it, and the probability of KG being"
-        " above a limit is low by as much.",
+        *_method(outcome, system),
         *(
             f"Every reading of device {d.id} is excluded."
             for d in trial.devices
@@ -45,6 +42,53 @@ def remarks_on(trial: Trial, outcome: Outcome) -> list[str]:
             if r.kind == "swings" and not alternates(r.values)
         ),
     ]
+
+
+def _method(outcome: Outcome, system: UnitSystem) -> list[str]:
+    """What the straight line is off by, whether it was used or not, and tanks that pocket."""
+    heel, said = outcome.heel, []
+    kg = {m.method: m.vcg for m in heel.others}
+    kg[heel.method] = outcome.lightship.vcg.value or 0.0
+    exact = kg.get("heeled-hull")
+    if exact is not None:
+        off = kg["straight-line"] - exact
+        way = "low, on the unsafe side" if off < 0.0 else "high"
+        said.append(
+            f"Integrated at its true waterlines, the hull puts the straight-line KG"
+            f" {_small(abs(off), system)} {way}, and that of the wall-sided formula"
+            f" {_small(kg['wall-sided'] - exact, system)} off."
+        )
+    elif heel.method == "straight-line":
+        said.append(
+            "A straight line through heel and moment puts KG low by about"
+            f" {_small(heel.curvature_kg, system)} at these heels if the hull is wall-sided."
+            " KG is not corrected for it; its uncertainty includes it, and the probability of KG"
+            " being above a limit is low by as much."
+        )
+    else:
+        said.append(
+            "The wall-sided formula is wrong, and may err to either side, where the ship's sides"
+            " slope or a chine is near the waterline: KG's uncertainty includes as much as the"
+            " formula changes it."
+        )
+    if exact is not None and heel.method != "heeled-hull":
+        said.append(
+            f"The {heel.method} method was asked for: its KG is not corrected for that difference,"
+            " which its uncertainty includes."
+        )
+    exactly = heel.method != "straight-line"
+    how = (
+        "its exact lever is used instead of a fixed free-surface moment"
+        if exactly
+        else "a fixed free-surface moment is too large for it there, and KG comes out too low: use"
+        " another method, or empty or fill the tank"
+    )
+    said.extend(
+        f"The liquid in tank {name} reaches the bottom or the top of the tank at the heels of this"
+        f" test: {how}."
+        for name in heel.pocketing
+    )
+    return said
 
 
 def _small(length: float, system: UnitSystem) -> str:
@@ -87,6 +131,14 @@ _COARSE = 0.003  # m of KM between straight-line and curved interpolation
 def _table(trial: Trial, outcome: Outcome, system: UnitSystem) -> list[str]:
     """What the hydrostatic table leaves open at this waterline."""
     ship, entry, said = outcome.as_inclined, outcome.as_inclined.entry, []
+    if ship.list_tan is None and any(s.vertical for s in outcome.heel.shifts):
+        said.append(
+            "Test weights moved up or down while the list is unknown: it is taken as zero there."
+        )
+    if ship.hull is not None:
+        said.extend(_hull(outcome, ship.hull, system))
+    if entry is None:
+        return said
     more = abs(ship.trim - entry.table_trims[0]) / trial.vessel.lpp
     if entry.table_trims[0] == entry.table_trims[1] and more > _TRIMMED:
         said.append(
@@ -100,11 +152,32 @@ def _table(trial: Trial, outcome: Outcome, system: UnitSystem) -> list[str]:
             "The rows of the hydrostatic table are far apart: straight lines between them would"
             f" give a KM that differs by {_small(apart, system)}."
         )
-    if ship.list_tan is None and any(s.vertical for s in outcome.heel.shifts):
+    return said
+
+
+def _hull(outcome: Outcome, hull: HullEntry, system: UnitSystem) -> list[str]:
+    """What the integration leaves open, and how far the trial's table is from it."""
+    said = []
+    if outcome.as_inclined.list_tan is None and outcome.heel.method == "heeled-hull":
+        said.append("The drafts do not show the list: the heels are taken from the upright.")
+    if hull.table is not None:
+        volume, km, lcb = hull.table
         said.append(
-            "Test weights moved up or down while the list is unknown: it is taken as zero there."
+            f"The hydrostatic table is not used. Against the integrated hull it has"
+            f" {100.0 * volume:+.2f} % volume, {_signed(km, system)} KM and"
+            f" {_signed(lcb, system)} LCB at this waterline."
+        )
+    if len(hull.layers) > 1:
+        said.append(
+            f"The water is taken as {len(hull.layers)} layers by the depths of the samples; the"
+            " volume is that of water of mean density with the same mass."
         )
     return said
+
+
+def _signed(length: float, system: UnitSystem) -> str:
+    text = _small(length, system)
+    return text if text.startswith("-") else f"+{text}"
 
 
 def _aboard(trial: Trial) -> list[str]:

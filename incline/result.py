@@ -5,14 +5,15 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 from typing import Literal
 
-from incline.record import Point, Statements, Trial
+from incline.record import Method, Point, Statements, Trial
 from incline.units import Quantity
 
 __all__ = [
     "AsInclined", "Budget", "BudgetLine", "Check", "DeviceFit", "Diagnosis", "DraftResidual",
-    "Estimate", "Finding", "FreeSurface", "HeelFit", "HeelPoint", "Influence", "Ledger",
-    "LedgerLine", "Lightship", "Outcome", "ReducedReading", "Reduction", "Rolling", "ShiftMoment",
-    "Simulated", "Simulation", "SlopeUncertainty", "TableEntry", "Unseen", "Waterline",
+    "Estimate", "Finding", "FreeSurface", "HeelFit", "HeelPoint", "HullEntry", "Influence",
+    "Ledger", "LedgerLine", "LeverCurve", "Lightship", "MethodResult", "Outcome", "ReducedReading",
+    "Reduction", "Rolling", "ShiftMoment", "Simulated", "Simulation", "SlopeUncertainty",
+    "TableEntry", "Unseen", "Waterline",
 ]  # fmt: skip
 
 
@@ -85,8 +86,34 @@ class TableEntry:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class HullEntry:
+    """How the hull was integrated.
+
+    ``stations``, ``points`` are counts over all bodies. ``freeboard`` [m] is the least height of
+    the deck edge above the waterline at any shift. ``by_stations`` and ``by_points`` estimate what
+    the spacing of stations and of points may be worth: share of volume, KM [m], LCB [m].
+    ``table`` is the trial's own hydrostatic table less the integration, likewise, and None without
+    a table that covers the waterline. ``surface`` is the largest miss of the response surface that
+    uncertainties go through: lightship displacement [t], KG, LCG, TCG, GM [m]; NaN where there is
+    no such result.
+    """
+
+    stations: int
+    points: int
+    freeboard: float
+    layers: tuple[tuple[float, float], ...]
+    by_stations: tuple[float, float, float]
+    by_points: tuple[float, float, float]
+    table: tuple[float, float, float] | None
+    surface: tuple[float, ...] = ()
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class AsInclined:
     """The ship as inclined, test weights at their start [m, t, m3]. kmt = kb + bmt.
+
+    ``entry`` says how the table was entered, ``hull`` how the hull was integrated: one of them is
+    there. KB, BM and KM are those of the upright ship at these drafts, LCB that of the listed ship.
 
     ``vcg`` is solid (free surface taken out). ``lcg`` is None when the table cannot give it for a
     trimmed ship, ``tcg`` when the drafts cannot give the list. Drafts, ``trim`` and ``list_tan``
@@ -94,7 +121,7 @@ class AsInclined:
     """
 
     waterline: Waterline
-    entry: TableEntry
+    entry: TableEntry | None
     density: float
     volume: float
     displacement: float
@@ -110,6 +137,7 @@ class AsInclined:
     draft_mid: float
     trim: float
     list_tan: float | None
+    hull: HullEntry | None = None
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -165,14 +193,40 @@ class DeviceFit:
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
+class MethodResult:
+    """Lightship KG and GM with liquids free [m] by one of the methods."""
+
+    method: Method
+    vcg: float
+    gm_fluid: float
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class LeverCurve:
+    """N(t) = y_B + z_B t [m] over tangents of heel, and what each method puts in its place.
+
+    ``integrated`` is empty without a hull.
+    """
+
+    tangents: tuple[float, ...]
+    integrated: tuple[float, ...]
+    wall_sided: tuple[float, ...]
+    straight_line: tuple[float, ...]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
 class HeelFit:
-    """Common line through all devices: slope [1/(t m)], GM of the ship with its liquids free [m].
+    """The common fit through all devices: slope [1/(t m)], GM with liquids free [m].
+
+    By the straight-line method that is a line. By the others it is the curve of the method's lever,
+    ``slope`` is that of heel against moment upright, and the statistics are those of the curve
+    linearised at the fit. ``others`` are the methods that could also have been used.
 
     ``residual_sd`` is in tangents. ``max_heel_port`` and ``max_heel_starboard`` [rad, positive]
     are measured from the start, with the list from the drafts added where it is known.
     """
 
-    method: Literal["straight-line"]
+    method: Method
     slope: float
     u_slope: float | None
     gm_fluid: float
@@ -185,8 +239,14 @@ class HeelFit:
     max_heel_port: float
     max_heel_starboard: float
     curvature_kg: float
-    """What KG is low by [m] for the curvature that a straight line leaves out, as for a wall-sided
-    hull: half of BM times cov(t, t^3) / var(t), or sum(t^4) / sum(t^2) about the upright."""
+    """What KG may be off by [m] for curvature that the method leaves out: by a straight line
+    without a hull, what it is low by on a wall-sided one, half of BM times cov(t, t^3) / var(t) or
+    sum(t^4) / sum(t^2) about the upright; with a hull, the difference from the heeled-hull method;
+    zero for that method itself."""
+    others: tuple[MethodResult, ...] = ()
+    levers: LeverCurve | None = None
+    pocketing: tuple[str, ...] = ()
+    """Box tanks whose surface reaches the bottom or the top at the heels of this test."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

@@ -13,6 +13,7 @@ from typing import TYPE_CHECKING, Literal
 
 from incline.defaults import DEFAULTS, LABEL, assumed
 from incline.diagnosis.evidence import EVIDENCE, NOT_EXCLUDED
+from incline.hydrostatics import Curves
 from incline.ledger import lines_of
 from incline.units import DENSITY, FRACTION, LENGTH, MASS, MOMENT, SYSTEMS
 
@@ -26,7 +27,7 @@ if TYPE_CHECKING:
     from incline.diagnosis.search import Hidden
     from incline.observations import Observations
     from incline.record import Statements, Trial
-    from incline.result import HeelFit, SlopeUncertainty, Waterline
+    from incline.result import HeelFit, HullEntry, SlopeUncertainty, Waterline
     from incline.units import Quantity
 
     Floats = NDArray[np.float64]
@@ -69,9 +70,13 @@ def list_sources(
     waterline: Waterline,
     heel: HeelFit,
     slope: SlopeUncertainty,
+    entry: HullEntry | None = None,
     hidden: Sequence[Hidden] = (),
 ) -> tuple[Source, ...]:
-    """All sources whose uncertainty is above zero, in the order of the chain."""
+    """All sources whose uncertainty is above zero, in the order of the chain.
+
+    ``entry`` is there when the hull was integrated.
+    """
     sources = [
         *_drafts(trial, waterline),
         *_density(trial, given),
@@ -80,7 +85,7 @@ def list_sources(
         *_devices(trial, seen, slope),
         _curvature(heel),
         *_hidden(trial, hidden),
-        *_hydrostatics(trial, given),
+        *(_hydrostatics(trial, given) if entry is None else _hull(trial, given, entry)),
         *_trimmed(trial, plan, found),
         *_tanks(trial),
         *_lines(trial),
@@ -282,15 +287,17 @@ def _devices(trial: Trial, seen: Observations, slope: SlopeUncertainty) -> Itera
 
 
 def _curvature(heel: HeelFit) -> Source:
-    """What the straight line leaves out.
+    """What the method leaves out.
 
     Its size is known for a wall-sided hull, but near a chine its sign is not, so that it counts as
-    an uncertainty and not as a correction.
+    an uncertainty and not as a correction. With a hull it is the difference from integrating it.
     """
-    gm_low = heel.curvature_kg / heel.gm_fluid
+    gm_low = abs(heel.curvature_kg) / heel.gm_fluid
+    known = any(m.method == "heeled-hull" for m in heel.others)
+    basis = "difference from the heeled hull" if known else "estimated as for a wall-sided hull"
     return Source(
-        name="curvature that a straight line leaves out", field="slope_shift", item=None,
-        u=heel.slope * gm_low, quantity=None, basis="estimated as for a wall-sided hull",
+        name=f"curvature that the {heel.method} method leaves out", field="slope_shift", item=None,
+        u=heel.slope * gm_low, quantity=None, basis=basis,
     )  # fmt: skip
 
 
@@ -309,13 +316,44 @@ def _hidden(trial: Trial, hidden: Sequence[Hidden]) -> Iterator[Source]:
 
 
 def _hydrostatics(trial: Trial, given: Inputs) -> Iterator[Source]:
-    make, stated = _maker(trial).make, trial.table.stated
+    stated = {} if trial.table is None else trial.table.stated
+    return _of_shape(trial, given, "hydrostatic table", "table", stated)
+
+
+def _of_shape(
+    trial: Trial, given: Inputs, what: str, default: str, stated: Statements
+) -> Iterator[Source]:
+    """Volume, KM and LCB of the hull."""
+    make = _maker(trial).make
     yield make(
-        "hydrostatic table, volume", "volume_factor", None, stated, "volume", FRACTION,
-        "table_volume", float(given.volume_factor),
+        f"{what}, volume", "volume_factor", None, stated, "volume", FRACTION, f"{default}_volume",
+        float(given.volume_factor),
     )  # fmt: skip
-    yield make("hydrostatic table, KM", "km_shift", None, stated, "km", LENGTH, "table_km")
-    yield make("hydrostatic table, LCB", "lcb_shift", None, stated, "lcb", LENGTH, "table_lcb")
+    yield make(f"{what}, KM", "km_shift", None, stated, "km", LENGTH, f"{default}_km")
+    yield make(f"{what}, LCB", "lcb_shift", None, stated, "lcb", LENGTH, f"{default}_lcb")
+
+
+_ORDER_TWO = 3.0
+"""Halving the spacing takes three quarters of the error away, at least: what is left is a third of
+the difference. Smooth lines do better."""
+
+
+def _hull(trial: Trial, given: Inputs, entry: HullEntry) -> Iterator[Source]:
+    """The hull as built against its drawing, and what its offsets leave open."""
+    stated = {} if trial.offsets is None else trial.offsets.stated
+    yield from _of_shape(trial, given, "hull as built", "hull", stated)
+    for name, apart, share in (
+        ("spacing of stations", entry.by_stations, 1.0 / _ORDER_TWO),
+        ("spacing of points", entry.by_points, 1.0),
+    ):
+        for what, field, quantity, miss in zip(
+            ("volume", "KM", "LCB"), ("volume_factor", "km_shift", "lcb_shift"),
+            (FRACTION, LENGTH, LENGTH), apart, strict=True,
+        ):  # fmt: skip
+            yield Source(
+                name=f"{name}, {what}", field=field, item=None, u=abs(miss) * share,
+                quantity=quantity, basis="estimated from the offsets",
+            )  # fmt: skip
 
 
 def _trimmed(trial: Trial, plan: Plan, found: Yield) -> Iterator[Source]:
@@ -324,8 +362,8 @@ def _trimmed(trial: Trial, plan: Plan, found: Yield) -> Iterator[Source]:
     Its waterplane changes with trim where the ends are flared, and with it BM: the default is a
     share of BM times the slope of the keel. Without BM_L the rise of B is missing as well.
     """
-    curves, now = plan.curves, found.condition
-    if not curves.even:
+    curves, now = plan.afloat, found.condition
+    if not isinstance(curves, Curves) or not curves.even:
         return
     lpp = trial.vessel.lpp
     more = abs(float(now.tau) - curves.trims[0] / lpp)

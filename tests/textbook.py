@@ -90,7 +90,7 @@ def trial(
         vessel=Vessel(name="Exercise", number="0", lpp=LPP, beam=10.0, depth=6.0),
         occasion=Occasion(date=datetime.date(2026, 1, 1), place="paper"),
         settings=Settings(
-            x_origin="after perpendicular", units="metric", rule_set="", method="straight-line",
+            x_origin="after perpendicular", units="metric", rule_set="", method=None,
             allowance=None, keel_thickness=0.0, interpolation="cubic",
         ),
         people=(),

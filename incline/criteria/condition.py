@@ -22,8 +22,16 @@ def _list(s: Subject) -> Answer:
 
 
 def _trim(s: Subject) -> Answer:
-    excuse = "the hydrostatic table is for the actual trim" if len(s.trial.table.trims) > 1 else ""
-    return Found(((_trim_share(s), ""),), excuse=excuse)
+    return Found(((_trim_share(s), ""),), excuse=_for_the_trim(s))
+
+
+def _for_the_trim(s: Subject) -> str:
+    """Why the hydrostatics hold at the ship's own trim; empty where they are for another one."""
+    if s.outcome.as_inclined.hull is not None:
+        return "the hull is integrated at the actual trim"
+    if s.trial.table is not None and len(s.trial.table.trims) > 1:
+        return "the hydrostatic table is for the actual trim"
+    return ""
 
 
 def _trim_share(s: Subject) -> float:
@@ -102,10 +110,13 @@ def _hydrometer(s: Subject) -> Answer:
 
 def _table(s: Subject) -> Answer:
     """Outside the table there is no outcome; what is left is the trim that the table is for."""
-    trims, share = s.trial.table.trims, _trim_share(s)
-    if len(trims) > 1:
+    entry, share = s.outcome.as_inclined.entry, _trim_share(s)
+    if entry is None:
+        return Words("integrated from the hull at the waterline itself", ok=True)
+    if _for_the_trim(s):
         return Words("inside, by draft and trim", ok=True)
-    apart = 100.0 * abs(s.outcome.as_inclined.trim - trims[0]) / s.trial.vessel.lpp
+    own = entry.table_trims[0]
+    apart = 100.0 * abs(s.outcome.as_inclined.trim - own) / s.trial.vessel.lpp
     large = not s.limits["trim"].range.holds(share)
     text = f"inside, trim {share:.2f} % of length"
     if large and apart > 0.1:

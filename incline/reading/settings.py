@@ -141,7 +141,7 @@ def _choices(document: Document, vessel: Vessel, *, sound: bool) -> tuple[Settin
         x_origin=x_origin,
         units=output.choice("units", ("metric", "us")),
         rule_set=rules.text("set"),
-        method=method.choice("heel", ("straight-line",), "straight-line"),
+        method=method.choice("heel", ("straight-line", "wall-sided", "heeled-hull"), "") or None,
         allowance=_allowance(table),
         keel_thickness=keel if marks_from == _KEEL else 0.0,
         interpolation=method.choice("interpolation", ("cubic", "linear"), "cubic"),

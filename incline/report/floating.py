@@ -172,6 +172,8 @@ def _entry(sheet: Sheet) -> list[Any]:
         f"{show.number(state.draft_mid, 'length')} amidships and "
         f"{show.full(state.draft_fp, 'length')} at FP, the trim {show.full(state.trim, 'length')}."
     ]
+    if entry is None or trial.table is None:
+        return [paragraph(" ".join(said))]
     where = "the draft at the centre of flotation" if entry.at_lcf else "the draft amidships"
     said.append(
         f"The table was entered at {show.full(entry.draft, 'length')}, {where}, between its limits "
@@ -206,7 +208,8 @@ def _entry(sheet: Sheet) -> list[Any]:
 def _displacement(sheet: Sheet) -> list[Any]:
     trial, show, state = sheet.reduction.trial, sheet.show, sheet.reduction.outcome.as_inclined
     volume, density = show.number(state.volume, "volume", 3), show.number(state.density, "density")
-    allowance = trial.settings.allowance
+    offsets = None if state.hull is None else trial.offsets
+    allowance = trial.settings.allowance if offsets is None else offsets.allowance
     if allowance is None:
         formula, values = "Δ = ∇ ρ   (extreme volume)", f"{volume} × {density}"
     else:

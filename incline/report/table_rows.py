@@ -29,6 +29,8 @@ def table_rows(sheet: Sheet) -> list[Any]:
     """Two rows on each side of the entry draft, for the trims on each side of the actual trim."""
     table, show = sheet.reduction.trial.table, sheet.show
     state = sheet.reduction.outcome.as_inclined
+    if table is None or state.entry is None:
+        return []
     known = [c for c in _COLUMNS if getattr(table, c[0]) is not None]
     columns = (
         Column(f"draft [{show.unit('length')}]", 1.0),

@@ -1,0 +1,122 @@
+"""How the hydrostatics of a reduction came about: the table entered, or the hull integrated."""
+
+from __future__ import annotations
+
+from typing import TYPE_CHECKING
+
+from incline.hull import Integrated, pose_of
+from incline.hull.spacing import spacing_misses
+from incline.hydrostatics import Curves
+from incline.levers import HeeledHull, WallSided
+from incline.result import HullEntry, LeverCurve, TableEntry
+
+if TYPE_CHECKING:
+    import numpy as np
+    from numpy.typing import NDArray
+
+    from incline.buoyancy import Condition
+    from incline.chain import Plan, Yield
+    from incline.hull import Hull
+    from incline.record import Trial
+
+    Floats = NDArray[np.float64]
+
+__all__ = ["hull_entry", "lever_curve", "shift_freeboards", "table_entry"]
+
+
+def table_entry(trial: Trial, plan: Plan, found: Yield) -> TableEntry | None:
+    """How the table was entered; None when the hull was integrated instead."""
+    curves = plan.afloat
+    if not isinstance(curves, Curves) or trial.table is None:
+        return None
+    now, b = found.condition, found.condition.buoyancy
+    straight = Curves(trial.table, trial.vessel.lpp, "linear")
+    by_line = straight.buoyancy(now.mean, now.tau, now.deflection)
+    if now.deflection is None:
+        basis = "no deflection was measured"
+    elif {"bml", "lcf"} <= set(curves.names):
+        basis = "from the waterplane's area and moment of inertia"
+    else:
+        basis = "3/4, the table having no BM_L to work it out"
+    return TableEntry(
+        draft=float(b.entry),
+        at_lcf=curves.even and "lcf" in curves.names,
+        deflection_factor=float(b.deflection_factor),
+        deflection_basis=basis,
+        trim_volume=float(b.trim_volume),
+        linear_km=float(by_line.kb + by_line.bmt),
+        table_drafts=curves.drafts,
+        table_trims=curves.trims,
+    )
+
+
+def hull_entry(trial: Trial, plan: Plan, found: Yield) -> HullEntry | None:
+    """How the hull was integrated; None when a table was used instead."""
+    if not isinstance(plan.afloat, Integrated) or trial.offsets is None:
+        return None
+    hull, offsets, now = plan.afloat.hull, trial.offsets, found.condition
+    stations = [s for body in offsets.bodies for s in body.stations]
+
+    by_stations, by_points = spacing_misses(
+        offsets, hull, pose_of(now.mean, now.tau, now.deflection, None)
+    )
+    return HullEntry(
+        stations=len(stations),
+        points=sum(len(s.starboard) for s in stations),
+        freeboard=float(shift_freeboards(plan, found).min()),
+        layers=hull.layers,
+        by_stations=by_stations,
+        by_points=by_points,
+        table=_table_apart(trial, now),
+    )
+
+
+def shift_freeboards(plan: Plan, found: Yield) -> Floats:
+    """Least freeboard to the deck edge [m] at each shift; the plan's hydrostatics are a hull's."""
+    if not isinstance(plan.afloat, Integrated):
+        raise TypeError("only a hull has a deck edge")
+    hull = plan.afloat.hull
+    pose, _ = HeeledHull(hull, plan.placing.trimming).settled(
+        found.heeling.heel, found.condition, found.vcg
+    )
+    return hull.freeboard(pose)
+
+
+def _table_apart(trial: Trial, ship: Condition) -> tuple[float, float, float] | None:
+    """The trial's table less the integration, its own allowance counted in its volume."""
+    if trial.table is None or trial.offsets is None:
+        return None
+    curves = Curves(trial.table, trial.vessel.lpp, trial.settings.interpolation)
+    b, hull = curves.buoyancy(ship.mean, ship.tau, ship.deflection), ship.buoyancy
+    if not curves.covers(float(b.entry), float(ship.tau) * trial.vessel.lpp):
+        return None
+    factor = (1.0 + (trial.settings.allowance or 0.0)) / (1.0 + (trial.offsets.allowance or 0.0))
+    return (
+        float(b.volume * factor / hull.volume - 1.0),
+        float(b.kb + b.bmt - hull.kb - hull.bmt),
+        float(b.x - hull.x),
+    )
+
+
+_DRAWN = 41
+
+
+def lever_curve(found: Yield, hull: Hull | None) -> LeverCurve:
+    """N(t) a little beyond the heels of the test, by every method."""
+    import numpy as np
+
+    ship, heel = found.condition, found.heeling.heel
+    far = 1.15 * float(np.abs(heel).max())
+    tangents = np.linspace(-far, far, _DRAWN)
+    b = ship.buoyancy
+    integrated: Floats = np.empty(0)
+    if hull is not None:
+        integrated, _ = HeeledHull(hull, 0.0 * tangents).at(tangents, ship, found.vcg)
+    wall_sided, _ = WallSided().at(tangents, ship, found.vcg)
+    straight = b.yb + (b.kb + b.bmt) * tangents
+    return LeverCurve(
+        tangents=tuple(map(float, tangents)),
+        integrated=tuple(map(float, integrated)),
+        wall_sided=tuple(map(float, wall_sided)),
+        straight_line=tuple(map(float, straight)),
+    )

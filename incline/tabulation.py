@@ -1,0 +1,139 @@
+"""A table of hydrostatics from a hull's offsets, over drafts and trims."""
+
+from __future__ import annotations
+
+import math
+from dataclasses import dataclass
+from typing import TYPE_CHECKING
+
+from incline.errors import Defect, FieldDataError, Where
+from incline.hull import Hull, Pose
+from incline.hull.spacing import spacing_misses
+
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+    import numpy as np
+    from numpy.typing import NDArray
+
+    from incline.hull.spacing import Miss
+    from incline.record import Offsets
+
+    Floats = NDArray[np.float64]
+
+__all__ = ["HydrostaticRow", "Tabulation", "drafts_for", "tabulate"]
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class HydrostaticRow:
+    """Hydrostatics at one draft and trim: metres and powers of it, on the volume as drawn.
+
+    ``draft`` is amidships between perpendiculars, positive ``trim`` by the stern. ``lcb``, ``lcf``
+    are forward of the after perpendicular; ``tcb`` is the centre of buoyancy to starboard, ``kn``
+    the righting lever about the keel, (tcb + kb tan(heel)) cos(heel).
+    """
+
+    draft: float
+    trim: float
+    volume: float
+    lcb: float
+    tcb: float
+    kb: float
+    bmt: float
+    bml: float
+    lcf: float
+    area: float
+    kn: float
+
+    @property
+    def kmt(self) -> float:
+        """KM [m]."""
+        return self.kb + self.bmt
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Tabulation:
+    """Rows by trim, then draft, with what the spacing of the offsets may be worth.
+
+    ``by_stations`` and ``by_points`` are shares of volume, and metres of KM and LCB, in the middle
+    row.
+    """
+
+    rows: tuple[HydrostaticRow, ...]
+    heel: float
+    deflection: float
+    by_stations: Miss
+    by_points: Miss
+
+
+def drafts_for(offsets: Offsets, lpp: float) -> tuple[float, ...]:
+    """Eleven or so round drafts from near the keel to near the lowest deck edge [m]."""
+    hull = Hull(offsets, lpp)
+    low, _ = hull.reach
+    top = hull.lowest_deck
+    step = (top - low) / 12.0
+    nice = 10.0 ** math.floor(math.log10(step))
+    step = next(nice * m for m in (1.0, 2.0, 2.5, 5.0, 10.0) if nice * m >= step)
+    first, last = math.ceil((low + step) / step - 1e-9), math.floor(top / step + 1e-9)
+    return tuple(round(n * step, 9) for n in range(first, last + 1))
+
+
+def tabulate(
+    offsets: Offsets,
+    lpp: float,
+    drafts: Sequence[float],
+    trims: Sequence[float] = (0.0,),
+    *,
+    heel: float = 0.0,
+    deflection: float = 0.0,
+) -> Tabulation:
+    """Integrate a hull over drafts and trims [m], at a heel [rad] and a deflection [m].
+
+    Raises FieldDataError for waterlines below the hull or above its deck edge.
+    """
+    import numpy as np
+
+    hull = Hull(offsets, lpp)
+    trim, draft = (a.ravel() for a in np.meshgrid(trims, drafts, indexing="ij"))
+    pose = Pose(draft, trim / lpp, 0.0 * draft + deflection, 0.0 * draft + math.tan(heel))
+    _refuse(hull, pose, draft, trim)
+    found = hull.displaced(pose)
+    kn = (found.y + found.z * pose.tangent) * math.cos(heel)
+    columns = {
+        "draft": draft, "trim": trim, "volume": found.volume, "lcb": found.x, "tcb": found.y,
+        "kb": found.z, "bmt": found.bmt, "bml": found.bml, "lcf": found.lcf, "area": found.area,
+        "kn": kn,
+    }  # fmt: skip
+    rows = tuple(
+        HydrostaticRow(**{name: float(column[i]) for name, column in columns.items()})
+        for i in range(len(draft))
+    )
+    middle = Pose(
+        *(a[len(draft) // 2] for a in (pose.mean, pose.tau, pose.deflection, pose.tangent))
+    )
+    by_stations, by_points = spacing_misses(offsets, hull, middle)
+    return Tabulation(
+        rows=rows,
+        heel=heel,
+        deflection=deflection,
+        by_stations=by_stations,
+        by_points=by_points,
+    )
+
+
+def _refuse(hull: Hull, pose: Pose, draft: Floats, trim: Floats) -> None:
+    low, _ = hull.reach
+    dry = hull.freeboard(pose)
+    deep = hull.displaced(pose).volume
+    defects = []
+    for d, t, f, v in zip(draft, trim, dry, deep, strict=True):
+        at = f"draft {d:.3f} m, trim {t:.3f} m"
+        if not v > 0.0:
+            expected = f"a waterline above the hull's lowest point, {low:.3f} m above baseline"
+            defects.append(Defect(Where("drafts"), "waterline-below-hull", at, expected))
+        elif f < 0.0:
+            found = f"{at}: {-f:.3f} m above the deck edge"
+            expected = "a waterline below the deck edge all along the hull"
+            defects.append(Defect(Where("drafts"), "deck-edge-immersed", found, expected))
+    if defects:
+        raise FieldDataError(defects)
