@@ -28,7 +28,7 @@ Floats = NDArray[np.float64]
 Along = Callable[[Floats], Floats]
 """A function of x, such as the height of the keel line."""
 
-ARC_NODES, SPAN_NODES, SCAN = 24, 40, 400
+ARC_NODES, SPAN_NODES, SCAN = 16, 28, 400
 
 
 def unit_nodes(count: int) -> tuple[Floats, Floats]:
@@ -143,22 +143,30 @@ class Form:
 
         return (*self.parts, Straight(edge(0), edge(1), lambda x: 0.0 * x, edge(1)))
 
+    def is_dry(self, level: Along, t: float) -> bool:
+        """Whether the deck edge is above the water all along."""
+        x = np.linspace(*self.ends, SCAN + 1)
+        y, z = self.parts[-1].at(x, np.ones_like(x))
+        return bool(np.all(z - level(x) - abs(t) * y >= 0.0))
+
     def spans(self, level: Along, t: float) -> list[float]:
         """Where the integrand along x is not smooth, and the ends."""
-        edges = [self.ends[0], *self.breaks, *self.knuckles, self.ends[1]]
+        found = {self.ends[0], *self.breaks, *self.knuckles, self.ends[1]}
         x = np.linspace(*self.ends, SCAN + 1)
-        found = set(edges)
         for part in self.closed():
-            for lean in (t, -t):
-                for n, heights in enumerate(part.heights(x, level(x), lean)):
-                    for i in np.flatnonzero(heights[1:] * heights[:-1] < 0.0):
-
-                        def height(at: float, n: int = n, part: Straight | Arc = part,
-                                   lean: float = lean) -> float:  # fmt: skip
-                            point = np.asarray(at)
-                            return float(part.heights(point, level(point), lean)[n])
-
-                        found.add(optimize.brentq(height, x[i], x[i + 1], xtol=1e-13))
+            for lean in {t, -t}:
+                heights = np.array(part.heights(x, level(x), lean))
+                line, at = np.nonzero(heights[:, 1:] * heights[:, :-1] < 0.0)
+                if not len(at):
+                    continue
+                # secant steps from the ends of each bracket: what is left of it goes with its square
+                a, b, fa, fb = x[at], x[at + 1], heights[line, at], heights[line, at + 1]
+                low, high = a, b
+                for _ in range(4):
+                    slope = np.where(fb == fa, 1.0, fb - fa)
+                    a, b, fa = b, np.clip(b - fb * (b - a) / slope, low, high), fb
+                    fb = np.array(part.heights(b, level(b), lean))[line, np.arange(len(b))]
+                found.update(b.tolist())
         return sorted(found)
 
     def displaced(self, level: Along, t: float) -> Floats:
@@ -167,12 +175,8 @@ class Form:
         x = edges[:-1, None] + np.diff(edges)[:, None] * SPAN_AT
         weight = np.diff(edges)[:, None] * SPAN_WEIGHT
         at = level(x)
-        if self.kind == "hull":
-            y, z = self.parts[-1].at(x, np.ones_like(x))
-            if np.any(z - at - abs(t) * y < 0.0):
-                raise ValueError("the deck edge is under water")
         area = across = up = np.zeros_like(x)
-        for part in self.closed() if self.kind == "appendage" else self.parts:
+        for part in self.parts if self.is_dry(level, t) else self.closed():
             starboard, port = part.wetted(x, at, t), part.wetted(x, at, -t)
             area = area + starboard[0] + port[0]
             across = across + starboard[1] - port[1]
@@ -258,4 +262,8 @@ def afloat(
     assert max(abs(m) for m in misses(found.x)) < 1e-11, found.message
     mean, tau = float(found.x[0]), float(found.x[1])
     lean = float(found.x[2]) if t is None else t
+    level = ship.level(mean, tau, deflection)
+    for form in ship.forms:
+        dry = [form.is_dry(lambda x, y=y: level(x) + lean * y, lean) for y in form.places()]
+        assert form.kind == "appendage" or all(dry), "the deck edge is under water"
     return Afloat(mean, tau, lean, ship.below(mean, tau, deflection, lean))

@@ -146,8 +146,22 @@ def _patrol() -> Ship:
 
 PATROL = _patrol()
 
+
+def _swim(x: np.ndarray) -> np.ndarray:
+    """Rise of a barge's bottom over the last 9 m at both ends."""
+    return 0.4 * np.maximum(np.maximum(9.0 - x, x - 51.0), 0.0)
+
+
+SWIM_BARGE = one("swim-ended barge", 60.0, 12.0, 5.0, 2.6, 3.4, Form(
+    "hull", (0.0, 60.0),
+    panels((NONE, _swim), (const(6.0), _swim), (const(6.0), const(5.0))), CORNERS,
+    knuckles=(9.0, 51.0),
+))  # fmt: skip
+"""A box between knuckles at 9 m and 51 m; its flat raked ends rise out of the water."""
+
 SHIPS = {s.name: s for s in (
-    BOX, VEE, CURVED_VEE, CYLINDER, LOW_CHINE, HIGH_CHINE, ROUND_BILGE, CATAMARAN, PATROL,
+    BOX, VEE, CURVED_VEE, CYLINDER, LOW_CHINE, HIGH_CHINE, ROUND_BILGE, CATAMARAN,
+    SWIM_BARGE, PATROL,
 )}  # fmt: skip
 
 
