@@ -13,8 +13,13 @@ Liquids in box tanks with free surfaces move by the same formulas. Everything is
 from __future__ import annotations
 
 from dataclasses import dataclass, field
+from typing import TYPE_CHECKING
 
+from box_liquid import liquid_centre
 from numpy.polynomial import Polynomial
+
+if TYPE_CHECKING:
+    from hull_forms import Form
 
 
 @dataclass(frozen=True)
@@ -69,7 +74,10 @@ class Mass:
 
 @dataclass(frozen=True)
 class SlackTank:
-    """A tank; length and breadth of the liquid's surface are zero unless it is slack."""
+    """A tank; length and breadth of the liquid's surface are zero unless it is slack.
+
+    With a ``depth`` it is a box, whose liquid may meet its top or bottom when the ship heels.
+    """
 
     name: str
     contents: str
@@ -81,6 +89,12 @@ class SlackTank:
     z: float
     length: float = 0.0
     breadth: float = 0.0
+    depth: float = 0.0
+
+    @property
+    def level(self) -> float:
+        """Depth of the liquid in a box."""
+        return self.volume / (self.length * self.breadth)
 
     @property
     def mass(self) -> float:
@@ -93,6 +107,16 @@ class SlackTank:
     @property
     def fsm_along(self) -> float:
         return self.density * self.breadth * self.length**3 / 12.0
+
+    def moved(self, t: float, tau: float) -> tuple[float, float, float]:
+        """Where the liquid's centre goes from upright and even keel."""
+        if not self.mass:
+            return 0.0, 0.0, 0.0
+        along = self.fsm_along / self.mass
+        across, up = self.fsm / self.mass * t, 0.5 * self.fsm / self.mass * t**2
+        if self.depth:
+            across, up = liquid_centre(self.breadth, self.depth, self.level, t)
+        return -along * tau, across, up + 0.5 * along * tau**2
 
 
 @dataclass(frozen=True)
@@ -136,6 +160,18 @@ class Scene:
                 moments[i] -= r.mass * (r.to[i] - getattr(r, c))
         return Mass("as inclined", total, *(m / total for m in moments))
 
+    def heights(self) -> dict[tuple[int, str], float]:
+        """Heights of test weights that went up or down, by shift and weight; here none does."""
+        return {}
+
+    def offsets(self) -> list[tuple[object, ...]]:
+        """Rows of the table of offsets: station, x, half-breadth, height, line, body; here none."""
+        return []
+
+    def forms(self) -> tuple[Form, ...]:
+        """The bodies that the offsets are of."""
+        return ()
+
     def shift_moments(self) -> list[float]:
         at = {w.name: w.y for w in self.weights}
         mass = {w.name: w.mass for w in self.weights}
@@ -173,6 +209,14 @@ class Scene:
             tau = (x_moment / volume - ship.x) / (along / volume + height - fsm_along / ship.mass)
         return draft, t, tau
 
+    def tangents(self) -> list[float]:
+        """Heel at every shift."""
+        return [self.equilibrium(self.held(m))[1] for m in self.shift_moments()]
+
+    def mark_y(self, _x: float) -> float:
+        """How far off the centreplane the draft marks are."""
+        return self.hull.beam / 2.0
+
     def draft_at(self, x: float, y: float) -> float:
         _, centre, _, _ = self.hull.waterplane()
         draft, t, tau = self.equilibrium()
@@ -180,8 +224,7 @@ class Scene:
 
     def tank_x(self, tank: SlackTank) -> float:
         """Where the liquid's centre lies along the ship at the trim of the test."""
-        tau = self.equilibrium()[2]
-        return tank.x - tank.fsm_along * tau / tank.mass if tank.mass else tank.x
+        return tank.x + tank.moved(0.0, self.equilibrium()[2])[0]
 
     def table_row(self, draft: float, trim: float) -> dict[str, float]:
         """True hydrostatics at the draft amidships and trim, without the allowance."""

@@ -102,29 +102,17 @@ def trial_tables(scene: Scene, style: Style, places: tuple[float, ...]) -> dict[
     w = Writer(style)
     rng = np.random.default_rng(style.seed)
     weights = [(m.name, m.mass, f"CAL {m.name}-26", m.x, m.z) for m in scene.weights]
-    shifts: list[tuple[object, ...]] = [(0, "09:00", m.name, m.y) for m in scene.weights]
-    for n, moves in enumerate(scene.moves, start=1):
-        clock = f"{9 + (12 * n) // 60:02d}:{(12 * n) % 60:02d}"
-        shifts += [(n, clock, name, y) for name, y in moves]
     ledger: list[tuple[object, ...]] = []
     for action, items in (("deduct", scene.deduct), ("add", scene.add)):
         ledger += [(action, m.name, m.mass, m.x, m.y, m.z, "", "", "") for m in items]
     ledger += [("relocate", m.name, m.mass, m.x, m.y, m.z, *(m.to or ())) for m in scene.relocate]
     to = tuple((f"to {n}", k) for n, k in CENTRE)
-    tanks = [
-        (t.name, t.contents, t.state, t.density or "", t.volume or "", *(
-            (scene.tank_x(t), t.y, t.z) if t.mass else ("", "", "")
-        ), t.length or "", t.breadth or "")
-        for t in scene.tanks
-    ]  # fmt: skip
     files = {
         "weights.csv": w.table(
             (("id", ""), ("mass", "mass"), ("certificate", ""), ("x", "length"), ("z", "length")),
             weights,
         ),
-        "shifts.csv": w.table(
-            (("shift", ""), ("time", ""), ("weight", ""), ("y", "length")), shifts
-        ),
+        "shifts.csv": _shifts(scene, w),
         "readings.csv": _readings(scene, style, w, rng),
         "drafts.csv": _drafts(scene, style, w, rng, places),
         "density.csv": w.table(
@@ -138,14 +126,10 @@ def trial_tables(scene: Scene, style: Style, places: tuple[float, ...]) -> dict[
                 )
             ],
         ),
-        "hydrostatics.csv": _hydrostatics(scene, style, w),
+        **_shape(scene, style, w),
     }
     if scene.tanks:
-        files["tanks.csv"] = w.table(
-            (("tank", ""), ("contents", ""), ("state", ""), ("density", "density"),
-             ("volume", "volume"), *CENTRE, ("length", "length"), ("breadth", "length")),
-            tanks,
-        )  # fmt: skip
+        files["tanks.csv"] = _tanks(scene, w)
     if scene.rolls:
         point = "," if style.semicolon else "."
         runs = [
@@ -160,6 +144,37 @@ def trial_tables(scene: Scene, style: Style, places: tuple[float, ...]) -> dict[
     return files
 
 
+def _shifts(scene: Scene, w: Writer) -> str:
+    rows: list[tuple[object, ...]] = [(0, "09:00", m.name, m.y) for m in scene.weights]
+    for n, moves in enumerate(scene.moves, start=1):
+        clock = f"{9 + (12 * n) // 60:02d}:{(12 * n) % 60:02d}"
+        rows += [(n, clock, name, y) for name, y in moves]
+    columns = [("shift", ""), ("time", ""), ("weight", ""), ("y", "length")]
+    heights = scene.heights()
+    if heights:
+        columns.append(("z", "length"))
+        rows = [(*row, heights.get((row[0], row[2]), "")) for row in rows]  # type: ignore[arg-type]
+    return w.table(columns, rows)
+
+
+def _tanks(scene: Scene, w: Writer) -> str:
+    columns = [
+        ("tank", ""), ("contents", ""), ("state", ""), ("density", "density"),
+        ("volume", "volume"), *CENTRE, ("length", "length"), ("breadth", "length"),
+    ]  # fmt: skip
+    rows: list[tuple[object, ...]] = [
+        (t.name, t.contents, t.state, t.density or "", t.volume or "", *(
+            (scene.tank_x(t), t.y, t.z) if t.mass else ("", "", "")
+        ), t.length or "", t.breadth or "")
+        for t in scene.tanks
+    ]  # fmt: skip
+    if any(t.depth for t in scene.tanks):
+        columns += [("level", "length"), ("depth", "length"), ("shape", "")]
+        boxes = [(t.level, t.depth, "box") if t.depth else ("", "", "") for t in scene.tanks]
+        rows = [(*row, *box) for row, box in zip(rows, boxes, strict=True)]
+    return w.table(columns, rows)
+
+
 def _readings(scene: Scene, style: Style, w: Writer, rng: np.random.Generator) -> str:
     fraction = style.reading_fraction
     kind = "" if fraction else "reading"
@@ -167,8 +182,7 @@ def _readings(scene: Scene, style: Style, w: Writer, rng: np.random.Generator) -
     write: Callable[[float], object] = w.inches if fraction else float
     wide = 5 if style.swings else 3 if style.repeats else 1
     rows: list[tuple[object, ...]] = []
-    for n, moment in enumerate(scene.shift_moments()):
-        tangent = scene.equilibrium(scene.held(moment))[1]
+    for n, tangent in enumerate(scene.tangents()):
         for device, length in scene.lengths.items():
             value = length * (tangent + scene.zeros[device])
             if device in style.swings:
@@ -186,13 +200,25 @@ def _readings(scene: Scene, style: Style, w: Writer, rng: np.random.Generator) -
 def _drafts(
     scene: Scene, style: Style, w: Writer, rng: np.random.Generator, places: tuple[float, ...]
 ) -> str:
-    half = scene.hull.beam / 2.0
     rows: list[tuple[object, ...]] = []
     for x in places:
+        half = scene.mark_y(x)
         for side, y in (("P", -half), ("S", half)):
             draft = scene.draft_at(x, y) + style.noise_draft * float(rng.normal())
             rows.append((x, side, w.feet(draft) if style.feet_inches else draft, half))
     return w.table((("x", "length"), ("side", ""), ("draft", "length"), ("y", "length")), rows)
+
+
+def _shape(scene: Scene, style: Style, w: Writer) -> dict[str, str]:
+    """The hull's table: hydrostatics, or offsets where the scene has them."""
+    rows = scene.offsets()
+    if not rows:
+        return {"hydrostatics.csv": _hydrostatics(scene, style, w)}
+    columns = [
+        ("station", ""), ("x", "length"), ("half breadth", "length"), ("height", "length"),
+        ("line", ""), ("body", ""),
+    ]  # fmt: skip
+    return {"offsets.csv": w.table(columns, rows)}
 
 
 def _hydrostatics(scene: Scene, style: Style, w: Writer) -> str:
@@ -206,6 +232,14 @@ def _hydrostatics(scene: Scene, style: Style, w: Writer) -> str:
         names.insert(1, "trim")
     rows = [[scene.table_row(d, t)[n] for n in names] for t in style.trims for d in drafts]
     return w.table([(n, kinds.get(n, "length")) for n in names], rows)
+
+
+def _bodies(scene: Scene, w: Writer) -> str:
+    return "".join(
+        f'\n[[bodies]]\nname = "{form.name}"\nkind = "{form.kind}"\n'
+        f'y = "{w.quantity(form.y, "length")}"\nmirrored = {str(form.mirrored).lower()}\n'
+        for form in scene.forms()
+    )
 
 
 def trial_toml(scene: Scene, style: Style, head: Mapping[str, str]) -> str:
@@ -253,7 +287,7 @@ set = "{head["rules"]}"
 [drafts]
 marks_from = "baseline"
 
-[hydrostatics]
+[{"offsets" if scene.offsets() else "hydrostatics"}]
 volume = "moulded"
 allowance = "{scene.allowance * 100:.4g} %"
-{head.get("more", "")}{devices}{"".join(person(p) for p in scene.people)}"""
+{_bodies(scene, w)}{head.get("more", "")}{devices}{"".join(person(p) for p in scene.people)}"""
