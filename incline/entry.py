@@ -115,6 +115,7 @@ def lever_curve(found: Yield, hull: Hull | None) -> LeverCurve:
     wall_sided, _ = WallSided().at(tangents, ship, found.vcg)
     straight = b.yb + (b.kb + b.bmt) * tangents
     return LeverCurve(
+        shifts=tuple(map(float, heel)),
         tangents=tuple(map(float, tangents)),
         integrated=tuple(map(float, integrated)),
         wall_sided=tuple(map(float, wall_sided)),

@@ -114,7 +114,7 @@ class TankLiquids:
         return moment
 
     def _moment(self, tangent: Floats, fsm: Floats) -> Floats:
-        moment = fsm.sum(axis=-1)[..., None] * tangent
+        moment: Floats = fsm.sum(axis=-1)[..., None] * tangent
         for i, tank in self.boxes:
             moment = moment + fsm[..., i, None] * (reach(tank, tangent) - tangent)
         return moment

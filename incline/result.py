@@ -205,9 +205,11 @@ class MethodResult:
 class LeverCurve:
     """N(t) = y_B + z_B t [m] over tangents of heel, and what each method puts in its place.
 
-    ``integrated`` is empty without a hull.
+    ``integrated`` is empty without a hull. ``shifts`` are the fitted tangents of the shifts, list
+    included.
     """
 
+    shifts: tuple[float, ...]
     tangents: tuple[float, ...]
     integrated: tuple[float, ...]
     wall_sided: tuple[float, ...]

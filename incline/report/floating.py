@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING, Any
 from incline.report.canvas_backend import FigureFlowable
 from incline.report.document import Sheet, note, paragraph, part
 from incline.report.figures_waterline import waterline_plot
+from incline.report.hull import hull_entry
 from incline.report.show import MISSING, NOT_DETERMINED, NOT_RECORDED
 from incline.report.table_rows import table_rows
 from incline.report.tables import Column, facts, grid, steps
@@ -29,12 +30,18 @@ def as_inclined(sheet: Sheet) -> list[Any]:
         *part("Density of the water"),
         *_density(sheet),
         *_changes(sheet),
-        *part("Entry into the hydrostatic table"),
+        *part(_entry_title(sheet)),
         *_entry(sheet),
         *table_rows(sheet),
+        *hull_entry(sheet),
         *part("Displacement and metacentre"),
         *_displacement(sheet),
     ]
+
+
+def _entry_title(sheet: Sheet) -> str:
+    used = sheet.reduction.outcome.as_inclined.entry is not None
+    return "Entry into the hydrostatic table" if used else "Drafts during the shifts"
 
 
 def _drafts(sheet: Sheet) -> list[Any]:

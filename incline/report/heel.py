@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Any
 from incline.report.canvas_backend import FigureFlowable
 from incline.report.document import Sheet, note, part
 from incline.report.figures import common_plot, device_plots, residual_plot
+from incline.report.hull import methods
 from incline.report.rolling import rolling_period
 from incline.report.show import MISSING, signed
 from incline.report.tables import Column, grid, steps
@@ -34,6 +35,7 @@ def heel_fit(sheet: Sheet) -> list[Any]:
         ),
         *part("Each device by itself", 80.0),
         *_devices(sheet),
+        *methods(sheet),
         *rolling_period(sheet),
         *part("Tangent against moment", common.height + 16),
         common,
