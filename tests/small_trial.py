@@ -102,11 +102,11 @@ forward,1,1025,9.5,1
 aft,2,1025,9.5,2
 """,
     "tanks.csv": """\
-tank,contents,state,density [t/m3],level [m],volume [m3],mass [t],x [m],y [m],z [m],fsm [t m],second moment [m4],length [m],breadth [m],shape
-1 P,water,slack,1.000,0.5,,,10,-2,0.25,,,4,3,box
-2 C,gas oil,pressed full,0.85,,10,8.5,20,0,1,,,,,
-3 S,,empty,,,,,,,,,,,,
-4 S,ballast,slack,1.025,,,4.1,40,2,0.5,2.05,2,,,
+tank,contents,state,density [t/m3],level [m],volume [m3],mass [t],x [m],y [m],z [m],fsm [t m],second moment [m4],length [m],breadth [m],shape,depth [m]
+1 P,water,slack,1.000,0.5,,,10,-2,0.25,,,4,3,box,1.2
+2 C,gas oil,pressed full,0.85,,10,8.5,20,0,1,,,,,,2
+3 S,,empty,,,,,,,,,,,,,
+4 S,ballast,slack,1.025,,,4.1,40,2,0.5,2.05,2,,,,
 """,
     "ledger.csv": """\
 action,item,mass [t],x [m],y [m],z [m],to x [m],to y [m],to z [m],basis
@@ -291,7 +291,6 @@ STATED: dict[str, str] = {
             "u mass [t]": "0.1 . . 0.2",
             "u fsm [%]": "5 . . 10",
             "tolerance y [m]": ". 0.1 . .",
-            "depth [m]": "1.2 2 . .",
             "type": "deep . . .",
         },
     ),

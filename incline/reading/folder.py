@@ -2,40 +2,32 @@
 
 from __future__ import annotations
 
-import difflib
-import hashlib
 import os
 from pathlib import Path
 from typing import TYPE_CHECKING, TypeVar
 
-from incline.errors import Defect, FieldDataError, Where
-from incline.reading.collect import Collector, folded, quoted
-from incline.reading.csvtable import read_table
-from incline.reading.headings import open_sheet
-from incline.reading.hydrostatics import TABLE_COLUMNS, read_hydrostatics
-from incline.reading.ledger import (
-    CHANGE_COLUMNS,
-    ITEM_COLUMNS,
-    check_names,
-    check_no_test_weights,
-    read_changes,
-    read_items,
-)
+from incline.errors import FieldDataError
+from incline.reading.collect import Collector, folded
+from incline.reading.hydrostatics import read_hydrostatics
+from incline.reading.ledger import check_names, check_no_test_weights, read_changes, read_items
 from incline.reading.oddities import shift_remarks, weight_remarks
-from incline.reading.readings import check_devices, check_shifts, read_readings, reading_columns
-from incline.reading.rolls import ROLL_COLUMNS, read_rolls
+from incline.reading.offsets import read_bodies
+from incline.reading.readings import check_devices, check_shifts, read_readings
+from incline.reading.rolls import read_rolls
 from incline.reading.settings import read_head
-from incline.reading.tanks import TANK_COLUMNS, read_tanks
-from incline.reading.waterline import (
-    DRAFT_COLUMNS,
-    SAMPLE_COLUMNS,
-    check_drafts,
-    read_drafts,
-    read_samples,
+from incline.reading.tables import (
+    OFFSETS,
+    TABLE,
+    TABLES,
+    Tables,
+    digest_of,
+    read_files,
+    strangers,
 )
+from incline.reading.tanks import read_tanks
+from incline.reading.tomlfile import FILE
+from incline.reading.waterline import check_drafts, check_layers, read_drafts, read_samples
 from incline.reading.weights import (
-    SHIFT_COLUMNS,
-    WEIGHT_COLUMNS,
     ShiftTable,
     check_moments,
     check_moves,
@@ -45,42 +37,32 @@ from incline.reading.weights import (
 from incline.record import Trial
 
 if TYPE_CHECKING:
-    from collections.abc import Callable, Mapping, Sequence
+    from collections.abc import Callable, Sequence
 
-    from incline.reading.cells import Column, Sheet
+    from incline.reading.cells import Sheet
     from incline.reading.settings import Frame, Head
-    from incline.record import DraftReading, Item, Reading, RollingRun, Tank, Weight
+    from incline.record import (
+        DraftReading,
+        HydrostaticTable,
+        Item,
+        Offsets,
+        Reading,
+        RollingRun,
+        Sample,
+        Tank,
+        Weight,
+    )
 
 __all__ = ["read_trial"]
 
-_COLUMNS: dict[str, tuple[Column, ...]] = {
-    "weights.csv": WEIGHT_COLUMNS,
-    "shifts.csv": SHIFT_COLUMNS,
-    "readings.csv": (),
-    "drafts.csv": DRAFT_COLUMNS,
-    "density.csv": SAMPLE_COLUMNS,
-    "tanks.csv": TANK_COLUMNS,
-    "ledger.csv": ITEM_COLUMNS,
-    "changes.csv": CHANGE_COLUMNS,
-    "hydrostatics.csv": TABLE_COLUMNS,
-    "rolls.csv": ROLL_COLUMNS,
-}
-_FILES = ("trial.toml", *_COLUMNS)
-_OPTIONAL = frozenset({"weights.csv", "tanks.csv", "ledger.csv", "changes.csv", "rolls.csv"})
-_ROWS = {
-    "weights.csv": "test weights",
-    "shifts.csv": "shifts",
-    "readings.csv": "readings",
-    "drafts.csv": "draft readings",
-    "density.csv": "water samples",
-    "hydrostatics.csv": "hydrostatics",
-}
-"""What stands in the rows of the tables that must have some."""
 _ABSENT = {
     "tanks.csv": "No tanks.csv: no liquid is deducted and no free surface is taken.",
     "ledger.csv": "No ledger.csv: no item is deducted, added or relocated.",
 }
-_EXPECTED = "a file that a trial must have"
+_BOTH = (
+    "offsets.csv and hydrostatics.csv are both there and trial.toml does not say which to use: the"
+    " offsets count."
+)
 _Record = TypeVar("_Record")
 
 
@@ -91,63 +73,12 @@ def read_trial(folder: str | os.PathLike[str]) -> Trial:
     """
     path = Path(folder)
     collector = Collector()
-    if not path.is_dir():
-        found = "a file" if path.exists() else "no such folder"
-        where = Where(str(path))
-        raise FieldDataError([Defect(where, "file-missing", found, "the folder of a trial")])
-    files = _read_files(path, collector)
-    remarks = _strangers(path, files, collector)
+    files = read_files(path, (FILE, *TABLES), collector)
+    remarks = strangers(path, files, collector)
     trial = _Reader(files, collector).trial(str(path), remarks)
     if collector.defects:
         raise FieldDataError(folded(collector.defects))
     return trial
-
-
-def _read_files(path: Path, collector: Collector) -> dict[str, bytes]:
-    """The bytes of the files that are there; a required one that is not is a defect."""
-    files: dict[str, bytes] = {}
-    for name in _FILES:
-        try:
-            files[name] = (path / name).read_bytes()
-        except FileNotFoundError:
-            if name not in _OPTIONAL:
-                collector.add(Where(name), "file-missing", "no such file", _EXPECTED)
-        except OSError as error:
-            found = error.strerror or "an error"
-            collector.add(Where(name), "file-unreadable", found, "a file that can be read")
-    return files
-
-
-def _strangers(path: Path, files: Mapping[str, bytes], collector: Collector) -> list[str]:
-    """Tables that are none of a trial's: a defect when a name looks like a slip, else a remark."""
-    remarks: list[str] = []
-    try:
-        names = sorted(p.name for p in path.iterdir() if p.suffix.lower() == ".csv")
-    except OSError:
-        return remarks
-    for name in names:
-        if name in _COLUMNS or (
-            name.lower() in files and (path / name).samefile(path / name.lower())
-        ):
-            continue
-        absent = sorted(_OPTIONAL - files.keys())
-        close = difflib.get_close_matches(name.lower(), absent, n=1, cutoff=0.8)
-        if close:
-            hint = "rename the file, or move it out of the folder"
-            found = f"no such file, but a file {quoted(name)}"
-            collector.add(Where(close[0]), "file-missing", found, "the name as given here", hint)
-        else:
-            remarks.append(f"The file {quoted(name)} is none of a trial's tables and was not read.")
-    return remarks
-
-
-def _digest(files: Mapping[str, bytes]) -> str:
-    """Sha256 over the files in the order of their names: name, length and bytes of each."""
-    digest = hashlib.sha256()
-    for name in sorted(files):
-        digest.update(f"{name}\0{len(files[name])}\0".encode())
-        digest.update(files[name])
-    return digest.hexdigest()
 
 
 class _Reader:
@@ -156,42 +87,22 @@ class _Reader:
     def __init__(self, files: dict[str, bytes], collector: Collector) -> None:
         self.files = files
         self.collector = collector
-        self.head: Head = read_head(files.get("trial.toml"), collector)
-        self.sheets = {name: self._sheet(name) for name in _COLUMNS}
-
-    def _sheet(self, name: str) -> Sheet | None:
-        """A table with its header matched; None when absent, unreadable or without a header."""
-        data = self.files.get(name)
-        if data is None:
-            return None
-        before = len(self.collector.defects)
-        raw = read_table(name, data, self.collector)
-        unhurt = len(self.collector.defects) == before
-        sheet = None
-        if raw is not None:
-            sheet = open_sheet(raw, _COLUMNS[name] or reading_columns(raw), self.collector)
-        empty = sheet is not None and not sheet.rows
-        if (empty or raw is None) and unhurt and name not in _OPTIONAL:
-            self._empty(name, header=empty)
-        return sheet
-
-    def _empty(self, name: str, *, header: bool) -> None:
-        found = "a header and no rows" if header else "no rows"
-        below = f"a row of {_ROWS[name]} below the header"
-        expected = below if header else f"a header and {below}"
-        self.collector.add(Where(name), "table-empty", found, expected)
+        self.tables = Tables(files, collector)
+        self.sheets = self.tables.sheets
+        self.head: Head = read_head(files.get(FILE), self.tables.hull, collector)
 
     def trial(self, folder: str, remarks: list[str]) -> Trial:
         """Read everything; of no use once a defect has been collected."""
-        head, frame = self.head, self.head.frame
+        head = self.head
         weights, shifts, by_moment = self._weights()
         drafts, assumed = self._drafts()
-        samples, warm = self._pairs("density.csv", read_samples)
+        samples, warm = self._samples()
         tanks, partial = self._pairs("tanks.csv", read_tanks)
-        table, rough = read_hydrostatics(self.sheets["hydrostatics.csv"], frame)
+        table, rough = self._table()
+        offsets, shape = self._offsets()
         return Trial(
             folder=folder,
-            digest=_digest(self.files),
+            digest=digest_of(self.files),
             vessel=head.vessel,
             occasion=head.occasion,
             settings=head.settings,
@@ -206,6 +117,7 @@ class _Reader:
             items=self._items(weights, tanks),
             changes=self._rows("changes.csv", read_changes),
             table=table,
+            offsets=offsets,
             rolls=self._rolls(),
             environment=head.environment,
             hydrometer=head.hydrometer,
@@ -216,6 +128,7 @@ class _Reader:
                 *warm,
                 *partial,
                 *rough,
+                *shape,
                 *(said for name, said in _ABSENT.items() if name not in self.files),
             ),
         )
@@ -241,11 +154,7 @@ class _Reader:
             return weights, ShiftTable(whole=False), []
         table = read_shifts(sheet, self.head.frame)
         if not weights and any(shift.moves for shift in table.shifts):
-            if "weights.csv" not in self.files:
-                found = "no such file"
-                self.collector.add(Where("weights.csv"), "file-missing", found, _EXPECTED)
-            elif self.sheets["weights.csv"] or not self._hurt("weights.csv"):
-                self._empty("weights.csv", header=self.sheets["weights.csv"] is not None)
+            self.tables.lack("weights.csv")
         if table.whole and (table.by_moment or sheet.has("weight")):
             if weights:
                 check_moves(sheet, weights, table.shifts)
@@ -261,8 +170,29 @@ class _Reader:
             *shift_remarks(weights, table.shifts),
         ]  # fmt: skip
 
-    def _hurt(self, name: str) -> bool:
-        return any(d.where.file == name for d in self.collector.defects)
+    def _samples(self) -> tuple[tuple[Sample, ...], list[str]]:
+        samples, remarks = self._pairs("density.csv", read_samples)
+        sheet = self.sheets["density.csv"]
+        if sheet is not None and self.head.settings.layers:
+            check_layers(sheet, samples)
+        return samples, remarks
+
+    def _table(self) -> tuple[HydrostaticTable | None, list[str]]:
+        if not self.tables.hull.table:
+            return None, []
+        return read_hydrostatics(self.sheets[TABLE], self.head.frame)
+
+    def _offsets(self) -> tuple[Offsets | None, list[str]]:
+        plan, there = self.head.plan, self.tables.hull
+        if plan.said and not there.offsets:
+            self.tables.lack(OFFSETS, f"the hull's offsets, since {FILE} has {plan.said[0]}")
+        sheet = self.sheets[OFFSETS] if there.offsets else None
+        if sheet is None:
+            return None, []
+        offsets, remarks = read_bodies(sheet, plan, self.head.frame.hull)
+        if there.table and not self.head.use_said:
+            remarks.append(_BOTH)
+        return offsets, remarks
 
     def _readings(self, shifts: ShiftTable) -> tuple[Reading, ...]:
         sheet = self.sheets["readings.csv"]

@@ -8,31 +8,37 @@ from typing import TYPE_CHECKING
 from incline.errors import Where
 from incline.reading.aboard import read_device, read_person
 from incline.reading.assumptions import read_assumed, read_correlations
+from incline.reading.bodies import HullPlan, read_plan
 from incline.reading.collect import BAD, Sign, quoted
+from incline.reading.hull_choices import read_layers, read_method, read_use
 from incline.reading.occasion import read_environment, read_hydrometer, read_occasion
 from incline.reading.overrides import read_overrides
 from incline.reading.plausible import WATER, Hull, check, check_vessel, hull_of
 from incline.reading.rolls import read_condition
-from incline.reading.tomlfile import FILE, Document, shown
-from incline.reading.uncertainty import of_key, present
-from incline.record import Device, Environment, Occasion, Person, Settings, Stated, Vessel
-from incline.units import DENSITY, FRACTION, LENGTH
+from incline.reading.tomlfile import FILE, Document
+from incline.reading.volume import read_allowance, read_stated
+from incline.record import Device, Environment, Occasion, Person, Settings, Vessel
+from incline.units import DENSITY, LENGTH
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
     from typing import Literal
 
     from incline.reading.collect import Collector
+    from incline.reading.hull_choices import HullFiles
     from incline.reading.tomlfile import Section
     from incline.record import Statements
 
-__all__ = ["Frame", "Head", "read_head"]
+__all__ = [
+    "Frame", "Head", "check_ids", "given_density", "read_axes", "read_head", "read_units",
+    "read_vessel",
+]  # fmt: skip
 
 _BASE, _KEEL = "baseline", "underside of keel"
 _SECTIONS = (
     "vessel", "test", "axes", "output", "rules", "method", "drafts", "hydrostatics", "density",
     "devices", "people", "limits", "uncertainty", "correlations", "rolling", "evidence",
-    "environment", "instruments", "overrides",
+    "environment", "instruments", "overrides", "offsets", "bodies",
 )  # fmt: skip
 
 
@@ -59,7 +65,11 @@ class Frame:
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Head:
-    """All of ``trial.toml``. ``complete`` is False when the devices could not be looked at."""
+    """All of ``trial.toml``. ``complete`` is False when the devices could not be looked at.
+
+    ``plan`` is what it says of the offsets; ``use_said`` whether it chooses between them and the
+    hydrostatic table.
+    """
 
     vessel: Vessel
     occasion: Occasion
@@ -69,21 +79,23 @@ class Head:
     environment: Environment
     hydrometer: tuple[float, float] | None
     frame: Frame
+    plan: HullPlan
+    use_said: bool
     complete: bool
 
 
-def read_head(data: bytes | None, collector: Collector) -> Head:
+def read_head(data: bytes | None, files: HullFiles, collector: Collector) -> Head:
     """Read ``trial.toml``; ``None`` when there is no such file, which is the caller's defect."""
     document = Document(data, collector)
-    vessel, sound = _vessel(document.section("vessel"))
-    settings, frame = _choices(document, vessel, sound=sound)
+    vessel, sound = read_vessel(document.section("vessel"))
+    settings, frame = _choices(document, vessel, files, sound=sound)
     devices = tuple(read_device(s) for s in document.sections("devices"))
     if document.readable and not document.has("devices"):
         where, expected = Where(FILE, 0, "devices"), "a section [[devices]] for each device"
         collector.add(where, "key-missing", "no devices", expected)
     people = tuple(read_person(s, frame.hull) for s in document.sections("people"))
-    _check_ids([d.id for d in devices], "devices", "id", collector)
-    _check_ids([p.name for p in people], "people", "name", collector)
+    check_ids([d.id for d in devices], "devices", "id", collector)
+    check_ids([p.name for p in people], "people", "name", collector)
     head = Head(
         vessel=vessel,
         occasion=read_occasion(document.section("test")),
@@ -93,13 +105,16 @@ def read_head(data: bytes | None, collector: Collector) -> Head:
         devices=devices,
         people=people,
         frame=frame,
+        plan=_plan(document, frame.hull, files, collector),
+        use_said=document.section("hydrostatics").value("use") is not None,
         complete=bool(devices),
     )
     document.close(_SECTIONS)
     return head
 
 
-def _check_ids(names: Sequence[str], section: str, key: str, collector: Collector) -> None:
+def check_ids(names: Sequence[str], section: str, key: str, collector: Collector) -> None:
+    """Names of the sections ``[[section]]`` must differ, whatever their case."""
     folded = [name.casefold() for name in names]
     for n, name in enumerate(folded, start=1):
         first = folded.index(name) + 1
@@ -109,7 +124,13 @@ def _check_ids(names: Sequence[str], section: str, key: str, collector: Collecto
             collector.add(where, "id-twice", quoted(names[n - 1]), expected)
 
 
-def _vessel(section: Section) -> tuple[Vessel, bool]:
+def _plan(document: Document, hull: Hull, files: HullFiles, collector: Collector) -> HullPlan:
+    plan = read_plan(document, hull, needed=files.offsets)
+    check_ids([b.name for b in plan.bodies], "bodies", "name", collector)
+    return plan
+
+
+def read_vessel(section: Section) -> tuple[Vessel, bool]:
     """The vessel, and whether a ship can have its dimensions."""
     vessel = Vessel(
         name=section.text("name", required=True),
@@ -125,26 +146,44 @@ def _vessel(section: Section) -> tuple[Vessel, bool]:
     return vessel, check_vessel(section, vessel)
 
 
-def _choices(document: Document, vessel: Vessel, *, sound: bool) -> tuple[Settings, Frame]:
-    axes, output = document.section("axes"), document.section("output")
-    rules, method = document.section("rules"), document.section("method")
+def read_axes(section: Section) -> Literal["after perpendicular", "amidships"]:
+    """Where x is zero in every file."""
+    origin: Literal["after perpendicular", "amidships"] = section.choice(
+        "x_origin", ("after perpendicular", "amidships")
+    )
+    section.close()
+    return origin
+
+
+def read_units(section: Section) -> Literal["metric", "us"]:
+    """Units of what the program prints."""
+    units: Literal["metric", "us"] = section.choice("units", ("metric", "us"))
+    section.close()
+    return units
+
+
+def _choices(
+    document: Document, vessel: Vessel, files: HullFiles, *, sound: bool
+) -> tuple[Settings, Frame]:
+    axes, rules, method = (document.section(n) for n in ("axes", "rules", "method"))
     drafts, table = document.section("drafts"), document.section("hydrostatics")
     density, limits = document.section("density"), document.section("limits")
     rolling, evidence = document.section("rolling"), document.section("evidence")
     marks_from = drafts.choice("marks_from", (_BASE, _KEEL))
     table_from = table.choice("drafts_from", (_BASE, _KEEL), _BASE)
     keel = _keel_thickness(drafts, needed=_KEEL in (marks_from, table_from))
-    x_origin: Literal["after perpendicular", "amidships"] = axes.choice(
-        "x_origin", ("after perpendicular", "amidships")
-    )
+    x_origin = read_axes(axes)
+    use, from_offsets = read_use(table, files)
     settings = Settings(
         x_origin=x_origin,
-        units=output.choice("units", ("metric", "us")),
+        units=read_units(document.section("output")),
         rule_set=rules.text("set"),
-        method=method.choice("heel", ("straight-line", "wall-sided", "heeled-hull"), "") or None,
-        allowance=_allowance(table),
+        method=read_method(method, from_offsets=from_offsets),
+        allowance=read_allowance(table, needed=files.table),
         keel_thickness=keel if marks_from == _KEEL else 0.0,
         interpolation=method.choice("interpolation", ("cubic", "linear"), "cubic"),
+        use=use,
+        layers=read_layers(density, from_offsets=from_offsets),
         kg_limit=limits.maybe("kg", LENGTH, Sign.POSITIVE),
         assumed=read_assumed(document.section("uncertainty")),
         correlations=read_correlations(document.sections("correlations")),
@@ -161,25 +200,16 @@ def _choices(document: Document, vessel: Vessel, *, sound: bool) -> tuple[Settin
         x_shift=x_shift,
         marks_down=settings.keel_thickness,
         table_down=keel if table_from == _KEEL else 0.0,
-        table_density=_given(table, "density"),
-        relative_to=_given(density, "relative_to"),
-        table_stated=_table_stated(table),
+        table_density=given_density(table, "density"),
+        relative_to=given_density(density, "relative_to"),
+        table_stated=read_stated(table),
     )
-    for section in (axes, output, rules, method, drafts, table, density, limits, rolling, evidence):
+    for section in (rules, method, drafts, table, density, limits, rolling, evidence):
         section.close()
     return settings, frame
 
 
-def _table_stated(section: Section) -> dict[str, Stated]:
-    """Uncertainties of the hydrostatic table: volume as a fraction, KM and LCB [m]."""
-    return present(
-        volume=of_key(section, "volume", FRACTION, 1.0, Sign.POSITIVE),
-        km=of_key(section, "km", LENGTH, BAD, share=False),
-        lcb=of_key(section, "lcb", LENGTH, BAD, share=False),
-    )
-
-
-def _given(section: Section, key: str) -> float | None:
+def given_density(section: Section, key: str) -> float | None:
     """A density; BAD also when its section cannot be looked at."""
     value = section.maybe(key, DENSITY, Sign.POSITIVE)
     return value if section.readable and check(section, key, value, WATER) else BAD
@@ -195,19 +225,3 @@ def _keel_thickness(section: Section, *, needed: bool) -> float:
             "keel_thickness", "value-wrong", quoted(section.text("keel_thickness")), expected
         )
     return 0.0
-
-
-def _allowance(section: Section) -> float | None:
-    """Allowance for shell and appendages on a moulded volume; None when the volume is extreme."""
-    moulded = section.choice("volume", ("moulded", "extreme")) == "moulded"
-    if "volume" in section.failed:
-        return section.maybe("allowance", FRACTION, Sign.NOT_NEGATIVE)
-    if moulded:
-        return section.need("allowance", FRACTION, Sign.NOT_NEGATIVE)
-    if section.value("allowance") is not None:
-        found, expected = (
-            quoted(shown(section.value("allowance"))),
-            "no allowance on an extreme volume",
-        )
-        section.fault("allowance", "value-wrong", found, expected)
-    return None

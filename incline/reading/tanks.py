@@ -38,6 +38,10 @@ TANK_COLUMNS = (
     Column("depth", LENGTH, sign=Sign.POSITIVE),
     Column("type"),
 )
+_NO_DEPTH = (
+    "The tank {} is a box without its depth: its free surface counts as a fixed moment, and whether"
+    " it reaches the tank's top when the ship heels cannot be told."
+)
 _MASS_AGREES = 0.005
 _FSM_AGREES = 0.01
 _State = Literal["empty", "pressed full", "slack"]
@@ -58,6 +62,9 @@ def read_tanks(sheet: Sheet, frame: Frame) -> tuple[tuple[Tank, ...], list[str]]
             row.fault("tank", "id-twice", quoted(name), expected)
         state = row.choice("state", states)
         mass, centre = _liquid(row, state, frame)
+        box = _is_box(row)
+        if state == "slack" and box and not row.raw("depth"):
+            remarks.append(_NO_DEPTH.format(name))
         fsm, basis = _free_surface(row, state)
         tanks.append(
             Tank(
@@ -76,10 +83,17 @@ def read_tanks(sheet: Sheet, frame: Frame) -> tuple[tuple[Tank, ...], list[str]]
                 length=row.maybe("length"),
                 breadth=row.maybe("breadth"),
                 type=row.choice("type", types, "") or "",
+                box=box and bool(row.raw("depth")),
                 stated=_stated(row, name, state, {"mass": mass, "fsm": fsm}, remarks),
             )
         )
     return tuple(tanks), remarks
+
+
+def _is_box(row: Row) -> bool:
+    """Whether a tank is a box whose surface and level are known; its depth may not be."""
+    known = all(row.raw(column) for column in ("length", "breadth", "level"))
+    return known and row.raw("shape").casefold() == "box"
 
 
 def _stated(

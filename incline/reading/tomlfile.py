@@ -166,6 +166,15 @@ class Section:
         self.fault(key, "value-wrong", quoted(shown(found)), expected)
         return BAD
 
+    def flag(self, key: str) -> bool:
+        """``true`` or ``false`` without quotation marks; False when absent or after a defect."""
+        found = self.value(key)
+        if found is None or isinstance(found, bool):
+            return bool(found)
+        expected = "true or false, without quotation marks"
+        self.fault(key, "value-wrong", quoted(shown(found)), expected)
+        return False
+
     def close(self) -> None:
         """Collect every key that was never asked for; call it last."""
         for key in self._values.keys() - self._asked.keys():

@@ -11,7 +11,7 @@ _CURLY = re.compile("[“”„‟‘’″]")
 _LINE = re.compile(r"\s*([A-Za-z0-9_-]+)\s*=\s*(.*?)\s*")
 _BRACKETS = "a section in brackets, such as [vessel], or [[devices]] for one of several"
 _STATEMENT = 'a line such as name = "value", a section in brackets, or a remark after #'
-_ONCE = "each section once; only [[devices]], [[people]] and [[correlations]] may come again"
+_ONCE = "each section once; only those in double brackets, such as [[devices]], may come again"
 _WORDS = {
     "Invalid date or datetime": "a day of the calendar: there is no such day",
     "Cannot overwrite": "each name once in its section",

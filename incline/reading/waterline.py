@@ -24,7 +24,10 @@ if TYPE_CHECKING:
 
     Side = Literal["P", "S", "C"]
 
-__all__ = ["DRAFT_COLUMNS", "SAMPLE_COLUMNS", "check_drafts", "read_drafts", "read_samples"]
+__all__ = [
+    "DRAFT_COLUMNS", "SAMPLE_COLUMNS", "SIDE_WORDS", "check_drafts", "check_layers", "read_drafts",
+    "read_samples",
+]  # fmt: skip
 
 DRAFT_COLUMNS = (
     Column("x", LENGTH, required=True),
@@ -50,9 +53,9 @@ _HALF_STATED = (
 _NONE_AFT = (
     "x counts from amidships and no draft mark stands abaft it: check x_origin in trial.toml."
 )
-_SIDES: dict[str, Side] = {
-    "port": "P", "starboard": "S", "stbd": "S", "centre": "C", "center": "C", "cl": "C",
-}  # fmt: skip
+SIDE_WORDS: dict[str, Literal["P", "S"]] = {"port": "P", "starboard": "S", "stbd": "S"}
+"""Words for the sides of a ship, in lower case."""
+_SIDES: dict[str, Side] = {**SIDE_WORDS, "centre": "C", "center": "C", "cl": "C"}
 _APART = 0.01
 """Marks closer than this share of the length stand at one place."""
 
@@ -228,3 +231,18 @@ def _density_stated(row: Row, relative_to: float) -> dict[str, Stated]:
     """The uncertainty of a sample's density [t/m3], from that of its relative density too."""
     said = combined(of_row(row, "density", "relative density").values())
     return {"density": replace(said, u=said.u * relative_to)} if said else {}
+
+
+def check_layers(sheet: Sheet, samples: Sequence[Sample]) -> None:
+    """Water in layers needs the depth of every sample, and two depths at least."""
+    why = "since [density] in trial.toml takes the water as layers"
+    if not sheet.has("depth"):
+        sheet.lack("depth", f"a column depth with its unit, such as depth [m], {why}")
+        return
+    for row, sample in zip(sheet.rows, samples, strict=True):
+        if sample.depth is None:
+            row.missing("depth", f"the depth of the sample, {why}")
+    depths = [s.depth for s in samples if s.depth is not None]
+    if len(depths) == len(samples) > 0 and all(d == depths[0] for d in depths):
+        found, expected = "samples at one depth", f"samples at two depths at least, {why}"
+        sheet.collector.add(Where(sheet.file, 0, "depth"), "depths-too-few", found, expected)

@@ -23,9 +23,7 @@ _MOST = 24
 """Sections drawn; of more, some are left out."""
 
 
-def section_plot(
-    trial: Trial, offsets: Offsets, ship: AsInclined, show: Show, width: float
-) -> Figure:
+def section_plot(offsets: Offsets, ship: AsInclined, show: Show, width: float) -> Figure:
     """Sections seen from aft: those abaft the middle to port, the others to starboard.
 
     The waterline is that of the drafts, drawn at the ends and amidships.
