@@ -250,6 +250,8 @@ def _straight(
 _ROUNDS = 6
 """Gauss-Newton rounds for KG, each with one Newton step for the heels; the curve is so nearly
 straight that each round gains about three digits."""
+_NEAR = 1e-11
+"""Change of KG [m] in all draws below which no further round is needed."""
 
 
 def _curved(
@@ -292,6 +294,8 @@ def _curved(
         step = pull / ((by_vcg @ plan.line.spread) * by_vcg).sum(axis=-1)
         vcg = vcg + step
         heel = heel + by_vcg * step[..., None]
+        if not (abs(step) > _NEAR).any():
+            break
     slope = 1.0 / ((km - vcg) * ship.displacement - fsm.sum(axis=-1))
     regressor = by_vcg / (slope**2 * ship.displacement)[..., None]
     bend = heel - start - slope[..., None] * regressor

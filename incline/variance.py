@@ -181,7 +181,7 @@ def slope_uncertainty(seen: Observations, moments: Floats) -> SlopeUncertainty:
     )
     design = slope_design(moments, seen.shift, seen.device, seen.weight, lengths_known=known)
     found = design.scatter(seen.tangents)
-    dof, variance = float(found.dof), float(found.variance)
+    dof, variance = float(found.dof), max(float(found.variance), 0.0)  # rounding of nothing
     free = dof > 0.0 and math.isfinite(dof)
     return SlopeUncertainty(
         u=math.sqrt(variance) if free else None,

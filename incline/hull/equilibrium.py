@@ -15,7 +15,7 @@ if TYPE_CHECKING:
 __all__ = ["settle"]
 
 _STEPS = 12
-_SETTLED = 1e-12
+_SETTLED = 1e-10
 """Share of the volume, and of volume times length, below which a waterline counts as found."""
 
 

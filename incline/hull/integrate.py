@@ -9,6 +9,7 @@ from __future__ import annotations
 
 import dataclasses
 from dataclasses import dataclass
+from functools import cache
 from typing import TYPE_CHECKING
 
 from incline.hull.loft import runs_of
@@ -30,7 +31,7 @@ __all__ = ["Displaced", "Hull", "Pose"]
 _CELLS, _NODES = 2, 3
 """Cells in an interval of stations and Gauss nodes in a cell: exact to degree 5 in each."""
 _END_NODES = 4
-_BISECTIONS = 14
+_SECANTS = 8
 _AT_ONCE = 60_000
 """Corners worked on at once: what fits in a processor's cache."""
 
@@ -206,8 +207,8 @@ class Hull:
         tangent = pose.tangent[:, None]
         weight = np.broadcast_to(run.weight, (len(pose.mean), len(run.weight)))
         edge = self._level(run.edge_x, pose)
-        above = run.edge_z - edge[..., None] - tangent[..., None] * run.edge_y
-        wet = above.min(axis=-1) < 0.0
+        above = (run.edge_z - edge[..., None] - tangent[..., None] * run.edge_y).min(axis=-1)
+        wet = above < 0.0
         which, cell = np.nonzero(wet[:, 1:] != wet[:, :-1])
         if len(which):
             weight = weight.copy()
@@ -217,7 +218,7 @@ class Hull:
         u = run.z - level[..., None] - tangent[..., None] * run.y
         total = _integrals(run.x, weight, level, tangent, run.y, u)
         if len(which):
-            ends = self._of_ends(run, pose, which, cell, wet)
+            ends = self._of_ends(run, pose, which, cell, above)
             for k in range(len(which)):  # a pose may have several
                 total[:, which[k]] += ends[:, k]
         return total
@@ -228,17 +229,20 @@ class Hull:
         pose: Pose,
         which: NDArray[np.intp],
         cell: NDArray[np.intp],
-        wet: NDArray[np.bool_],
+        least: Floats,
     ) -> Floats:
-        """Integrals over the wet part of cells inside which the waterline leaves the hull."""
+        """Integrals over the wet part of cells inside which the waterline leaves the hull.
+
+        ``least`` (draws, C + 1) is the height of each cell end's lowest point above the waterline.
+        """
         import numpy as np
 
         some = Pose(*(a[which] for a in dataclasses.astuple(pose)))
         tangent = some.tangent[:, None]
+        half = self.lpp / 2.0
 
         def sections(x: Floats) -> tuple[Floats, Floats, Floats]:
             y, z = run.run.at(x)
-            half = self.lpp / 2.0
             level = (
                 some.mean[:, None]
                 - some.tau[:, None] * (x - half)
@@ -246,20 +250,32 @@ class Hull:
             )
             return y, z - level[..., None] - tangent[..., None] * y, level
 
-        aft_wet = wet[which, cell]
-        inside = np.where(aft_wet, run.edge_x[cell], run.edge_x[cell + 1])
+        aft, fore = least[which, cell], least[which, cell + 1]
+        aft_wet = aft < 0.0
+        start = np.where(aft_wet, run.edge_x[cell], run.edge_x[cell + 1])
+        inside, low = start, np.where(aft_wet, aft, fore)
         outside = np.where(aft_wet, run.edge_x[cell + 1], run.edge_x[cell])
-        start = inside
-        for _ in range(_BISECTIONS):
-            middle = 0.5 * (inside + outside)
-            _, u, _ = sections(middle[:, None])
-            under = u.min(axis=(-1, -2)) < 0.0
-            inside, outside = np.where(under, middle, inside), np.where(under, outside, middle)
-        nodes, weights = np.polynomial.legendre.leggauss(_END_NODES)
-        half = 0.5 * (outside - start)
-        x = (0.5 * (outside + start))[:, None] + half[:, None] * nodes
+        high = np.where(aft_wet, fore, aft)
+        for _ in range(_SECANTS):  # false position, the end that stays counted half (Illinois)
+            x = inside + (outside - inside) * low / (low - high)
+            _, u, _ = sections(x[:, None])
+            now = u.min(axis=(-1, -2))
+            under = now < 0.0
+            low, high = np.where(under, now, 0.5 * low), np.where(under, 0.5 * high, now)
+            inside, outside = np.where(under, x, inside), np.where(under, outside, x)
+        nodes, weights = _gauss(_END_NODES)
+        wide = 0.5 * (inside - start)
+        x = (0.5 * (inside + start))[:, None] + wide[:, None] * nodes
         y, u, level = sections(x)
-        return _integrals(x, np.abs(half)[:, None] * weights, level, tangent, y, u)
+        return _integrals(x, np.abs(wide)[:, None] * weights, level, tangent, y, u)
+
+
+@cache
+def _gauss(count: int) -> tuple[Floats, Floats]:
+    import numpy as np
+
+    nodes, weights = np.polynomial.legendre.leggauss(count)
+    return nodes, weights
 
 
 def _integrals(
@@ -281,7 +297,7 @@ def _integrals(
 def _lay(run: Run) -> _Laid:
     import numpy as np
 
-    nodes, weights = np.polynomial.legendre.leggauss(_NODES)
+    nodes, weights = _gauss(_NODES)
     steps = np.linspace(0.0, 1.0, _CELLS, endpoint=False)
     starts, gaps = run.stations[:-1], np.diff(run.stations)
     edge = np.append((starts[:, None] + gaps[:, None] * steps).ravel(), run.stations[-1])
