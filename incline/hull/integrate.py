@@ -28,9 +28,12 @@ if TYPE_CHECKING:
 
 __all__ = ["Displaced", "Hull", "Pose"]
 
-_CELLS, _NODES = 2, 3
-"""Cells in an interval of stations and Gauss nodes in a cell: exact to degree 5 in each."""
-_END_NODES = 4
+_NODES = 3
+"""Gauss nodes in a cell: exact to degree 5."""
+_CELLS, _FINE_CELLS, _FEW_CORNERS = 2, 4, 16
+"""Cells in an interval of stations: more of them for sections of few corners, where each long edge
+that the waterline meets at a small angle leaves a kink along the hull."""
+_END_NODES = 8
 _SECANTS = 8
 _AT_ONCE = 60_000
 """Corners worked on at once: what fits in a processor's cache."""
@@ -151,10 +154,6 @@ class Hull:
     def lowest_deck(self) -> float:
         """Height of the lowest point of a deck edge [m], appendages left out."""
         return min(float(r.edge_z[:, [0, -1]].min()) for r in self._laid if not r.run.closed)
-
-    def sections(self) -> list[tuple[Floats, Floats, Floats]]:
-        """Stations x (n,) and their corners y, z (n, P) [m], one entry a run."""
-        return [(r.edge_x[::_CELLS], r.edge_y[::_CELLS], r.edge_z[::_CELLS]) for r in self._laid]
 
     def displaced(self, pose: Pose) -> Displaced:
         """Integrals below the waterline, for poses of any shape."""
@@ -298,7 +297,8 @@ def _lay(run: Run) -> _Laid:
     import numpy as np
 
     nodes, weights = _gauss(_NODES)
-    steps = np.linspace(0.0, 1.0, _CELLS, endpoint=False)
+    cells = _FINE_CELLS if len(run.side) <= _FEW_CORNERS else _CELLS
+    steps = np.linspace(0.0, 1.0, cells, endpoint=False)
     starts, gaps = run.stations[:-1], np.diff(run.stations)
     edge = np.append((starts[:, None] + gaps[:, None] * steps).ravel(), run.stations[-1])
     half = 0.5 * np.diff(edge)
