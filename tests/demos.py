@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from dataclasses import replace
 
+from demo_chine import AVOCET, AVOCET_HEAD, AVOCET_PLACES, AVOCET_STYLE
 from simulate import Mass, Scene, SlackTank, WallSided
 from write_trial import FOOT, INCH, LONG_TON, Style, trial_tables, trial_toml
 
@@ -176,9 +177,10 @@ DEMOS = {
     "workboat-metric": (KESTREL, KESTREL_STYLE, KESTREL_HEAD, KESTREL_PLACES),
     "supply-vessel-us": (PELICAN, PELICAN_STYLE, PELICAN_HEAD, PELICAN_PLACES),
     "disturbed-metric": (DUNLIN, DUNLIN_STYLE, DUNLIN_HEAD, KESTREL_PLACES),
+    "chine-metric": (AVOCET, AVOCET_STYLE, AVOCET_HEAD, AVOCET_PLACES),
 }
 CLEAN = ("workboat-metric", "supply-vessel-us")
-"""Those that nothing disturbed."""
+"""Those with hydrostatics that nothing disturbed."""
 
 
 def demo_files(

@@ -122,26 +122,26 @@ def _patrol() -> Ship:
     """A deep vee with a hard chine 0.14 m above the water amidships; a skeg below the keel aft."""
 
     def taper(x: np.ndarray) -> np.ndarray:
-        """Share of the greatest breadth: 0.94 at the transom, 1 at 8.5 m, 0 at the stem head."""
-        aft, fore = np.minimum(x - 8.5, 0.0) / 8.5, np.maximum(x - 8.5, 0.0) / 13.0
-        return 1.0 - 0.06 * aft**2 - fore**3
+        """Share of the greatest breadth: 0.94 at the transom, 1 at 8.4 m, 0 at the stem head."""
+        aft, fore = np.minimum(x - 8.4, 0.0) / 8.4, np.maximum(x - 8.4, 0.0) / 13.2
+        return np.maximum(1.0 - 0.06 * aft**2 - fore**3, 0.0)
 
     along = Polynomial([-0.5, 1.0 / 20.4])
-    skeg = Polynomial([-0.5552, 0.0613])
+    sole = Polynomial([-0.5552, 0.0613])
     hull = Form(
-        "hull", (0.0, 21.5),
+        "hull", (0.0, 21.6),
         panels(
-            (NONE, beyond(11.5, 0.00185, 3)),
-            (times(taper, 2.6), plus(1.26 + 0.2 * along + 0.8 * along**2, beyond(11.5, 0.0005, 3))),
+            (NONE, beyond(12.0, 0.0021, 3)),
+            (times(taper, 2.6), plus(1.26 + 0.2 * along + 0.8 * along**2, beyond(12.0, 0.0006, 3))),
             (times(taper, 2.85), 3.0 + Polynomial([-0.35, 0.06]) ** 2),
         ),
-        CORNERS, breaks=(8.5, 11.5),
+        CORNERS, breaks=(8.4, 12.0),
     )  # fmt: skip
-    fin = Form(
-        "skeg", (0.9, 8.4), panels((NONE, skeg), (const(0.05), skeg), (const(0.06), NONE)),
+    skeg = Form(
+        "skeg", (0.9, 8.4), panels((NONE, sole), (const(0.05), sole), (const(0.06), NONE)),
         ("sole", "edge", "top"), kind="appendage",
     )  # fmt: skip
-    return Ship("patrol vessel", 20.4, 5.7, 3.3, (hull, fin), 1.12, 2.4)
+    return Ship("patrol vessel", 20.4, 5.7, 3.3, (hull, skeg), 1.12, 2.4)
 
 
 PATROL = _patrol()
@@ -192,10 +192,12 @@ def stations(
 
 
 def offset_rows(ship: Ship, count: int = 31, arc_points: int = 48) -> list[tuple[object, ...]]:
-    """Rows of offsets.csv: station, x, half breadth, height, line, body."""
+    """Rows of offsets.csv: station, x, half breadth, height, line, body; few of an appendage."""
     return [
         (n, x, y, z, line, form.name)
         for form in ship.forms
-        for n, (x, points) in enumerate(stations(form, count, arc_points))
+        for n, (x, points) in enumerate(
+            stations(form, count if form.kind == "hull" else 4, arc_points)
+        )
         for y, z, line in points
     ]
