@@ -14,6 +14,7 @@ if TYPE_CHECKING:
     from incline.contract import to_json as to_json
     from incline.errors import FieldDataError as FieldDataError
     from incline.errors import InclineError as InclineError
+    from incline.reading import read_offsets as read_offsets
     from incline.reading import read_trial as read_trial
     from incline.reduction import reduce as reduce
     from incline.report import write_pdf as write_pdf
@@ -23,6 +24,7 @@ __version__ = "0.1.0"
 _HOME = {
     "FieldDataError": "incline.errors",
     "InclineError": "incline.errors",
+    "read_offsets": "incline.reading",
     "read_trial": "incline.reading",
     "reduce": "incline.reduction",
     "to_json": "incline.contract",

@@ -301,3 +301,58 @@ STATED: dict[str, str] = {
     "changes.csv": beside("changes.csv", {"resolution mass [t]": "0.5 0.1", "u y [m]": "0.1 ."}),
 }
 """The small trial with uncertainties stated in every way and in every table that has them."""
+
+
+_HULL_SECTIONS = """
+[offsets]
+volume = "moulded"
+allowance = "0.5 %"
+u_volume = "0.3 %"
+tolerance_km = "6 mm"
+
+[[bodies]]
+name = "barge"
+
+[[bodies]]
+name = "skeg"
+kind = "appendage"
+y = "3 m S"
+mirrored = true
+"""
+
+HULL: dict[str, str] = {
+    **{name: text for name, text in SMALL.items() if name != "hydrostatics.csv"},
+    "trial.toml": SMALL["trial.toml"] + _HULL_SECTIONS,
+    "offsets.csv": """\
+station,x [m],half breadth [m],height [m],side,line,body
+0,0,0,0,,,barge
+0,0,6,0,,chine,barge
+0,0,6,5,,deck,barge
+1,30,0,0,,,barge
+1,30,6,0,,chine,barge
+1,30,6,5,,deck,barge
+2,60,0,0,S,,barge
+2,60,6,0,S,chine,barge
+2,60,6,5,S,deck,barge
+2,60,0,0,P,,barge
+2,60,6,0,P,chine,barge
+2,60,6,5,P,deck,barge
+a,2,0,-1,,,skeg
+a,2,0.25,-1,,,skeg
+a,2,0.25,0,,,skeg
+b,6,0,-1,,,skeg
+b,6,0.25,-1,,,skeg
+b,6,0.25,0,,,skeg
+c,10,0,0,,,skeg
+c,10,0,0,,,skeg
+""",
+}
+"""The barge by its offsets, with two skegs under its bottom, in place of the hydrostatic table."""
+
+BOTH: dict[str, str] = {
+    **STATED,
+    "trial.toml": STATED["trial.toml"].replace("[hydrostatics]", '[hydrostatics]\nuse = "offsets"')
+    + _HULL_SECTIONS,
+    "offsets.csv": HULL["offsets.csv"],
+}
+"""The trial that states uncertainties, with the hull in both descriptions."""

@@ -6,6 +6,7 @@ from typing import TYPE_CHECKING
 
 import pytest
 from defect_cases import CASES, TOML, Files, Found, key, row, text, without
+from hull_cases import HULLS
 from slip_cases import SLIPS
 from small_trial import SMALL, write
 
@@ -65,6 +66,23 @@ CODES = [
     "draft-twice",
     "file-separator",
     "header-missing",
+    "station-x",
+    "station-open",
+    "station-sides",
+    "station-twice",
+    "station-order",
+    "stations-too-few",
+    "points-too-few",
+    "point-twice",
+    "section-crosses",
+    "section-downwards",
+    "line-broken",
+    "line-order",
+    "line-twice",
+    "body-unknown",
+    "body-without-stations",
+    "body-overlap",
+    "depths-too-few",
 ]
 
 
@@ -98,7 +116,7 @@ def test_each_defect_and_no_other(tmp_path: Path, files: Files, expected: list[F
         assert "\n" not in str(defect)
 
 
-@pytest.mark.parametrize(("files", "expected", "words"), SLIPS, ids=_name)
+@pytest.mark.parametrize(("files", "expected", "words"), [*SLIPS, *HULLS], ids=_name)
 def test_each_slip_is_told_in_words(
     tmp_path: Path, files: Files, expected: list[Found], words: str
 ) -> None:
@@ -108,7 +126,7 @@ def test_each_slip_is_told_in_words(
 
 
 def test_every_code_has_a_case() -> None:
-    expected = [found for _, found, *_ in [*CASES, *SLIPS]]
+    expected = [found for _, found, *_ in [*CASES, *SLIPS, *HULLS]]
     assert {code for found in expected for code, *_ in found} == set(CODES)
 
 

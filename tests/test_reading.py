@@ -89,6 +89,7 @@ def test_liquids(tmp_path: Path) -> None:
     box, full, empty, slack = read(tmp_path, SMALL).tanks
     assert box.mass == 4 * 3 * 0.5 * 1.0  # box of length, breadth, level
     assert box.fsm == 1.0 * 4 * 3**3 / 12
+    assert [t.box for t in (box, full, empty, slack)] == [True, False, False, False]
     assert (full.mass, full.fsm) == (8.5, 0.0)
     assert (empty.mass, empty.fsm, empty.centre) == (0.0, 0.0, None)
     assert (slack.mass, slack.fsm, slack.fsm_basis) == (4.1, 2.05, "as recorded")
@@ -340,4 +341,4 @@ def test_a_blank_trial_lacks_only_what_is_to_be_filled_in(pytestconfig: Any, uni
 @pytest.mark.parametrize("units", ["metric", "us"])
 def test_a_blank_trial_has_every_table(pytestconfig: Any, units: str) -> None:
     names = {p.name for p in (pytestconfig.rootpath / "templates" / units).iterdir()}
-    assert names == set(SMALL)
+    assert names == {*SMALL, "offsets.csv"}

@@ -341,17 +341,29 @@ def test_what_a_blank_trial_proposes_can_be_read(
     toml = SMALL["trial.toml"]
     anchors = {
         "u_volume": "allowance", "u_km": "allowance", "u_lcb": "allowance", "u_length": "length",
-        "resolution": "length", "u_mass": "mass",
+        "resolution": "length", "u_mass": "mass", "use": "allowance",
+    }  # fmt: skip
+    filled = {
+        '["", ""]': '["a", "b"]', 'name = ""': 'name = "demihull"', 'volume = ""': 'volume = "moulded"',
+        'allowance = ""': 'allowance = "0.5 %"',
     }  # fmt: skip
     for proposed in lines:
         anchor = anchors.get(proposed.split(" ")[0])
-        line = proposed.replace('["", ""]', '["a", "b"]')
+        line = proposed
+        for blank, value in filled.items():
+            line = line.replace(blank, value)
         if anchor is None:
             toml += f"{line}\n"
         else:
             toml = re.sub(rf"^({anchor} = .*)$", rf"\1\n{line}", toml, flags=re.MULTILINE)
-    trial = read(tmp_path, {**SMALL, "trial.toml": toml})
+    half = "0,0", "2.5,0", "2.5,5"
+    rows = [f"{n},{x},{point},demihull" for n, x in enumerate((0, 30, 60)) for point in half]
+    table = "\n".join(["station,x [m],half breadth [m],height [m],body", *rows])
+    trial = read(tmp_path, {**SMALL, "trial.toml": toml, "offsets.csv": table})
     assert set(trial.table.stated) == {"volume", "km", "lcb"}
+    assert trial.settings.use == "offsets"
+    assert [(b.kind, b.y > 2.5, b.mirrored) for b in trial.offsets.bodies] == [("hull", True, True)]
+    assert trial.offsets.allowance == 0.005
     assert set(trial.devices[0].stated) == {"length"}
     assert trial.devices[0].resolution is not None
     assert set(trial.people[0].stated) == {"mass"}

@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
-from incline.reading.collect import Sign, quoted
+from incline.reading.collect import BAD, Sign, quoted
 from incline.reading.volume import read_allowance, read_stated
 from incline.record import Body
 from incline.units import LENGTH
@@ -28,7 +28,7 @@ class HullPlan:
     """What ``trial.toml`` says of the offsets; the bodies have no stations yet.
 
     ``named`` when the bodies stand there, so that each row must name its own. ``known`` is False
-    when they could not be looked at. ``said`` are the sections that speak of offsets at all.
+    when they, or their names, could not be read. ``said`` are the sections that speak of offsets.
     """
 
     bodies: tuple[Body, ...]
@@ -47,6 +47,7 @@ def read_plan(document: Document, hull: Hull, *, needed: bool) -> HullPlan:
     sections = document.sections("bodies")
     bodies = tuple(_read_body(s, hull) for s in sections)
     named = document.has("bodies")
+    names = {b.name.casefold() for b in bodies if b.name}
     if bodies and all(b.kind == "appendage" for b in bodies):
         found, expected = quoted("appendage"), "one body of the kind hull at least"
         sections[0].fault("kind", "value-wrong", found, expected)
@@ -54,7 +55,7 @@ def read_plan(document: Document, hull: Hull, *, needed: bool) -> HullPlan:
     return HullPlan(
         bodies=bodies or (Body(name=ONE_HULL, stations=()),),
         named=named,
-        known=document.readable and named == bool(bodies),
+        known=document.readable and named == bool(bodies) and len(names) == len(bodies),
         allowance=allowance,
         stated=stated,
         said=(
@@ -68,7 +69,8 @@ def _read_body(section: Section, hull: Hull) -> Body:
     """A section ``[[bodies]]``."""
     kind: Literal["hull", "appendage"] = section.choice("kind", ("hull", "appendage"), "hull")
     y = section.maybe("y", LENGTH, Sign.ANY, transverse=True)
-    hull.y(section, "y", y)
+    if not hull.y(section, "y", y):
+        y = BAD
     mirrored = section.flag("mirrored")
     if mirrored and not y:
         expected = "a body off the centreplane, with its y, where it has a mirror image"

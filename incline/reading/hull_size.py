@@ -6,6 +6,7 @@ flares beyond its moulded beam and rises above its depth in the sheer or a forec
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
@@ -40,6 +41,8 @@ def check_size(sheet: Sheet, bodies: Sequence[tuple[Body, Sequence[Drawn]]], hul
     drawn = [s for _, stations in bodies for s in stations]
     if not drawn or not all(inside) or not all(s.sound for s in drawn):
         return
+    if any(math.isnan(body.y) for body, _ in bodies):
+        return
     extent = max(s.x for s in drawn) - min(s.x for s in drawn)
     what = "a length from the first station to the last"
     _check_whole(sheet, "x", extent, what, hull.lpp, _LENGTH)
@@ -69,13 +72,13 @@ def _check_points(body: Body, drawn: Drawn, hull: Hull) -> bool:
     highest = _HEIGHT[1] * hull.depth
     likely = (0.0, 1.5 * hull.depth)
     heights = Range("a height", LENGTH, -hull.depth, highest, likely, "outside-vessel")
-    inside = True
+    inside = hull.x(drawn.rows[0], "x", drawn.x)
     for side in drawn.sides:
         for row, (y, z) in zip(side.rows, side.places, strict=True):
             full = "half breadths count from the centreplane" if y <= _FULL * hull.beam else ""
             inside &= check(row, "half breadth", y, breadths, full)
             inside &= check(row, "height", z, heights)
-    if body.mirrored and drawn.sound:
+    if inside and body.mirrored and abs(body.y) > 0.0 and drawn.sound:
         _check_inner(body, drawn)
     return inside
 

@@ -23,11 +23,15 @@ _LEAST = 3
 
 
 def joined(stations: Sequence[Drawn]) -> tuple[Station, ...]:
-    """The stations as they are recorded, those at one place with one and the same x."""
+    """The stations as they are recorded, those at one place with one and the same x.
+
+    A line that the rows write in several ways has one name.
+    """
     found: list[Station] = []
+    spelled: dict[str, str] = {}
     for drawn in stations:
         same = bool(found) and abs(drawn.x - found[-1].x) <= SAME
-        found.append(drawn.station(found[-1].x if same else drawn.x))
+        found.append(drawn.station(found[-1].x if same else drawn.x, spelled))
     return tuple(found)
 
 
@@ -45,9 +49,10 @@ def check_order(body: Body, stations: Sequence[Drawn]) -> None:
             b.rows[0].fault("x", "station-order", found, expected, hint)
             rising = False
     if len(stations) < _LEAST:
-        found = f"{len(stations)} of {quoted(body.name)}"
+        count = "one station" if len(stations) == 1 else "two stations"
+        found = f"{count} of {quoted(body.name)}"
         where = Where(sheet.file, 0, "station")
-        sheet.collector.add(where, "stations-too-few", found, f"{_LEAST} stations at least")
+        sheet.collector.add(where, "stations-too-few", found, "three stations at least")
     elif rising:
         _check_runs(stations)
 

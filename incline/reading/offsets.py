@@ -63,7 +63,6 @@ def _stations(sheet: Sheet, plan: HullPlan, hull: Hull) -> dict[str, list[Drawn]
     for block in blocks:
         apart = clear and times[block.key] > 1
         drawn = read_station(block.name, block.rows, hull.x_shift, outline=not apart)
-        hull.x(drawn.rows[0], "x", drawn.x)
         first = before.setdefault(block.key, drawn.rows[0].number)
         if first != drawn.rows[0].number and clear:
             said = f"{drawn.title} again, after row {first}"

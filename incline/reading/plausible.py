@@ -104,7 +104,8 @@ def _meant(number: float, unit: str, allowed: Range) -> str:
 class Hull:
     """How large the vessel is [m]; BAD where not known, so that nothing is outside it.
 
-    ``x_shift`` [m] is added to every x of the files.
+    ``x_shift`` [m] is added to every x of the files. As `check` does, a method that looks at one
+    figure says whether it may be.
     """
 
     lpp: float
@@ -120,15 +121,15 @@ class Hull:
         self.y(row, keys[1], centre.y)
         self.z(row, keys[2], centre.z)
 
-    def x(self, row: _Place, key: str, value: float) -> None:
+    def x(self, row: _Place, key: str, value: float) -> bool:
         """Check a position along the ship [m] from the after perpendicular."""
-        self._along(row, key, value, 0.25 * self.lpp, "x")
+        return self._along(row, key, value, 0.25 * self.lpp, "x")
 
     def centre(self, row: _Place, key: str, value: float) -> None:
         """Check LCB or LCF [m] from the after perpendicular: within the length."""
         self._along(row, key, value, 0.0, key)
 
-    def _along(self, row: _Place, key: str, value: float, beyond: float, what: str) -> None:
+    def _along(self, row: _Place, key: str, value: float, beyond: float, what: str) -> bool:
         low, high = -beyond - self.x_shift, self.lpp + beyond - self.x_shift
         half = self.lpp / 2.0
         other = value - half if self.x_shift else value + half
@@ -138,12 +139,12 @@ class Hull:
             hint = ""
         likely = (-self.x_shift, self.lpp - self.x_shift)
         allowed = Range(what, LENGTH, low, high, likely, "outside-vessel")
-        check(row, key, value - self.x_shift, allowed, hint)
+        return check(row, key, value - self.x_shift, allowed, hint)
 
-    def y(self, row: _Place, key: str, value: float | None) -> None:
+    def y(self, row: _Place, key: str, value: float | None) -> bool:
         """Check a distance off the centreplane [m]."""
         likely = (-self.beam / 2.0, self.beam / 2.0)
-        check(row, key, value, self._range("y", -self.beam, self.beam, likely))
+        return check(row, key, value, self._range("y", -self.beam, self.beam, likely))
 
     def z(self, row: _Place, key: str, value: float | None) -> None:
         """Check a height above the baseline [m]."""

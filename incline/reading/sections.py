@@ -51,7 +51,10 @@ def crossing(side: Sequence[Place]) -> tuple[int, int] | None:
             a, b, c, d = side[first - 1], side[first], side[last - 1], side[last]
             if _folds(a, b, d) if last == first + 1 else _meet(a, b, c, d):
                 found.append((last, first))
-    return min(found, default=None)
+    if not found:
+        return None
+    last, first = min(found)
+    return first, last
 
 
 def deck_crossing(side: Sequence[Place], middle: float) -> int | None:

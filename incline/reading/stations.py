@@ -43,10 +43,12 @@ class Side:
     places: tuple[Place, ...]
     lines: tuple[str, ...]
 
-    def points(self) -> tuple[OffsetPoint, ...]:
-        """The side as it is recorded."""
+    def points(self, spelled: dict[str, str]) -> tuple[OffsetPoint, ...]:
+        """The side as it is recorded; ``spelled`` keeps the first spelling of each line."""
         found = zip(self.places, self.lines, strict=True)
-        return tuple(OffsetPoint(y, z, line) for (y, z), line in found)
+        return tuple(
+            OffsetPoint(y, z, spelled.setdefault(line.casefold(), line)) for (y, z), line in found
+        )
 
 
 @dataclass(frozen=True, slots=True)
@@ -67,9 +69,9 @@ class Drawn:
         """The station as defects name it."""
         return f"station {quoted(self.name)}"
 
-    def station(self, x: float) -> Station:
-        """The station as it is recorded, at ``x`` [m]."""
-        sides = [side.points() for side in self.sides]
+    def station(self, x: float, spelled: dict[str, str]) -> Station:
+        """The station as it is recorded, at ``x`` [m], with lines as in `Side.points`."""
+        sides = [side.points(spelled) for side in self.sides]
         where = self.rows[0].where()
         return Station(name=self.name, x=x, starboard=sides[0], port=sides[-1], where=where)
 

@@ -148,8 +148,7 @@ def tell_empty(name: str, sheet: Sheet | None, collector: Collector) -> None:
 class Tables:
     """The tables of a folder as sheets; None when absent, unreadable or without a header.
 
-    ``hull`` says which descriptions of the hull there are. Where there is one, a header without
-    rows does not count as the other.
+    ``hull`` says which descriptions of the hull there are; a header without rows is none.
     """
 
     def __init__(self, files: Mapping[str, bytes], collector: Collector) -> None:
@@ -170,9 +169,7 @@ class Tables:
             name not in self._blank and (name in self.files or self._hurt(name))
             for name in (TABLE, OFFSETS)
         )
-        if table or offsets:
-            self.sheets |= dict.fromkeys({TABLE, OFFSETS} & self._blank)
-        else:
+        if not table and not offsets:
             header_only = OFFSETS in self._blank and TABLE not in self._blank
             self.lack(OFFSETS if header_only else TABLE, f"{_EXPECTED} unless it has {OFFSETS}")
         return HullFiles(table=table or not offsets, offsets=offsets)
