@@ -15,6 +15,7 @@ from incline.errors import FieldDataError, InclineError
 
 if TYPE_CHECKING:
     from incline.comparison import Situation
+    from incline.units import Quantity
 
 __all__ = ["app", "main"]
 
@@ -196,6 +197,76 @@ def report(
 
 
 @app.command()
+def hydrostatics(
+    trial: Trial,
+    lowest: Annotated[
+        str | None, typer.Option("--from", metavar="DRAFT", help='Lowest draft, as "1.20 m".')
+    ] = None,
+    highest: Annotated[
+        str | None, typer.Option("--to", metavar="DRAFT", help="Highest draft.")
+    ] = None,
+    step: Annotated[str | None, typer.Option(metavar="LENGTH", help="Step between drafts.")] = None,
+    trim: Annotated[
+        list[str] | None,
+        typer.Option(metavar="LENGTH", help="A trim, by the stern positive; once for each."),
+    ] = None,
+    heel: Annotated[float, typer.Option(metavar="DEG", help="Heel to starboard.")] = 0.0,
+    deflection: Annotated[
+        str | None, typer.Option(metavar="LENGTH", help="Deflection amidships, sagging positive.")
+    ] = None,
+    density: Annotated[
+        str, typer.Option(metavar="DENSITY", help="Water for displacement, TPC and MCT.")
+    ] = "1.025 t/m3",
+    csv: Annotated[
+        Path | None, typer.Option(metavar="FILE", help="Write the table as hydrostatics.csv.")
+    ] = None,
+    force: Force = False,
+) -> None:
+    """Print hydrostatics integrated from the hull's offsets, over drafts and trims.
+
+    Only trial.toml and offsets.csv are read. Example: incline hydrostatics my-vessel --trim "0.1 m"
+    """
+    from incline.files import refuse_existing, write_whole
+    from incline.reading import read_offsets
+    from incline.screen_hydrostatics import hydrostatics_csv, show_hydrostatics
+    from incline.tabulation import drafts_between, drafts_for, tabulate
+    from incline.units import DENSITY, LENGTH
+
+    if csv is not None:
+        refuse_existing(csv, force=force)
+        if heel:
+            raise typer.BadParameter("a trial's table is for the upright ship", param_hint="--csv")
+    water = _amount(density, DENSITY, "--density")
+    if not (abs(heel) < _MOST_HEEL and water > 0.0):
+        raise typer.BadParameter(f"a heel under {_MOST_HEEL:g} degrees and a density above zero")
+    ends = [
+        None if text is None else _amount(text, LENGTH, name)
+        for text, name in ((lowest, "--from"), (highest, "--to"), (step, "--step"))
+    ]
+    hull = read_offsets(trial)
+    drafts = drafts_for(hull.offsets, hull.vessel.lpp)
+    if any(e is not None for e in ends):
+        try:
+            drafts = drafts_between(drafts, *ends)
+        except ValueError as error:
+            raise typer.BadParameter(str(error), param_hint="--from, --to, --step") from error
+    table = tabulate(
+        hull.offsets, hull.vessel.lpp, drafts,
+        sorted({_amount(t, LENGTH, "--trim") for t in trim or ["0 m"]}),
+        heel=math.radians(heel),
+        deflection=0.0 if deflection is None else _amount(deflection, LENGTH, "--deflection"),
+    )  # fmt: skip
+    print(show_hydrostatics(hull, table, water))
+    if csv is not None:
+        write_whole(csv, hydrostatics_csv(hull, table).encode())
+        skin = "extreme" if hull.offsets.allowance is None else "moulded"
+        print(f"\nTable written to {csv}; its volume is {skin}, as [offsets] says.")
+
+
+_MOST_HEEL = 90.0
+
+
+@app.command()
 def compare(
     old: Annotated[
         Path | None, typer.Argument(help="Earlier, calculated or lead ship's lightship.")
@@ -266,7 +337,7 @@ def _situation(name: str) -> Situation:
 
 def _masses(texts: list[str] | None, situation: Situation | None) -> list[float] | None:
     """Weights added and removed [t]; wrong usage where no limit is set on their sum."""
-    from incline.units import MASS, QuantityError, parse_quantity
+    from incline.units import MASS
 
     if not texts:
         return None
@@ -274,12 +345,17 @@ def _masses(texts: list[str] | None, situation: Situation | None) -> list[float]
         raise typer.BadParameter(
             "only for a situation that limits their sum", param_hint="--weight-change"
         )
+    return [_amount(text, MASS, "--weight-change") for text in texts]
+
+
+def _amount(text: str, quantity: Quantity, option: str) -> float:
+    """A quantity with its unit in inside units; wrong usage where it cannot be read."""
+    from incline.units import QuantityError, parse_quantity
+
     try:
-        return [parse_quantity(text, MASS) for text in texts]
+        return parse_quantity(text, quantity)
     except QuantityError as error:
-        raise typer.BadParameter(
-            f"expected {error.expected}", param_hint="--weight-change"
-        ) from error
+        raise typer.BadParameter(f"expected {error.expected}", param_hint=option) from error
 
 
 def _report_date() -> datetime.date:

@@ -21,7 +21,7 @@ if TYPE_CHECKING:
 
     Floats = NDArray[np.float64]
 
-__all__ = ["HydrostaticRow", "Tabulation", "drafts_for", "tabulate"]
+__all__ = ["HydrostaticRow", "Tabulation", "drafts_between", "drafts_for", "tabulate"]
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -76,6 +76,26 @@ def drafts_for(offsets: Offsets, lpp: float) -> tuple[float, ...]:
     step = next(nice * m for m in (1.0, 2.0, 2.5, 5.0, 10.0) if nice * m >= step)
     first, last = math.ceil((low + step) / step - 1e-9), math.floor(top / step + 1e-9)
     return tuple(round(n * step, 9) for n in range(first, last + 1))
+
+
+_MOST_ROWS = 2000
+
+
+def drafts_between(
+    usual: Sequence[float], lowest: float | None, highest: float | None, step: float | None
+) -> tuple[float, ...]:
+    """Drafts from ``lowest`` to ``highest`` by ``step`` [m]; None takes the ``usual`` ones' own.
+
+    Raises ValueError when they do not go together.
+    """
+    low = usual[0] if lowest is None else lowest
+    high = usual[-1] if highest is None else highest
+    by = usual[1] - usual[0] if step is None else step
+    if not (by > 0.0 and high > low):
+        raise ValueError("a step above zero, and a highest draft above the lowest")
+    if (high - low) / by > _MOST_ROWS:
+        raise ValueError(f"at most {_MOST_ROWS} drafts")
+    return tuple(round(low + n * by, 9) for n in range(int((high - low) / by + 1e-6) + 1))
 
 
 def tabulate(
