@@ -53,15 +53,19 @@ def budgets_of(
     sources: Sequence[Source],
     blocks: Sequence[Block],
     coverage: float = COVERAGE,
+    nominal: Sequence[float] | None = None,
 ) -> tuple[tuple[Budget, ...], Floats]:
     """Budgets of all results of a model, named by ``keys``, and their covariance matrix.
+
+    ``nominal`` are the results at the estimates, where they are known better than by the model.
 
     u^2 = c' U R U c with correlations R (JCGM 100, 5.2); degrees of freedom by Welch-Satterthwaite
     (G.4), sources of one pool counted together; U = k u with k from Student's t.
     """
     import numpy as np
 
-    nominal = model(np.zeros((len(sources), 1)))[:, 0]
+    if nominal is None:
+        nominal = [float(v) for v in model(np.zeros((len(sources), 1)))[:, 0]]
     slopes = sensitivities(model, sources)
     parts = slopes * np.array([s.u for s in sources])
     spread = correlated(parts, blocks)

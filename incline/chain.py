@@ -250,8 +250,8 @@ def _straight(
 _ROUNDS = 6
 """Gauss-Newton rounds for KG, each with one Newton step for the heels; the curve is so nearly
 straight that each round gains about three digits."""
-_NEAR = 1e-11
-"""Change of KG [m] in all draws below which no further round is needed."""
+_NEAR = 1e-8
+"""Change of KG [m] in all draws below which the next round would change nothing that counts."""
 
 
 def _curved(
@@ -274,6 +274,7 @@ def _curved(
     displacement, start = ship.displacement[..., None], ship.start[..., None]
     km = b.kb + b.bmt + given.km_shift
     shift = given.km_shift[..., None]
+    curve = plan.lever.curve(ship)
     at_start = plan.lever.start(ship)[..., None]
     at_start = at_start - plan.liquids.start(ship.start, fsm)[..., None] / displacement
     slope = line.slope - given.slope_shift
@@ -282,7 +283,7 @@ def _curved(
     heel = start + slope[..., None] * line.moments
     pulled = (plan.line.pull / given.lengths[..., None, :]).sum(axis=-1)
     for _ in range(_ROUNDS):
-        lever, stiff = plan.lever.at(heel, ship, vcg)
+        lever, stiff = curve(heel, vcg)
         moving, moving_slope = plan.liquids.at(heel, fsm)
         away = heel - start
         miss = lever - moving / displacement - at_start + shift * away - vcg[..., None] * away

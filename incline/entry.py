@@ -111,8 +111,8 @@ def lever_curve(found: Yield, hull: Hull | None) -> LeverCurve:
     b = ship.buoyancy
     integrated: Floats = np.empty(0)
     if hull is not None:
-        integrated, _ = HeeledHull(hull, 0.0 * tangents).at(tangents, ship, found.vcg)
-    wall_sided, _ = WallSided().at(tangents, ship, found.vcg)
+        integrated, _ = HeeledHull(hull, 0.0 * tangents).curve(ship)(tangents, found.vcg)
+    wall_sided, _ = WallSided().curve(ship)(tangents, found.vcg)
     straight = b.yb + (b.kb + b.bmt) * tangents
     return LeverCurve(
         shifts=tuple(map(float, heel)),

@@ -8,7 +8,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Protocol
 
-from incline.hull import pose_of, settle
+from incline.hull import lever_slope, pose_of, settle
 
 if TYPE_CHECKING:
     import numpy as np
@@ -19,22 +19,26 @@ if TYPE_CHECKING:
 
     Floats = NDArray[np.float64]
 
-__all__ = ["HeeledHull", "Lever", "WallSided"]
+__all__ = ["Curve", "HeeledHull", "Lever", "WallSided"]
+
+
+class Curve(Protocol):
+    """N and dN/dt (..., n) [m] at tangents of heel (..., n), KG ``vcg`` (...) [m]."""
+
+    def __call__(self, tangent: Floats, vcg: Floats) -> tuple[Floats, Floats]:
+        """Levers and their slopes; the last axis counts shifts."""
+        ...
 
 
 class Lever(Protocol):
-    """N and its slope for a ship at tangents of heel.
-
-    Both functions broadcast over draws; ``tangent`` has the shifts as its last axis, ``vcg`` [m]
-    the shape of the ship's arrays. Levers are in metres.
-    """
+    """N for ships, broadcasting over draws; levers are in metres."""
 
     def start(self, ship: Condition) -> Floats:
         """N at the list with the test weights at their start."""
         ...
 
-    def at(self, tangent: Floats, ship: Condition, vcg: Floats) -> tuple[Floats, Floats]:
-        """N and dN/dt (..., n) at displacement and trimming moment of the ship."""
+    def curve(self, ship: Condition) -> Curve:
+        """N over heel at the displacement and trimming moment of a ship."""
         ...
 
 
@@ -46,12 +50,16 @@ class WallSided:
         b, t = ship.buoyancy, ship.start
         return b.yb + (b.kb + b.bmt) * t + 0.5 * b.bmt * t**3
 
-    def at(self, tangent: Floats, ship: Condition, vcg: Floats) -> tuple[Floats, Floats]:  # noqa: ARG002
+    def curve(self, ship: Condition) -> Curve:
         """N and its slope KM + 3/2 BM t^2."""
         km, bmt = (ship.buoyancy.kb + ship.buoyancy.bmt)[..., None], ship.buoyancy.bmt[..., None]
-        square = tangent * tangent
         across = ship.buoyancy.yb[..., None]
-        return across + tangent * (km + 0.5 * bmt * square), km + 1.5 * bmt * square
+
+        def at(tangent: Floats, vcg: Floats) -> tuple[Floats, Floats]:  # noqa: ARG001
+            square = tangent * tangent
+            return across + tangent * (km + 0.5 * bmt * square), km + 1.5 * bmt * square
+
+        return at
 
 
 class HeeledHull:
@@ -68,15 +76,15 @@ class HeeledHull:
         """N at the listed waterline itself."""
         return ship.buoyancy.y + ship.buoyancy.z * ship.start
 
-    def at(self, tangent: Floats, ship: Condition, vcg: Floats) -> tuple[Floats, Floats]:
-        """N, and its slope by the rule that B moves parallel to the waterplane.
+    def curve(self, ship: Condition) -> Curve:
+        """N and its slope, by integration."""
 
-        The slope is exact for a plane waterline at fixed trim; the change of trim is left out of
-        it, which costs Newton's method nothing.
-        """
-        _, found = self.settled(tangent, ship, vcg)
-        lever = found.y + found.z * tangent
-        return lever, found.z + (1.0 + tangent**2) * found.bmt
+        def at(tangent: Floats, vcg: Floats) -> tuple[Floats, Floats]:
+            pose, found = self.settled(tangent, ship, vcg)
+            lever = found.y + found.z * tangent
+            return lever, lever_slope(self.hull, pose, found, vcg[..., None])
+
+        return at
 
     def settled(self, tangent: Floats, ship: Condition, vcg: Floats) -> tuple[Pose, Displaced]:
         """Waterlines (..., n) at the tangents, and what they cut off."""

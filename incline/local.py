@@ -1,8 +1,8 @@
 """A response surface around the as-inclined condition, so that many draws stay affordable.
 
-Everything that a hull would have to be integrated for is replaced by second-order polynomials in
-mean draft, trim, deflection, list and heel, taken by finite differences over the range in which
-draws fall. At the estimates themselves the polynomials give what the hull gives.
+Everything that a hull would have to be integrated for is replaced by polynomials in mean draft,
+trim, deflection, list and heel, through points over the range in which draws fall. At the estimates
+themselves the polynomials give what the hull gives.
 """
 
 from __future__ import annotations
@@ -21,7 +21,7 @@ if TYPE_CHECKING:
 
     from incline.buoyancy import Afloat
     from incline.chain import Plan, Yield
-    from incline.levers import Lever
+    from incline.levers import Curve, Lever
     from incline.liquids import Liquids
 
     Floats = NDArray[np.float64]
@@ -35,9 +35,11 @@ _NAMES = tuple(f.name for f in fields(Buoyancy))
 
 @dataclass(frozen=True, slots=True, eq=False)
 class _Grid:
-    """Points for a full second-order expansion in k variables with the given steps.
+    """Points for an expansion in k variables with the given steps.
 
-    ``points`` (k, K): the centre, each variable a step up and down, each pair up together.
+    ``points`` (k, K): the centre, then for each variable half a step and a whole one up and down,
+    then each pair a step up together. Terms: each variable by itself to the fourth power, and the
+    products of pairs.
     """
 
     steps: Floats
@@ -45,26 +47,37 @@ class _Grid:
     pairs: tuple[tuple[int, int], ...]
 
     def expand(self, values: Floats) -> Floats:
-        """Coefficients (..., 1 + 2 k + pairs) from values (..., K)."""
+        """Coefficients (..., 1 + 4 k + pairs) from values (..., K)."""
         import numpy as np
 
         k = len(self.steps)
-        centre, up, down = values[..., :1], values[..., 1 : k + 1], values[..., k + 1 : 2 * k + 1]
-        slope, bend = (up - down) / 2.0, (up + down) / 2.0 - centre
+        centre = values[..., :1]
+        own = values[..., 1 : 4 * k + 1].reshape(*values.shape[:-1], 4, k)
+        odd, odd_half = (
+            (own[..., 2, :] - own[..., 3, :]) / 2.0,
+            (own[..., 0, :] - own[..., 1, :]) / 2.0,
+        )
+        even = (own[..., 2, :] + own[..., 3, :]) / 2.0 - centre
+        even_half = (own[..., 0, :] + own[..., 1, :]) / 2.0 - centre
+        # From f(1/2) and f(1): a s + c s^3, and b s^2 + d s^4.
+        a, c = (8.0 * odd_half - odd) / 3.0, (4.0 * odd - 8.0 * odd_half) / 3.0
+        b, d = (16.0 * even_half - even) / 3.0, (4.0 * even - 16.0 * even_half) / 3.0
         cross = np.empty((*values.shape[:-1], len(self.pairs)))
         for n, (i, j) in enumerate(self.pairs):
-            corner = values[..., 2 * k + 1 + n]
+            corner = values[..., 4 * k + 1 + n]
             # f(i, j) less what either does alone leaves their joint term.
-            cross[..., n] = corner - up[..., i] - up[..., j] + centre[..., 0]
-        return np.concatenate([centre, slope, bend, cross], axis=-1)
+            cross[..., n] = corner - own[..., 2, i] - own[..., 2, j] + centre[..., 0]
+        return np.concatenate([centre, a, b, c, d, cross], axis=-1)
 
     def features(self, away: Sequence[Floats]) -> Floats:
-        """Terms (1 + 2 k + pairs, ...) for deviations of the k variables."""
+        """Terms (1 + 4 k + pairs, ...) for deviations of the k variables."""
         import numpy as np
 
-        scaled = [a / s for a, s in zip(away, self.steps, strict=True)]
-        rows = [np.ones_like(scaled[0]), *scaled, *(s * s for s in scaled)]
-        rows += [scaled[i] * scaled[j] for i, j in self.pairs]
+        one = [a / s for a, s in zip(away, self.steps, strict=True)]
+        two = [s * s for s in one]
+        rows = [np.ones_like(one[0]), *one, *two]
+        rows += [s * q for s, q in zip(one, two, strict=True)] + [q * q for q in two]
+        rows += [one[i] * one[j] for i, j in self.pairs]
         return np.stack(rows)
 
 
@@ -76,8 +89,9 @@ def _grid(steps: Sequence[float]) -> _Grid:
     both = np.zeros((len(h), len(pairs)))
     for n, (i, j) in enumerate(pairs):
         both[i, n], both[j, n] = h[i], h[j]
-    points = np.concatenate([np.zeros((len(h), 1)), np.diag(h), -np.diag(h), both], axis=1)
-    return _Grid(h, points, pairs)
+    alone = np.diag(h)
+    points = [np.zeros((len(h), 1)), alone / 2.0, -alone / 2.0, alone, -alone, both]
+    return _Grid(h, np.concatenate(points, axis=1), pairs)
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -161,25 +175,30 @@ class _LocalLever:
             displacement=centre.ship.displacement + 0.0 * mean,
         )
         steps = np.repeat([0.0, step, -step], count)
-        found, _ = lever.at(heel + steps[:, None], ship, vcg + 0.0 * mean)
+        found, _ = lever.curve(ship)(heel + steps[:, None], vcg + 0.0 * mean)
         at, up, down = (found[i * count : (i + 1) * count].T for i in range(3))
         self.value = centre.grid.expand(at)
         self.slope = centre.grid.expand((up - down) / (2.0 * step))
-        self.curve = centre.grid.expand((up + down - 2.0 * at) / (2.0 * step**2))[:, 0]
+        self.curvature = centre.grid.expand((up + down - 2.0 * at) / (2.0 * step**2))[:, 0]
         self.at_start = lever.start
 
     def start(self, ship: Condition) -> Floats:
         return self.at_start(ship)
 
-    def at(self, tangent: Floats, ship: Condition, vcg: Floats) -> tuple[Floats, Floats]:  # noqa: ARG002
+    def curve(self, ship: Condition) -> Curve:
         import numpy as np
 
         away = self.centre.away(ship.mean, ship.tau, ship.deflection, ship.list_tan)
         terms = self.centre.grid.features(away)
         value = np.moveaxis(np.tensordot(self.value, terms, 1), 0, -1)
         slope = np.moveaxis(np.tensordot(self.slope, terms, 1), 0, -1)
-        s = tangent - self.heel
-        return value + s * (slope + s * self.curve), slope + 2.0 * s * self.curve
+
+        def at(tangent: Floats, vcg: Floats) -> tuple[Floats, Floats]:  # noqa: ARG001
+            s = tangent - self.heel
+            bent = s * self.curvature
+            return value + s * (slope + bent), slope + 2.0 * bent
+
+        return at
 
 
 class _LocalLiquids:

@@ -19,7 +19,7 @@ from incline.flotation import describe_waterline
 from incline.heel import describe_heel
 from incline.ledger import balance, lines_of, summarise, test_weight_lines
 from incline.local import localised
-from incline.model import KEYS, TrialModel, draft_spread, surface_miss
+from incline.model import KEYS, TrialModel, draft_spread, results_of, surface_miss
 from incline.montecarlo import seed_of, simulate
 from incline.observations import observe
 from incline.refusals import refuse, refuse_absurd
@@ -138,7 +138,8 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
         model, exact = TrialModel(near, given, sources), model
         if entry is not None:
             entry = dataclasses.replace(entry, surface=surface_miss(exact, model))
-    budgets, covariance = budgets_of(model, KEYS, sources, blocks)
+    nominal = [math.nan if r is None else float(r) for r in results_of(found)]
+    budgets, covariance = budgets_of(model, KEYS, sources, blocks, nominal=nominal)
     displacement, vcg, lcg, tcg, _ = (b.estimate for b in budgets)
     lines = (*test_weight_lines(trial, plan.placing), *lines_of(trial))
     inclined = _as_inclined(trial, plan, waterline, given, found, entry)

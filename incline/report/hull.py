@@ -90,8 +90,8 @@ def _surface(sheet: Sheet, hull: HullEntry) -> str:
     mass, *lengths = hull.surface
     worst = max((m for m in lengths if not math.isnan(m)), default=0.0)
     return (
-        "Uncertainties go through a second-order surface around this condition; against integrating"
-        " the hull it misses, at draws half as wide again as the uncertainties, at most"
+        "Uncertainties go through a response surface around this condition; against integrating the"
+        " hull anew it misses, in ten draws of all inputs, at most"
         f" {show.full(mass, 'mass')} in displacement and {show.full(worst, 'reading', 3)} in KG,"
         " LCG, TCG and GM."
     )
