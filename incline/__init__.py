@@ -1,8 +1,8 @@
 """Reduce an inclining experiment to GM, lightship displacement, KG, LCG and TCG.
 
 ``read_trial(folder)`` reads the records of a test, ``reduce(trial)`` works them out,
-``to_json(reduction)`` and ``write_pdf(...)`` hand the result on. Names load on first use, so that
-importing the package costs nothing.
+``to_json(reduction)`` and ``write_pdf(...)`` hand the result on. ``read_offsets(folder)`` reads the
+hull alone. Names load on first use, so that importing the package costs nothing.
 """
 
 from __future__ import annotations

@@ -66,6 +66,7 @@ HULLS: list[tuple[Files, list[Found], str]] = [
     (lines(CSV, {3: "0,0.5,6,0,,chine,barge"}), at("x", 3, code="station-x"),
      'found "0.5" in station "0"; expected one x for all rows of a station'),
     (lines(CSV, {3: "0,,6,0,,chine,barge"}), at("x", 3, code="cell-missing"), ""),
+    (lines(CSV, {8: "2,sixty,0,0,S,,barge"}), at("x", 8, code="number-unreadable"), ""),
     (lines(CSV, {2: "0,0,0.5,0,,,barge"}), at("half breadth", 2, code="station-open"),
      'found station "0" starting at half breadth "0.5"'),
     (lines(CSV, {5: "1,30,6,5,,,barge", 7: "1,30,0,0,,deck,barge"}),

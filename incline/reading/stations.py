@@ -87,7 +87,7 @@ def read_station(name: str, rows: Sequence[Row], x_shift: float, *, outline: boo
     lines = [row.text("line") for row in rows]
     sound = (
         all(row.whole for row in rows)
-        and all(map(math.isfinite, itertools.chain(*places)))
+        and all(map(math.isfinite, (x, *itertools.chain(*places))))
         and None not in letters
         and outline
     )
