@@ -103,7 +103,7 @@ def _as_inclined(outcome: Outcome, system: UnitSystem) -> list[str]:
         _row("deflection, positive sagging", sag, system.length),
         _row("list, positive to starboard", "-" if tilt is None else f"{tilt:.2f}", "deg"),
         _row("density of the water", density, system.density),
-        _row("volume from the table", cubic, system.volume),
+        _row(f"volume from the {'table' if ship.hull is None else 'hull'}", cubic, system.volume),
         _row("displacement", tonnes, system.mass),
         _row("LCB", _length(system, ship.lcb), system.length),
         _row("KB", _length(system, ship.kb), system.length),
