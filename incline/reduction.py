@@ -117,8 +117,8 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
     with np.errstate(all="ignore"):  # what comes of that is refused next
         found = run(plan, given)
         refuse(trial, plan, seen, found)
-    method, *others = methods_of(trial, hull)
-    aside = [_by(m, plan, given, hull) for m in others]
+        method, *others = methods_of(trial, hull)
+        aside = [_by(m, plan, given, hull) for m in others]
     heel = describe_heel(trial, seen, found, method, aside)
     heel = dataclasses.replace(heel, levers=lever_curve(found, hull))
     waterline = describe_waterline(plan.waterline, trial.drafts, trial.vessel.lpp)
