@@ -262,9 +262,11 @@ class Hull:
             under = now < 0.0
             low, high = np.where(under, now, 0.5 * low), np.where(under, 0.5 * high, now)
             inside, outside = np.where(under, x, inside), np.where(under, outside, x)
+        # Either side of the bracket may be the one that came close.
+        end = inside + (outside - inside) * low / (low - high)
         nodes, weights = _gauss(_END_NODES)
-        wide = 0.5 * (inside - start)
-        x = (0.5 * (inside + start))[:, None] + wide[:, None] * nodes
+        wide = 0.5 * (end - start)
+        x = (0.5 * (end + start))[:, None] + wide[:, None] * nodes
         y, u, level = sections(x)
         return _integrals(x, np.abs(wide)[:, None] * weights, level, tangent, y, u)
 
