@@ -137,7 +137,7 @@ def _open(table: Tabulation, system: UnitSystem) -> list[str]:
 
     return [
         f"Every second station left out would change: {told(table.by_stations)}; the error left in"
-        " the table is a third of that at most where the lines are smooth.",
+        " the table is usually less than a third of that where the lines are smooth.",
         f"Points joined by arcs instead of straight lines would change: {told(table.by_points)}.",
         "MCT is displacement x BM_L over length, the usual approximation of GM_L by BM_L.",
     ]
