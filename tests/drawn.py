@@ -13,7 +13,7 @@ from scipy.interpolate import CubicSpline
 
 from incline.errors import Where
 from incline.hull import Hull, Pose, lever_slope, settle
-from incline.record import Body, Offsets, OffsetPoint, Station
+from incline.record import Body, OffsetPoint, Offsets, Station
 
 Floats = NDArray[np.float64]
 Points = Sequence[tuple[float, float]] | Floats
@@ -116,7 +116,7 @@ def slopes(hull: Hull, draft: float, t: object, vcg: float = 0.0) -> Floats:
     at, found = settle(
         hull,
         pose(draft, t=lean),
-        *(v + 0.0 * lean for v in (float(start.volume), vcg, float(start.x))),  # fmt: skip
+        *(v + 0.0 * lean for v in (float(start.volume), vcg, float(start.x))),
     )
     return lever_slope(hull, at, found, vcg + 0.0 * lean)
 

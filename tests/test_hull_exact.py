@@ -9,7 +9,19 @@ from functools import cache
 
 import numpy as np
 import pytest
-from drawn import carried, drawn, levers, offsets, one, pose, prism, slopes, station, stretches, upright_sides  # fmt: skip
+from drawn import (  # fmt: skip
+    carried,
+    drawn,
+    levers,
+    offsets,
+    one,
+    pose,
+    prism,
+    slopes,
+    station,
+    stretches,
+    upright_sides,
+)
 from hull_ships import BOX, CATAMARAN, VEE
 from hypothesis import given
 from hypothesis import strategies as st
@@ -224,10 +236,10 @@ def half_ellipse(count):
 
 
 VERTICAL = {
-    "rectangle": (lambda n: (np.array([0.0, 80.0]), np.array([8.0, 8.0])), 1.0, 2.0 / 3.0),
+    "rectangle": (lambda _: (np.array([0.0, 80.0]), np.array([8.0, 8.0])), 1.0, 2.0 / 3.0),
     "ellipse": (half_ellipse, np.pi / 4.0, 3.0 / 4.0),
-    "parabola": (lambda n: (np.linspace(0.0, 80.0, 9), 8.0 * (1.0 - np.linspace(-1.0, 1.0, 9) ** 2)), 2.0 / 3.0, 4.0 / 5.0),
-    "diamond": (lambda n: (np.array([0.0, 40.0, 40.0, 80.0]), np.array([0.0, 8.0, 8.0, 0.0])), 0.5, 5.0 / 6.0),
+    "parabola": (lambda _: (np.linspace(0.0, 80.0, 9), 8.0 * (1.0 - np.linspace(-1.0, 1.0, 9) ** 2)), 2.0 / 3.0, 4.0 / 5.0),
+    "diamond": (lambda _: (np.array([0.0, 40.0, 40.0, 80.0]), np.array([0.0, 8.0, 8.0, 0.0])), 0.5, 5.0 / 6.0),
 }  # fmt: skip
 """Waterplanes 80 x 16 m: stations, share of the rectangle, share of deflection in the volume."""
 

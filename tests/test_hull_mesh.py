@@ -50,9 +50,12 @@ def test_every_ship_as_the_mesh_library_and_quadrature_have_it(name):
 def test_few_chords_against_a_mesh_of_the_same_chords(ship):
     # With 12 chords on an arc the hull is 0.1 to 0.7 % small; the mesh of those very chords agrees.
     places = [
-        [(x, [p[:2] for p in points]) for x, points in stations(form, 31, 12)] for form in ship.forms
+        [(x, [p[:2] for p in points]) for x, points in stations(form, 31, 12)]
+        for form in ship.forms
     ]
-    same = replace(ship, forms=tuple(faceted(f, p) for f, p in zip(ship.forms, places, strict=True)))
+    same = replace(
+        ship, forms=tuple(faceted(f, p) for f, p in zip(ship.forms, places, strict=True))
+    )
     hull = Hull(drawn(ship, 31, 12), ship.lpp)
     for waterline in WATERLINES[2:4]:
         found = hull.displaced(pose(ship.draft, *waterline))
@@ -118,7 +121,10 @@ def test_appendage_under_water_counts_as_a_closed_body():
     bare = Hull(drawn(replace(PATROL, forms=PATROL.forms[:1])), PATROL.lpp)
     skeg = replace(PATROL, forms=PATROL.forms[1:])
     for waterline in WATERLINES:
-        apart = whole.displaced(pose(1.12, *waterline)).volume - bare.displaced(pose(1.12, *waterline)).volume
+        apart = (
+            whole.displaced(pose(1.12, *waterline)).volume
+            - bare.displaced(pose(1.12, *waterline)).volume
+        )
         assert apart == pytest.approx(skeg.below(1.12, *waterline).volume, rel=1e-9)
     assert whole.lowest_deck == pytest.approx(bare.lowest_deck)
     assert whole.reach[0] < bare.reach[0]
