@@ -150,11 +150,6 @@ class Hull:
         low = min(float(r.edge_z.min()) for r in self._laid)
         return low, max(float(r.edge_z.max()) for r in self._laid)
 
-    @property
-    def lowest_deck(self) -> float:
-        """Height of the lowest point of a deck edge [m], appendages left out."""
-        return min(float(r.edge_z[:, [0, -1]].min()) for r in self._laid if not r.run.closed)
-
     def displaced(self, pose: Pose) -> Displaced:
         """Integrals below the waterline, for poses of any shape."""
         import numpy as np
