@@ -24,8 +24,9 @@ from incline.setup import layers_of
 def outlines(draw):
     """Corners round a point, from the port deck edge down and up to starboard: star-shaped."""
     count = draw(st.integers(3, 12))
-    shares = np.array(draw(st.lists(st.floats(0.1, 1.0), min_size=count + 1, max_size=count + 1)))
-    angles = 2.0 * np.pi * np.cumsum(shares)[:-1] / shares.sum() + np.pi / 2.0
+    # no step as large as half a turn: the corners go round
+    shares = np.array(draw(st.lists(st.floats(0.6, 1.0), min_size=count, max_size=count)))
+    angles = 2.0 * np.pi * np.cumsum(shares) / shares.sum() + np.pi / 2.0
     radii = np.array(draw(st.lists(st.floats(0.3, 6.0), min_size=count, max_size=count)))
     centre = draw(st.floats(-3.0, 3.0)), draw(st.floats(-3.0, 3.0))
     return centre[0] + radii * np.cos(angles), centre[1] + radii * np.sin(angles)
