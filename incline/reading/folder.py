@@ -51,7 +51,7 @@ if TYPE_CHECKING:
     from incline.reading.settings import Frame, Head
     from incline.record import DraftReading, Item, Reading, RollingRun, Tank, Weight
 
-__all__ = ["read_trial"]
+__all__ = ["read_records", "read_trial"]
 
 _COLUMNS: dict[str, tuple[Column, ...]] = {
     "weights.csv": WEIGHT_COLUMNS,
@@ -89,18 +89,28 @@ def read_trial(folder: str | os.PathLike[str]) -> Trial:
 
     Raises FieldDataError with every defect of every file.
     """
-    path = Path(folder)
     collector = Collector()
+    trial = read_records(folder, collector)
+    if collector.defects:
+        raise FieldDataError(folded(collector.defects))
+    return trial
+
+
+def read_records(folder: str | os.PathLike[str], collector: Collector) -> Trial:
+    """The records of a test as far as they can be read; what is wrong goes to ``collector``.
+
+    With defects collected the trial is not fit to be reduced: BAD stands for a number, and an
+    empty text or the first of the words allowed for a word, that is missing or cannot be read.
+    Raises FieldDataError when there is no such folder.
+    """
+    path = Path(folder)
     if not path.is_dir():
         found = "a file" if path.exists() else "no such folder"
         where = Where(str(path))
         raise FieldDataError([Defect(where, "file-missing", found, "the folder of a trial")])
     files = _read_files(path, collector)
     remarks = _strangers(path, files, collector)
-    trial = _Reader(files, collector).trial(str(path), remarks)
-    if collector.defects:
-        raise FieldDataError(folded(collector.defects))
-    return trial
+    return _Reader(files, collector).trial(str(path), remarks)
 
 
 def _read_files(path: Path, collector: Collector) -> dict[str, bytes]:
