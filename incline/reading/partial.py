@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import datetime
 from dataclasses import dataclass, replace
-from typing import TYPE_CHECKING, Literal
+from typing import TYPE_CHECKING
 
 from incline.errors import Where
 from incline.reading.collect import Collector, folded
@@ -48,6 +48,11 @@ class Partial:
     def date(self) -> datetime.date | None:
         """The day of the test; None when it is not known."""
         return self.trial.occasion.date if self.knows(Where(FILE, 0, "test"), "date") else None
+
+    @property
+    def told(self) -> tuple[Defect, ...]:
+        """What is wrong, in file order; the same in many rows of a column told once."""
+        return tuple(sorted(folded(self.wrong)))
 
     def knows(self, where: Where, column: str) -> bool:
         """Whether a cell, or a key of a section of ``trial.toml``, is free of defects.
