@@ -21,7 +21,7 @@ if TYPE_CHECKING:
 
 __all__ = ["MARGIN", "Book", "blank_device", "section"]
 
-MARGIN = 42.0
+MARGIN = 36.0
 """Margin on every side of the paper [pt]."""
 
 

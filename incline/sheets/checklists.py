@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
+from reportlab.platypus import KeepTogether
+
 from incline.report.closing import BEFORE, STOP
 from incline.sheets.forms import ROW, Column, form, line, part, text
 
@@ -12,6 +14,8 @@ if TYPE_CHECKING:
 
 __all__ = ["before_test", "end_checks"]
 
+_ROOM = 80.0
+"""Points below the heading of a list without which it starts a new page."""
 _PRACTICE = "common practice"
 _CODE = "2008 IS Code, part B"
 
@@ -93,19 +97,19 @@ _END = (
 
 _COLUMNS = (
     Column("done", 0.07),
-    Column("check", 0.51),
-    Column("from", 0.20),
-    Column("initials, time", 0.22),
+    Column("check", 0.53),
+    Column("from", 0.24),
+    Column("initials, time", 0.16),
 )
 
 
 def _list(book: Book, items: tuple[tuple[str, str], ...]) -> Any:  # noqa: ANN401 - untyped library
-    return form(_COLUMNS, [("", said, basis, "") for said, basis in items], book.width, high=ROW)
+    return form(_COLUMNS, [("", said, basis, "") for said, basis in items], book.width)
 
 
 def before_test(book: Book) -> list[Any]:
     """Before a weight is lifted, when to stop, and what the pages do not settle."""
-    heading = Column("done", 0.07), Column("caution", 0.71), Column("initials, time", 0.22)
+    heading = Column("done", 0.07), Column("caution", 0.77), Column("initials, time", 0.16)
     flow: list[Any] = [
         text(
             "Limits are those of the source named, in this program's words: check them against the"
@@ -113,23 +117,29 @@ def before_test(book: Book) -> list[Any]:
         )
     ]
     for title, items in _READY:
-        flow += [*part(title), _list(book, items)]
+        flow += [*part(title, _ROOM), _list(book, items)]
     return [
         *flow,
-        *part("Safety (common practice, not quoted from a standard)"),
+        *part("Safety (common practice, not quoted from a standard)", _ROOM),
         form(heading, [("", said, "") for said in BEFORE], book.width),
-        *part("Stop the test when"),
-        form(
-            (Column("", 0.07), Column("common practice, and this program's figures", 0.71),
-             Column("seen at, by", 0.22)),
-            [(f"{n}", said, "") for n, said in enumerate(STOP, start=1)],
-            book.width,
-        ),
+        KeepTogether(_reasons_to_stop(book)),
+    ]
+
+
+def _reasons_to_stop(book: Book) -> list[Any]:
+    columns = (
+        Column("", 0.07, "right"), Column("common practice, with this program's figures", 0.77),
+        Column("seen at, by", 0.16),
+    )  # fmt: skip
+    reasons = [f"{said[0].upper()}{said[1:].rstrip(';.')}." for said in STOP]
+    return [
+        *part("Stop the test when", 0.0),
+        form(columns, [(f"{n}", said, "") for n, said in enumerate(reasons, start=1)], book.width),
         text(
             "The reasons to stop are common practice with figures of this program's choice. The"
             " procedure agreed for the test, and the judgement of the person in charge, go before."
         ),
-    ]  # fmt: skip
+    ]
 
 
 def end_checks(book: Book) -> list[Any]:

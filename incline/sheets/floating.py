@@ -13,7 +13,7 @@ if TYPE_CHECKING:
 
 __all__ = ["density", "drafts", "surroundings"]
 
-_SAMPLES, _MARKS = 10, 14
+_SAMPLES, _MARKS = 18, 12
 """Least rows for water samples and draft marks."""
 _PLACES = ("forward", "amidships", "aft")
 
@@ -34,7 +34,7 @@ def surroundings(book: Book) -> list[Any]:
         ("tide: high and low water", ""),
     )
     return [
-        boxes(known, book.broad, abreast=4, high=36.0),
+        boxes(known, book.broad, abreast=4, high=32.0),
         form(
             (
                 Column("shift", 0.07), Column("time", 0.08), Column("wind: from, speed", 0.15),
@@ -44,7 +44,6 @@ def surroundings(book: Book) -> list[Any]:
             ),
             [("before", *[""] * 8), *shifts, ("after", *[""] * 8)],
             book.broad,
-            spare=1,
         ),
     ]  # fmt: skip
 
@@ -78,6 +77,10 @@ def density(book: Book) -> list[Any]:
             ),
             book.width,
         ),
+        text(
+            "Take samples at several depths, from the bottom of the hull to the surface; on a large"
+            " ship at three places at least. Rinse the sampler, read at the level surface."
+        ),
         form(
             (
                 Column("place", 0.25), Column(f"depth [{show.unit('length')}]", 0.11, "right"),
@@ -88,10 +91,6 @@ def density(book: Book) -> list[Any]:
             rows,
             book.width,
             spare=max(4, _SAMPLES - len(rows)),
-        ),
-        text(
-            "Take samples at several depths, from the bottom of the hull to the surface; on a large"
-            " ship at three places at least. Rinse the sampler, read at the level surface."
         ),
     ]  # fmt: skip
 
@@ -128,6 +127,12 @@ def drafts(book: Book) -> list[Any]:
             ),
             book.broad,
             abreast=4,
+            high=28.0,
+        ),
+        text(
+            "At every mark forward, amidships and aft on both sides, or freeboards at five places"
+            " and more on each side, with the height above the baseline of the point from which"
+            f" each is taken. {book.axes()}"
         ),
         form(
             (
@@ -140,12 +145,7 @@ def drafts(book: Book) -> list[Any]:
             ),
             rows,
             book.broad,
-            spare=max(4, _MARKS - len(rows)),
-        ),
-        text(
-            "At every mark forward, amidships and aft on both sides, or freeboards at five places"
-            " and more on each side, with the height above the baseline of the point from which"
-            f" each is taken. {book.axes()}"
+            spare=max(3, _MARKS - len(rows)),
         ),
     ]  # fmt: skip
 

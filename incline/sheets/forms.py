@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, Any, Literal
 
-from reportlab.lib.enums import TA_CENTER, TA_LEFT, TA_RIGHT
+from reportlab.lib.enums import TA_LEFT, TA_RIGHT
 from reportlab.lib.styles import ParagraphStyle
 from reportlab.lib.units import mm
 from reportlab.platypus import CondPageBreak, Paragraph, Table
@@ -22,7 +22,9 @@ __all__ = ["ROW", "Column", "boxes", "form", "line", "paragraph_of", "part", "te
 ROW = 9.0 * mm
 """Least height of a row that is written in by hand [pt]."""
 _PAD = 3.0
-_SPLIT = 180.0
+_LONG = 90
+"""Cells of more characters are set smaller."""
+_SPLIT = 300.0
 """A row higher than this may break over the page [pt]."""
 
 
@@ -43,10 +45,10 @@ _STYLES = {
     for s in (
         _style("cell_left", 9.5, alignment=TA_LEFT),
         _style("cell_right", 9.5, alignment=TA_RIGHT),
-        _style("cell_centre", 9.5, alignment=TA_CENTER),
+        _style("long_left", 7.5, alignment=TA_LEFT),
+        _style("long_right", 7.5, alignment=TA_RIGHT),
         _style("head_left", 8, BOLD, alignment=TA_LEFT),
         _style("head_right", 8, BOLD, alignment=TA_RIGHT),
-        _style("head_centre", 8, BOLD, alignment=TA_CENTER),
         _style("label", 7),
         _style("value", 10.5, BOLD),
         _style("part", 11.5, BOLD, spaceBefore=7, spaceAfter=3),
@@ -63,7 +65,7 @@ class Column:
 
     title: str
     share: float
-    align: Literal["left", "right", "centre"] = "left"
+    align: Literal["left", "right"] = "left"
 
 
 def paragraph_of(words: str, style: str) -> Paragraph:
@@ -98,11 +100,13 @@ def form(
     widths = [width * c.share / total for c in columns]
     listed = [*map(tuple, rows), *[("",) * len(columns)] * spare]
     head = [paragraph_of(c.title, f"head_{c.align}") for c in columns]
-    body = [
-        [paragraph_of(t, f"cell_{c.align}") for t, c in zip(row, columns, strict=True)]
-        for row in listed
-    ]
+    body = [[_cell(t, c) for t, c in zip(row, columns, strict=True)] for row in listed]
     return _table([head, *body], widths, [0.0, *[high] * len(body)], heavy)
+
+
+def _cell(words: str, column: Column) -> Paragraph:
+    size = "long" if len(words) > _LONG else "cell"
+    return paragraph_of(words, f"{size}_{column.align}")
 
 
 def _table(

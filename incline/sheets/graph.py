@@ -6,6 +6,7 @@ import math
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, Any
 
+from reportlab.lib.colors import Color
 from reportlab.pdfbase.pdfmetrics import stringWidth
 from reportlab.platypus import Flowable
 
@@ -18,8 +19,11 @@ if TYPE_CHECKING:
 
 __all__ = ["GraphPaper", "Scale", "scale_of"]
 
+_FAINT = Color(0.55, 0.55, 0.55)
 _FINE = 10
 """Fine squares in a division."""
+_NEAR = 16.0
+"""Points of the line closer than this share one word [pt]."""
 _LEFT, _BELOW, _ABOVE = 46.0, 34.0, 6.0
 
 
@@ -101,22 +105,25 @@ class GraphPaper(Flowable):  # type: ignore[misc]
         """Squares, axes, figures, names, and what is expected."""
         canvas = self.canv
         canvas.saveState()
-        canvas.setStrokeColor(INK)
         canvas.setFillColor(INK)
         self._squares(canvas)
+        canvas.setStrokeColor(INK)
         self._figures(canvas)
         self._expected(canvas)
         canvas.restoreState()
 
     def _squares(self, canvas: Any) -> None:  # noqa: ANN401 - untyped library
-        left, low = _LEFT, _BELOW
+        left, low = _NEAR = 16.0
+"""Points of the line closer than this share one word [pt]."""
+_LEFT, _BELOW
         right, high = self.width - 1.0, self.height - _ABOVE
         for axis, scale in enumerate(self.scales):
             fine = scale.divisions * _FINE
             for i in range(fine + 1):
                 division, rest = divmod(i, _FINE)
                 zero = not rest and division == scale.below
-                middle = 0.25 if 2 * rest == _FINE else 0.12
+                middle = 0.4 if 2 * rest == _FINE else 0.2
+                canvas.setStrokeColor(_FAINT if rest else INK)
                 canvas.setLineWidth(1.2 if zero else middle if rest else 0.5)
                 if axis == 0:
                     x = left + (right - left) * i / fine
@@ -153,11 +160,18 @@ class GraphPaper(Flowable):  # type: ignore[misc]
             canvas.drawPath(path)
             canvas.setDash([])
         canvas.setFont(REGULAR, 8)
+        canvas.setLineWidth(0.9)
+        words: list[tuple[tuple[float, float], list[str]]] = []
         for x, y, word in self.marks:
             at = self._at(x, y)
-            canvas.setLineWidth(0.9)
             canvas.circle(*at, 2.6, stroke=1, fill=0)
-            self._word(canvas, at, word)
+            near = next((w for w in words if math.dist(w[0], at) < _NEAR), None)
+            if near:
+                near[1].append(word)
+            else:
+                words.append((at, [word]))
+        for at, several in words:
+            self._word(canvas, at, ", ".join(several))
 
     def _word(self, canvas: Any, at: tuple[float, float], word: str) -> None:  # noqa: ANN401
         """Below and to the right of a point, on white, clear of a line that rises."""

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
-from incline.sheets.forms import Column, form, part, text
+from incline.sheets.forms import Column, form, text
 
 if TYPE_CHECKING:
     from incline.errors import Where
@@ -13,7 +13,7 @@ if TYPE_CHECKING:
 
 __all__ = ["changes", "items", "relocations", "tanks"]
 
-_TANKS, _ITEMS, _FEW = 12, 12, 8
+_TANKS, _ITEMS = 12, 12
 """Least rows of the lists."""
 
 
@@ -24,7 +24,9 @@ def tanks(book: Book) -> list[Any]:
     return [
         text(
             "Every tank, the empty ones too. State: empty, pressed full or slack. Sound before the"
-            " first and after the last reading, at the same pipe; say sounding or ullage."
+            " first and after the last reading, at the same pipe; say sounding or ullage. Surface"
+            " clear: the liquid of a slack tank touches neither top nor bottom at the greatest"
+            " heel, and no connection to another tank is open."
         ),
         form(
             (
@@ -39,10 +41,6 @@ def tanks(book: Book) -> list[Any]:
             rows,
             book.broad,
             spare=max(4, _TANKS - len(rows)),
-        ),
-        text(
-            "Surface clear: the liquid of a slack tank touches neither top nor bottom at the"
-            " greatest heel, and no connection to another tank is open."
         ),
     ]  # fmt: skip
 
@@ -100,7 +98,7 @@ def relocations(book: Book) -> list[Any]:
             (Column("item", 0.24), *_mass_and_centre(book), *to, Column("known from", 0.14)),
             rows,
             book.broad,
-            spare=max(5, _FEW - len(rows)),
+            spare=max(5, _ITEMS - len(rows)),
         ),
     ]
 
@@ -109,17 +107,17 @@ def changes(book: Book) -> list[Any]:
     """What came aboard or went ashore between the drafts and the shifts."""
     rows = [_change(book, c) for c in book.trial.changes]
     return [
-        *part("What came aboard or went ashore between the drafts and the first shift"),
+        text(
+            "What came aboard or went ashore between the drafts and the first shift. Once the"
+            " shifts have begun nothing comes or goes, no liquid is moved and no valve opened; what"
+            f" happens all the same is written here, with the time. {book.axes()}"
+        ),
         form(
             (Column("aboard or ashore", 0.13), Column("item", 0.28), *_mass_and_centre(book),
              Column("time", 0.08), Column("seen by", 0.09)),
             rows,
             book.broad,
-            spare=max(4, _FEW - len(rows)),
-        ),
-        text(
-            "Once the shifts have begun nothing comes or goes, no liquid is moved and no valve"
-            f" opened. What happens all the same is written here, with the time. {book.axes()}"
+            spare=max(4, _ITEMS - len(rows)),
         ),
     ]  # fmt: skip
 

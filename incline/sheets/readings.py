@@ -25,7 +25,7 @@ _LENGTHS = {"pendulum": "length, pivot to batten", "u-tube": "span between the l
 _PLOT_ROW = 22.7
 """Height of a row beside the plot [pt]: 8 mm."""
 _PLOT_LEAST, _PLOT_MOST = 300.0, 400.0
-_AROUND_PLOT = 250.0
+_AROUND_PLOT = 245.0
 """What else stands on an upright page with a plot: margins, heading, boxes, notes [pt]."""
 
 
@@ -100,16 +100,14 @@ def reading_sheet(book: Book, device: Device) -> list[Any]:
     )  # fmt: skip
     rows = [cells for row in book.rows for cells in _rows(book, device, shown, row)]
     return [
-        boxes(_particulars(book, device, shown), book.broad, abreast=4),
-        form(columns, rows, book.broad, spare=1),
+        boxes(_particulars(book, device, shown), book.broad, abreast=4, high=28.0),
         text(
-            f"Readings in {shown.unit}, to starboard positive (a reading is to starboard when it"
-            " grows as the starboard side goes down). Columns 1 to 7: successive extremes of a"
-            " swing from side to side, as they follow one another, three at the least; or repeats;"
-            " or one reading. Reduced: of three extremes, (first + 2 × second + third) / 4; of"
-            " more, the mean of that over each three in a row. Write the time at which the swing"
-            " was read, and read all devices in the same minute."
+            f"Readings in {shown.unit}, positive when they show heel to starboard. Columns 1 to 7:"
+            " the extremes of a swing as they follow one another, three at the least; or repeats;"
+            " or one reading. Reduced by hand: of three extremes (first + 2 × second + third) / 4,"
+            " of more the mean of that over each three in a row. All devices in the same minute."
         ),
+        form(columns, rows, book.broad, spare=1),
     ]
 
 
@@ -208,7 +206,7 @@ def _paper(book: Book, shown: _Shown, device: Device, size: tuple[float, float])
     up = f"deflection from zero, to starboard [{shown.unit}]"
     if not any(heights.values()):
         up = f"deflection from zero, to starboard: 1 division = ________ {shown.unit}"
-    scales = (scale_of(list(moments.values()), 10, 1.15), scale_of(list(heights.values()), 8, 1.3))
+    scales = (scale_of(list(moments.values()), 10, 1.15), scale_of(list(heights.values()), 10, 1.3))
     points: dict[tuple[float, float], list[int]] = {}
     for number, height in heights.items():
         points.setdefault((round(moments[number], 9), round(height, 9)), []).append(number)

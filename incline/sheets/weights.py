@@ -21,6 +21,8 @@ __all__ = ["test_weights"]
 _SIDE_BY_SIDE = 6
 """Weights in one table of positions; more go into further tables."""
 _SKETCH = 150.0
+_STOP_HEEL = 4.0
+"""Heel at which the test is stopped [deg]: common practice."""
 _WEIGHTS = 6
 """Least rows of the list of weights."""
 
@@ -97,7 +99,7 @@ def _positions(
     title = "moment, in moves of one weight" if stepped else f"moment to starboard [{unit}]"
     ends = (Column(title, 0.11, "right"), Column("expected heel [deg]", 0.09, "right"),
             Column("done, by", 0.10))  # fmt: skip
-    flow: list[Any] = []
+    flow = _remarks(book, stepped=stepped)
     for i in range(0, max(1, len(names)), _SIDE_BY_SIDE):
         chunk = names[i : i + _SIDE_BY_SIDE]
         columns = (
@@ -112,7 +114,7 @@ def _positions(
             for row in book.rows
         ]  # fmt: skip
         flow.append(form(columns, rows, book.broad, spare=1))
-    return [*flow, *_remarks(book, stepped=stepped)]
+    return flow
 
 
 def _remarks(book: Book, *, stepped: bool) -> list[Any]:
@@ -130,13 +132,17 @@ def _remarks(book: Book, *, stepped: bool) -> list[Any]:
         wanted = (("expected GM", ""), ("displacement", ""), ("heel at the largest moment", ""))
         return [text(said), boxes(wanted, book.broad, abreast=3)]
     show = book.show
-    return [
-        text(
-            f"{said} Expected heel: GM {show.full(known.gm, 'length')} ({known.gm_from}),"
-            f" displacement {show.full(known.displacement, 'mass', 1)}"
-            f" ({known.displacement_from})."
+    said += (
+        f" Expected heel: with GM {show.full(known.gm, 'length')} ({known.gm_from}) and"
+        f" displacement {show.full(known.displacement, 'mass', 1)} ({known.displacement_from})."
+    )
+    heels = [math.atan(abs(known.tangent(r.moment))) for r in book.rows if r.moment is not None]
+    if max(heels, default=0.0) > math.radians(_STOP_HEEL):
+        said += (
+            f" These moments heel her to {show.degrees(max(heels), 1)} degrees, beyond the"
+            f" {_STOP_HEEL:.0f} degrees at which the test is stopped: plan smaller ones."
         )
-    ]
+    return [text(said)]
 
 
 def _heel(book: Book, row: ShiftRow) -> str:
