@@ -113,9 +113,7 @@ class GraphPaper(Flowable):  # type: ignore[misc]
         canvas.restoreState()
 
     def _squares(self, canvas: Any) -> None:  # noqa: ANN401 - untyped library
-        left, low = _NEAR = 16.0
-"""Points of the line closer than this share one word [pt]."""
-_LEFT, _BELOW
+        left, low = _LEFT, _BELOW
         right, high = self.width - 1.0, self.height - _ABOVE
         for axis, scale in enumerate(self.scales):
             fine = scale.divisions * _FINE
