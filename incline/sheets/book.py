@@ -106,8 +106,9 @@ class Book:
             )
         length = self.show.unit("length")
         return (
-            f"x [{length}] {origin}, positive forward; y [{length}] from the centreplane, P or S;"
-            f" z [{length}] up from the moulded baseline."
+            f"x\N{NO-BREAK SPACE}[{length}] {origin}, positive forward;"
+            f" y\N{NO-BREAK SPACE}[{length}] from the centreplane, P or S;"
+            f" z\N{NO-BREAK SPACE}[{length}] up from the moulded baseline."
         )
 
     def moment(self, row: ShiftRow) -> str:

@@ -145,7 +145,7 @@ def drafts(book: Book) -> list[Any]:
             ),
             rows,
             book.broad,
-            spare=max(3, _MARKS - len(rows)),
+            spare=max(2, _MARKS - len(rows)),
         ),
     ]  # fmt: skip
 

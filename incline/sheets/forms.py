@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Any, Literal
 from reportlab.lib.enums import TA_LEFT, TA_RIGHT
 from reportlab.lib.styles import ParagraphStyle
 from reportlab.lib.units import mm
+from reportlab.pdfbase.pdfmetrics import stringWidth
 from reportlab.platypus import CondPageBreak, Paragraph, Table
 
 from incline.report.fonts import BOLD, REGULAR
@@ -22,8 +23,8 @@ __all__ = ["ROW", "Column", "boxes", "form", "line", "paragraph_of", "part", "te
 ROW = 9.0 * mm
 """Least height of a row that is written in by hand [pt]."""
 _PAD = 3.0
-_LONG = 90
-"""Cells of more characters are set smaller."""
+_LINES = 4
+"""Cells of more lines are set smaller."""
 _SPLIT = 300.0
 """A row higher than this may break over the page [pt]."""
 
@@ -100,13 +101,22 @@ def form(
     widths = [width * c.share / total for c in columns]
     listed = [*map(tuple, rows), *[("",) * len(columns)] * spare]
     head = [paragraph_of(c.title, f"head_{c.align}") for c in columns]
-    body = [[_cell(t, c) for t, c in zip(row, columns, strict=True)] for row in listed]
+    body = [
+        [_cell(t, c.align, w) for t, c, w in zip(row, columns, widths, strict=True)]
+        for row in listed
+    ]
     return _table([head, *body], widths, [0.0, *[high] * len(body)], heavy)
 
 
-def _cell(words: str, column: Column) -> Paragraph:
-    size = "long" if len(words) > _LONG else "cell"
-    return paragraph_of(words, f"{size}_{column.align}")
+def _cell(words: str, align: str, width: float) -> Paragraph:
+    """Words in a cell; smaller where they would take many lines, or a number would break."""
+    style = _STYLES[f"cell_{align}"]
+    room = width - 2.0 * _PAD
+    wide = max((stringWidth(w, REGULAR, style.fontSize) for w in words.split()), default=0.0)
+    usual = paragraph_of(words, style.name)
+    if wide <= room and usual.wrap(room, 1e6)[1] <= _LINES * style.leading + 0.1:
+        return usual
+    return paragraph_of(words, f"long_{align}")
 
 
 def _table(

@@ -36,6 +36,8 @@ _FOOT = _BOX + 20.0
 """From the lower margin to the text: the boxes, and a line of small print below them [pt]."""
 _SIDE = 52.0 * mm
 """Width beside the vessel's name for the number of the sheet and the date [pt]."""
+_PASSES = 5
+"""Most times that the sheets are set; the third has the right numbers as a rule."""
 _LONGEST = 300
 """Most characters of a name in the heading of a page; more would leave no room below."""
 
@@ -151,24 +153,32 @@ class _Page(PageTemplate):  # type: ignore[misc]
 
 
 def render(book: Book, sheets: Callable[[Spread], Sequence[SheetOf]]) -> bytes:
-    """The PDF; set twice, first to find on which pages the sheets begin."""
+    """The PDF; set again until the list of sheets with their pages is the one that was printed."""
     register_fonts()
+    spread, found = Spread(), None
+    data = b""
+    for _ in range(_PASSES):
+        if found == spread:
+            break
+        spread = found or spread
+        data, found = _pass(book, sheets(spread), spread)
+    return data
+
+
+def _pass(book: Book, sheets: Sequence[SheetOf], spread: Spread) -> tuple[bytes, Spread]:
+    """The PDF with the page numbers known so far, and those that it has."""
+    target = BytesIO()
+    starts: list[int] = []
+    document = _document(target, book, sheets, spread)
+    flow: list[Any] = []
+    for number, sheet in enumerate(sheets, start=1):
+        if number > 1:
+            flow += [NextPageTemplate(f"sheet-{number}"), PageBreak()]
+        flow += [_Start(sheet.title, starts), *sheet.flow]
     identity = f"sheets {book.trial.digest} {book.version} {book.page}"
-    spread, target = Spread(), BytesIO()
-    for _ in range(2):
-        listed = sheets(spread)
-        spread = Spread(tuple(s.title for s in listed), spread.starts, spread.pages)
-        target = BytesIO()
-        starts: list[int] = []
-        document = _document(target, book, listed, spread)
-        flow: list[Any] = []
-        for number, sheet in enumerate(listed, start=1):
-            if number > 1:
-                flow += [NextPageTemplate(f"sheet-{number}"), PageBreak()]
-            flow += [_Start(sheet.title, starts), *sheet.flow]
-        document.build(flow, canvasmaker=stamped(book.printed, identity))
-        spread = Spread(spread.titles, tuple(starts), int(document.page))
-    return target.getvalue()
+    document.build(flow, canvasmaker=stamped(book.printed, identity))
+    titles = tuple(s.title for s in sheets)
+    return target.getvalue(), Spread(titles, tuple(starts), int(document.page))
 
 
 def _document(

@@ -23,6 +23,8 @@ _SIDE_BY_SIDE = 6
 _SKETCH = 150.0
 _STOP_HEEL = 4.0
 """Heel at which the test is stopped [deg]: common practice."""
+_UNNAMED = 4
+"""Columns for weights of which nothing is known."""
 _WEIGHTS = 6
 """Least rows of the list of weights."""
 
@@ -63,7 +65,7 @@ def _names(book: Book) -> tuple[str, ...]:
     """The weights in the order of the list; those of the usual sequence where none is listed."""
     if book.trial.weights:
         return tuple(w.id for w in book.trial.weights)
-    return tuple(book.rows[0].places) if book.rows else ()
+    return tuple(book.rows[0].places) or ("",) * _UNNAMED
 
 
 def _weight(book: Book, weight: Weight) -> tuple[str, ...]:
@@ -100,11 +102,11 @@ def _positions(
     ends = (Column(title, 0.11, "right"), Column("expected heel [deg]", 0.09, "right"),
             Column("done, by", 0.10))  # fmt: skip
     flow = _remarks(book, stepped=stepped)
-    for i in range(0, max(1, len(names)), _SIDE_BY_SIDE):
+    for i in range(0, len(names), _SIDE_BY_SIDE):
         chunk = names[i : i + _SIDE_BY_SIDE]
         columns = (
             Column("shift", 0.06), Column("time", 0.08),
-            *(Column(name, 0.56 / max(1, len(chunk))) for name in chunk), *ends,
+            *(Column(name, 0.56 / len(chunk)) for name in chunk), *ends,
         )  # fmt: skip
         rows = [
             (
