@@ -18,8 +18,8 @@ if TYPE_CHECKING:
 __all__ = ["DeckPlan", "Spot"]
 
 _SIZE = 9.0
-_ARM = 3.0
-_GAP = 5.0
+_ARM = 2.2
+_GAP = 9.0
 
 
 @dataclass(frozen=True, slots=True)
@@ -111,7 +111,7 @@ class DeckPlan(Flowable):  # type: ignore[misc]
         at: tuple[float, float],
         taken: list[tuple[float, float, float, float]],
     ) -> None:
-        """The mark beside its spot, where it covers no other; a thin line leads to one far off."""
+        """The mark beside its spot, where it covers no other, and a thin line between them."""
         wide = stringWidth(word, BOLD, _SIZE)
         x, y = next(
             (
@@ -123,10 +123,9 @@ class DeckPlan(Flowable):  # type: ignore[misc]
         )
         taken.append(_box(x, y, wide, _SIZE))
         near = (min(max(at[0], x), x + wide), min(max(at[1], y), y + _SIZE))
-        if math.dist(near, at) > 2.0 * _GAP:
-            canvas.setLineWidth(0.3)
-            canvas.line(*at, *near)
-            canvas.setLineWidth(1.0)
+        canvas.setLineWidth(0.3)
+        canvas.line(*at, *near)
+        canvas.setLineWidth(1.0)
         canvas.drawString(x, y + 1.2, word)
 
     def _around(self, at: tuple[float, float], wide: float) -> Iterator[tuple[float, float]]:

@@ -91,11 +91,10 @@ def form(
     *,
     spare: int = 0,
     high: float = ROW,
-    heavy: Iterable[int] = (),
 ) -> Table:
     """A ruled table of ``width`` points with ``spare`` empty rows, its heading repeated by page.
 
-    No row is lower than ``high`` points; after the rows numbered in ``heavy`` stands a heavy rule.
+    No row is lower than ``high`` points.
     """
     total = sum(c.share for c in columns)
     widths = [width * c.share / total for c in columns]
@@ -105,7 +104,7 @@ def form(
         [_cell(t, c.align, w) for t, c, w in zip(row, columns, widths, strict=True)]
         for row in listed
     ]
-    return _table([head, *body], widths, [0.0, *[high] * len(body)], heavy)
+    return _table([head, *body], widths, [0.0, *[high] * len(body)])
 
 
 def _cell(words: str, align: str, width: float) -> Paragraph:
@@ -119,9 +118,7 @@ def _cell(words: str, align: str, width: float) -> Paragraph:
     return paragraph_of(words, f"long_{align}")
 
 
-def _table(
-    cells: list[list[Paragraph]], widths: list[float], least: list[float], heavy: Iterable[int]
-) -> Table:
+def _table(cells: list[list[Paragraph]], widths: list[float], least: list[float]) -> Table:
     heights = [
         max(low, *(_height(c, w) for c, w in zip(row, widths, strict=True)))
         for row, low in zip(cells, least, strict=True)
@@ -145,7 +142,6 @@ def _table(
             ("GRID", (0, 0), (-1, -1), 0.5, INK),
             ("BOX", (0, 0), (-1, -1), 1.0, INK),
             ("LINEBELOW", (0, 0), (-1, 0), 1.0, INK),
-            *(("LINEBELOW", (0, i + 1), (-1, i + 1), 1.0, INK) for i in heavy),
         ],
         hAlign="LEFT",
         spaceBefore=3,

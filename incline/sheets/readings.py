@@ -102,9 +102,9 @@ def reading_sheet(book: Book, device: Device) -> list[Any]:
     return [
         boxes(_particulars(book, device, shown), book.broad, abreast=4, high=28.0),
         text(
-            f"Readings in {shown.unit}, positive when they show heel to starboard. Columns 1 to 7:"
-            " the extremes of a swing as they follow one another, three at the least; or repeats;"
-            " or one reading. Reduced by hand: of three extremes (first + 2 × second + third) / 4,"
+            f"Readings [{shown.unit}] are positive when they show heel to starboard. Columns 1 to"
+            " 7: the extremes of a swing as they follow one another, three at the least; or"
+            " repeats; or one reading. Reduced by hand: of three extremes (first + 2 × second + third) / 4,"
             " of more the mean of that over each three in a row. All devices in the same minute."
         ),
         form(columns, rows, book.broad, spare=1),
@@ -169,13 +169,13 @@ def running_plot(book: Book, device: Device) -> list[Any]:
     high = book.page[1] - _AROUND_PLOT - _PLOT_ROW * (len(book.rows) + 1)
     paper = (book.width, min(_PLOT_MOST, max(_PLOT_LEAST, high)))
     return [
-        text(_explained(book, shown)),
+        text(_explained(book)),
         _paper(book, shown, device, paper),
         _points(book, device, shown, expected),
     ]
 
 
-def _explained(book: Book, shown: _Shown) -> str:
+def _explained(book: Book) -> str:
     said = (
         "Plot each reduced reading, less that of the first shift, against its moment before the"
         " next weight moves. A point off the line of the others is read again."
@@ -186,7 +186,7 @@ def _explained(book: Book, shown: _Shown) -> str:
     return (
         f"{said} Dashed: what is expected with GM {show.full(known.gm, 'length')}"
         f" ({known.gm_from}) and displacement {show.full(known.displacement, 'mass', 1)}"
-        f" ({known.displacement_from}), in {shown.unit}: a guide, not a limit."
+        f" ({known.displacement_from}): a guide, not a limit."
     )
 
 

@@ -20,7 +20,7 @@ __all__ = ["test_weights"]
 
 _SIDE_BY_SIDE = 6
 """Weights in one table of positions; more go into further tables."""
-_SKETCH = 150.0
+_SKETCH = 165.0
 _STOP_HEEL = 4.0
 """Heel at which the test is stopped [deg]: common practice."""
 _UNNAMED = 4
