@@ -132,3 +132,22 @@ def test_wrong_usage_exits_2(arguments, tmp_path):
     assert run.returncode == 2
     assert "Traceback" not in run.stderr
     assert not list(tmp_path.iterdir())
+
+
+@pytest.mark.parametrize(
+    ("file", "old", "new"),
+    [
+        ("readings.csv", ",414", ",4l4"),  # a letter for a figure
+        ("shifts.csv", "-3.400", "3.400"),  # nothing moves: no moment at all
+        ("tanks.csv", "Day tank", "tank " * 1200),  # higher than a page
+        ("weights.csv", "A,1.152", "A,1.152,,,,,"),  # cells out of place
+    ],
+)
+def test_slips_do_not_keep_the_sheets_from_being_printed(write_folder, tmp_path, file, old, new):
+    folder = planned(write_folder, without=())
+    text = (folder / file).read_text(encoding="utf-8")
+    assert old in text
+    (folder / file).write_text(text.replace(old, new), encoding="utf-8")
+    data = printed(tmp_path, read_partial(folder), gm=1.0, displacement=300.0)
+    assert data.startswith(b"%PDF")
+    assert sheet(texts(data), "End checks")

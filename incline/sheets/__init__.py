@@ -15,8 +15,9 @@ from incline.sheets.cover import cover, people_aboard
 from incline.sheets.floating import density, drafts, surroundings
 from incline.sheets.lists import changes, items, relocations, tanks
 from incline.sheets.paper import SheetOf, Spread, render
+from incline.sheets.plots import running_plot
 from incline.sheets.prediction import predict
-from incline.sheets.readings import device_title, reading_sheet, running_plot
+from incline.sheets.readings import device_title, reading_sheet
 from incline.sheets.sequence import STANDARD_SHIFTS, ShiftRow, rows_of, standard_rows
 from incline.sheets.weights import test_weights
 from incline.units import SYSTEMS

@@ -13,7 +13,7 @@ from reportlab.platypus import CondPageBreak, Paragraph, Table
 
 from incline.report.fonts import BOLD, REGULAR
 from incline.report.styles import INK
-from incline.report.text import markup
+from incline.report.text import elide, markup
 
 if TYPE_CHECKING:
     from collections.abc import Iterable, Sequence
@@ -23,6 +23,8 @@ __all__ = ["ROW", "Column", "boxes", "form", "line", "paragraph_of", "part", "te
 ROW = 9.0 * mm
 """Least height of a row that is written in by hand [pt]."""
 _PAD = 3.0
+_TITLE = 200
+"""Most characters of a heading: it stands on every page of its table and cannot break."""
 _LINES = 4
 """Cells of more lines are set smaller."""
 _SPLIT = 300.0
@@ -99,7 +101,7 @@ def form(
     total = sum(c.share for c in columns)
     widths = [width * c.share / total for c in columns]
     listed = [*map(tuple, rows), *[("",) * len(columns)] * spare]
-    head = [paragraph_of(c.title, f"head_{c.align}") for c in columns]
+    head = [paragraph_of(elide(c.title, _TITLE), f"head_{c.align}") for c in columns]
     body = [
         [_cell(t, c.align, w) for t, c, w in zip(row, columns, widths, strict=True)]
         for row in listed
