@@ -189,6 +189,7 @@ def _document(
         target,
         pagesize=book.page,
         title=f"Field sheets of an inclining test{f', {name}' if name else ''}",
+        subject="Sheets to be filled in by hand at the test",
         author=f"incline {book.version}",
         creator=f"incline {book.version}",
         producer=f"incline {book.version}",
