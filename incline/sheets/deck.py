@@ -129,13 +129,15 @@ class DeckPlan(Flowable):  # type: ignore[misc]
         canvas.drawString(x, y + 1.2, word)
 
     def _around(self, at: tuple[float, float], wide: float) -> Iterator[tuple[float, float]]:
-        """Lower left corners for a word, ever farther from its spot, on the sketch."""
+        """Lower left corners for a word on the sketch, ever farther off; abreast of its spot first.
+
+        Places of a weight differ across the ship, so a word ahead or astern is clear of the others.
+        """
         for ring in range(1, 14):
-            far = _GAP * ring
-            for turn in range(8 * ring):
-                angle = 2.0 * math.pi * turn / (8 * ring) + 0.7
-                x = at[0] + (far + wide / 2.0) * math.cos(angle) - wide / 2.0
-                y = at[1] + (far + _SIZE / 2.0) * math.sin(angle) - _SIZE / 2.0
+            turns = [2.0 * math.pi * n / (8 * ring) for n in range(8 * ring)]
+            for angle in sorted(turns, key=lambda t: round(abs(math.sin(t)), 6)):
+                x = at[0] + (_GAP * ring + wide / 2.0) * math.cos(angle) - wide / 2.0
+                y = at[1] + (_GAP * ring + _SIZE / 2.0) * math.sin(angle) - _SIZE / 2.0
                 if 0.0 <= x <= self.width - wide and 0.0 <= y <= self.height - _SIZE:
                     yield x, y
 
