@@ -46,6 +46,13 @@ class Units(StrEnum):
     us = "us"
 
 
+class Paper(StrEnum):
+    """Paper of the field sheets."""
+
+    a4 = "a4"
+    letter = "letter"
+
+
 def main() -> None:
     """Run the command line; user errors become lines on standard error and exit status 1."""
     for stream in (sys.stdout, sys.stderr):
@@ -60,12 +67,18 @@ def main() -> None:
 
 
 def _complain(lines: list[str]) -> None:
-    many = len(lines) > 1
-    if many:
-        print(f"incline: {len(lines)} problems", file=sys.stderr)
-    for line in lines:
-        print(_folded(f"  {line}" if many else f"incline: {line}"), file=sys.stderr)
+    if len(lines) > 1:
+        _tell(f"{len(lines)} problems", lines)
+    else:
+        print(_folded(f"incline: {lines[0]}"), file=sys.stderr)
     raise SystemExit(1)
+
+
+def _tell(title: str, lines: list[str]) -> None:
+    """A list on standard error."""
+    print(f"incline: {title}", file=sys.stderr)
+    for line in lines:
+        print(_folded(f"  {line}"), file=sys.stderr)
 
 
 def _folded(line: str) -> str:
@@ -267,6 +280,71 @@ _MOST_HEEL = 90.0
 
 
 @app.command()
+def sheets(
+    trial: Annotated[
+        Path | None, typer.Argument(help="Folder of one trial, complete or not.")
+    ] = None,
+    blank: Annotated[bool, typer.Option("--blank", help="Sheets for any ship.")] = False,
+    output: Annotated[
+        Path | None, typer.Option("--output", "-o", metavar="FILE", help="Name of the PDF.")
+    ] = None,
+    paper: Annotated[Paper | None, typer.Option(help="Paper, if not that of the units.")] = None,
+    units: Annotated[Units, typer.Option(help="Units, where no trial says.")] = Units.metric,
+    devices: Annotated[
+        int, typer.Option(min=1, max=24, help="Devices, where no trial lists them.")
+    ] = 3,
+    shifts: Annotated[
+        int, typer.Option(min=3, max=60, help="Shifts, where no trial lists them.")
+    ] = 9,
+    gm: Annotated[
+        str | None, typer.Option(metavar="LENGTH", help='GM expected, such as "0.95 m".')
+    ] = None,
+    displacement: Annotated[
+        str | None, typer.Option(metavar="MASS", help='Displacement expected: "312 t".')
+    ] = None,
+    force: Force = False,
+) -> None:
+    """Write sheets to fill in by hand, with what a trial already knows, or blank.
+
+    A trial need not be complete. Readings are predicted for the plots when GM and displacement
+    are known: from the options, the trial's gm_before, or the trial's own result.
+
+    Example: incline sheets my-vessel --gm "0.95 m" --displacement "312 t"
+    """
+    from incline import __version__
+    from incline.files import file_stem, refuse_existing, templates_folder
+    from incline.progress import Step
+    from incline.reading.partial import read_partial
+    from incline.units import LENGTH, MASS
+
+    if (trial is None) != blank:
+        raise typer.BadParameter("a folder of a trial, or --blank, one of them")
+    expected = _above_zero(gm, LENGTH, "--gm"), _above_zero(displacement, MASS, "--displacement")
+    partial = read_partial(trial or templates_folder() / units.value)
+    stem = "field"
+    if trial is not None:
+        day = partial.date.isoformat() if partial.date else "undated"
+        stem = file_stem(partial.trial.vessel.name, day)
+    target = output or Path(f"{stem}-sheets.pdf")
+    refuse_existing(target, force=force)
+    with Step("Writing the sheets"):
+        from incline.sheets import Choices, write_sheets
+
+        choices = Choices(
+            paper=None if paper is None else paper.value,
+            units=units.value,
+            devices=devices,
+            shifts=shifts,
+            gm=expected[0],
+            displacement=expected[1],
+        )
+        write_sheets(partial, target, _report_date(), __version__, choices)
+    print(f"Sheets written to {target}")
+    if partial.wrong:
+        _tell("left blank, because it cannot be used", list(map(str, partial.told)))
+
+
+@app.command()
 def compare(
     old: Annotated[
         Path | None, typer.Argument(help="Earlier, calculated or lead ship's lightship.")
@@ -333,6 +411,21 @@ def _situation(name: str) -> Situation:
         return situation_named(name)
     except InclineError as error:
         raise typer.BadParameter(str(error), param_hint="--situation") from error
+
+
+def _above_zero(text: str | None, quantity: Quantity, option: str) -> float | None:
+    """What an option gives in inside units; wrong usage when it is not above zero."""
+    from incline.units import QuantityError, parse_quantity
+
+    if text is None:
+        return None
+    try:
+        value = parse_quantity(text, quantity)
+    except QuantityError as error:
+        raise typer.BadParameter(f"expected {error.expected}", param_hint=option) from error
+    if value <= 0.0:
+        raise typer.BadParameter(f"expected a {quantity.name} above zero", param_hint=option)
+    return value
 
 
 def _masses(texts: list[str] | None, situation: Situation | None) -> list[float] | None:

@@ -22,8 +22,8 @@ if TYPE_CHECKING:
     from incline.reading.settings import Frame
 
 __all__ = [
-    "SHIFT_COLUMNS", "WEIGHT_COLUMNS", "ShiftTable", "check_moments", "check_moves", "read_shifts",
-    "read_weights", "shift_number",
+    "SHIFT_COLUMNS", "WEIGHT_COLUMNS", "ShiftTable", "check_moments", "check_moves",
+    "moments_by_shift", "read_shifts", "read_weights", "shift_number",
 ]  # fmt: skip
 
 WEIGHT_COLUMNS = (
@@ -221,7 +221,7 @@ def check_moves(sheet: Sheet, weights: Sequence[Weight], shifts: Sequence[Shift]
 
 def check_moments(sheet: Sheet, weights: Sequence[Weight], shifts: Sequence[Shift]) -> None:
     """A line needs three distinct moments at least; nothing is said while a moment is unknown."""
-    moments = _moments(weights, shifts)
+    moments = moments_by_shift(weights, shifts)
     if not moments or any(math.isnan(m) for m in moments):
         return
     near = _NEAR * max(abs(m) for m in moments)
@@ -236,7 +236,7 @@ def check_moments(sheet: Sheet, weights: Sequence[Weight], shifts: Sequence[Shif
         sheet.collector.add(Where(sheet.file, 0, column), "moments-too-few", found, expected)
 
 
-def _moments(weights: Sequence[Weight], shifts: Sequence[Shift]) -> list[float]:
+def moments_by_shift(weights: Sequence[Weight], shifts: Sequence[Shift]) -> list[float]:
     """Moments about the start [t m] to starboard; BAD where a weight or its start is not known."""
     mass = {w.id: w.mass for w in weights}
     start = {move.weight: move.y for shift in shifts[:1] for move in shift.moves}

@@ -11,7 +11,7 @@ from incline.report.fonts import REGULAR
 from incline.report.styles import INK, STYLES
 from incline.report.text import markup
 
-__all__ = ["cautions", "remarks", "signatures"]
+__all__ = ["BEFORE", "STOP", "cautions", "remarks", "signatures"]
 
 _DECIDES = (
     "This report is a calculation. It is meant to help the person who answers for the test to "
@@ -23,7 +23,7 @@ _DECIDES = (
     "show that the ship is unsafe. A value inside every limit does not show that she is safe.",
 )
 
-_BEFORE = (
+BEFORE = (
     "Before any weight is lifted, predict GM, heel and remaining freeboard for the largest "
     "moment, and do not begin with too little stability to carry it.",
     "A weight that hangs from the ship's own crane or derrick acts at the point it hangs "
@@ -33,7 +33,7 @@ _BEFORE = (
     "Mooring lines are slack while readings are taken, and someone stands by each of them.",
 )
 
-_STOP = (
+STOP = (
     "the heel passes 4 degrees, or a quarter more than predicted;",
     "the heel goes on growing after the weight has been set down;",
     "the ship lolls from one side to the other, or GM comes out at zero or below. Never try to "
@@ -57,9 +57,9 @@ def cautions(_sheet: Sheet) -> list[Any]:
         *part("Standing of this report"),
         *(bullet(text) for text in _DECIDES),
         *part("Before and during a test"),
-        *(bullet(text) for text in _BEFORE),
+        *(bullet(text) for text in BEFORE),
         *part("Stop the test when"),
-        *(bullet(text) for text in _STOP),
+        *(bullet(text) for text in STOP),
         paragraph(
             "The reasons to stop are common practice and this program's own choice of figures; "
             "they are not quoted from a standard. Check them against the procedure "

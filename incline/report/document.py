@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import hashlib
 from dataclasses import dataclass
 from io import BytesIO
 from typing import TYPE_CHECKING, Any
@@ -10,11 +9,11 @@ from typing import TYPE_CHECKING, Any
 from reportlab.lib.pagesizes import A4, LETTER
 from reportlab.lib.units import mm
 from reportlab.pdfbase.pdfmetrics import stringWidth
-from reportlab.pdfgen.canvas import Canvas
 from reportlab.platypus import BaseDocTemplate, CondPageBreak, Frame, PageTemplate, Paragraph
 
 from incline.report.fonts import REGULAR, register_fonts
 from incline.report.show import Show
+from incline.report.stamp import stamped
 from incline.report.styles import RULE, STYLES
 from incline.report.text import elide, markup
 
@@ -146,28 +145,15 @@ def _fit(text: str, room: float) -> str:
     return line
 
 
-def _stamped(sheet: Sheet) -> Callable[..., Canvas]:
-    """Canvas whose dates and identifier come from the report, never from a clock or the machine."""
-    stamp = f"D:{sheet.report_date:%Y%m%d}000000+00'00'"
-    identity = f"{sheet.reduction.trial.digest} {stamp} {sheet.version}"
-
-    def make(*args: object, **options: object) -> Canvas:
-        canvas = Canvas(*args, **options)
-        canvas.setDateFormatter(lambda *_: stamp)
-        canvas._doc.signature = hashlib.md5(identity.encode(), usedforsecurity=False)  # noqa: SLF001
-        return canvas
-
-    return make
-
-
 def render(sheet: Sheet, story: Callable[[Sheet], list[Any]]) -> bytes:
     """The PDF; the flow is set twice, first to count the pages."""
     register_fonts()
     pages: int | None = None
     target = BytesIO()
+    canvas = stamped(sheet.report_date, f"{sheet.reduction.trial.digest} {sheet.version}")
     for _ in range(2):
         target = BytesIO()
         document = _Document(target, sheet, pages)
-        document.build(story(sheet), canvasmaker=_stamped(sheet))
+        document.build(story(sheet), canvasmaker=canvas)
         pages = int(document.page)
     return target.getvalue()
