@@ -415,14 +415,9 @@ def _situation(name: str) -> Situation:
 
 def _above_zero(text: str | None, quantity: Quantity, option: str) -> float | None:
     """What an option gives in inside units; wrong usage when it is not above zero."""
-    from incline.units import QuantityError, parse_quantity
-
     if text is None:
         return None
-    try:
-        value = parse_quantity(text, quantity)
-    except QuantityError as error:
-        raise typer.BadParameter(f"expected {error.expected}", param_hint=option) from error
+    value = _amount(text, quantity, option)
     if value <= 0.0:
         raise typer.BadParameter(f"expected a {quantity.name} above zero", param_hint=option)
     return value
