@@ -30,11 +30,13 @@ def devices_and_readings(sheet: Sheet) -> list[Any]:
 
 def _devices(sheet: Sheet) -> Any:  # noqa: ANN401 - untyped library
     columns = (
-        Column("device", 0.24, "left"),
-        Column("kind", 0.15, "left"),
-        Column(f"length or span [{sheet.show.unit('length')}]", 0.15),
-        Column("place", 0.22, "left"),
-        Column("calibration", 0.24, "left"),
+        Column("device", 0.17, "left"),
+        Column("kind", 0.12, "left"),
+        Column(f"length or span [{sheet.show.unit('length')}]", 0.11),
+        Column("place", 0.16, "left"),
+        Column("calibration", 0.15, "left"),
+        Column("damping", 0.15, "left"),
+        Column("read by", 0.14, "left"),
     )
     return grid(columns, [_device(sheet, d) for d in sheet.reduction.trial.devices], sheet.width)
 
@@ -44,8 +46,8 @@ def _device(sheet: Sheet, device: Device) -> list[str]:
         device.id,
         device.kind,
         sheet.show.number(device.length, "length"),
-        device.place or NOT_RECORDED,
-        device.calibration or NOT_RECORDED,
+        *(t or NOT_RECORDED for t in (device.place, device.calibration)),
+        *(t or NOT_RECORDED for t in (device.damping, device.read_by)),
     ]
 
 
