@@ -4,7 +4,6 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
-from reportlab.lib.utils import simpleSplit
 from reportlab.platypus.flowables import Flowable
 
 from incline.report.fonts import REGULAR
@@ -16,8 +15,8 @@ if TYPE_CHECKING:
 
 __all__ = ["Contents"]
 
-_SIZE, _LINE, _NUMBER = 8.2, 13.2, 26.0
-"""Type size, distance of lines, and width of the page numbers [pt]."""
+_SIZE, _LINE, _TITLE, _NUMBER = 8.2, 13.2, 62.0, 26.0
+"""Type size, distance of lines, where titles begin, width of the page numbers [pt]."""
 
 
 class Contents(Flowable):  # type: ignore[misc]
@@ -26,7 +25,7 @@ class Contents(Flowable):  # type: ignore[misc]
     def __init__(self, flow: Iterable[Any]) -> None:
         super().__init__()
         found = (f for f in flow if isinstance(f, Heading) and f.level == 0)
-        self.lines = [(f.getPlainText(), f.key) for f in found]
+        self.lines = [(f.title, f.key) for f in found]
         self.spaceAfter = 8
 
     def wrap(self, width: float, _height: float) -> tuple[float, float]:
@@ -42,8 +41,9 @@ class Contents(Flowable):  # type: ignore[misc]
         canvas.setLineWidth(0.3)
         for i, (title, key) in enumerate(self.lines):
             base = self.height - _LINE * (i + 1) + 4.0
-            line = simpleSplit(title, REGULAR, _SIZE, self.width - _NUMBER - 8.0)[0]
-            canvas.drawString(0.0, base, line)
+            number, _, words = title.partition("\N{NO-BREAK SPACE}\N{NO-BREAK SPACE}")
+            canvas.drawString(0.0, base, number)
+            canvas.drawString(_TITLE, base, words)
             canvas.line(0.0, base - 3.0, self.width, base - 3.0)
             canvas.linkRect("", key, (0.0, base - 3.0, self.width, base + _SIZE), relative=1)
             canvas.saveState()

@@ -86,7 +86,7 @@ class Sheet:
 def heading(number: str, title: str, need: float = 0.0) -> list[Any]:
     """A numbered section heading; begins a new page where what follows has no room to begin."""
     gap = "\N{NO-BREAK SPACE}\N{NO-BREAK SPACE}"
-    return [Room(need), Heading(f"{number}{gap}{title}", 0, f"section-{number}")]
+    return [Room(need), Heading(f"{number}{gap}{title}", 0, f"section-{number.rpartition(' ')[2]}")]
 
 
 def part(title: str, need: float = 0.0) -> list[Any]:

@@ -40,7 +40,7 @@ def tables_of(flow: Iterable[Any]) -> dict[str, bytes]:
 
 def _name(section: str, title: str, taken: dict[str, bytes]) -> str:
     """``09-density-of-the-water.csv``; a second table under one heading gets a number."""
-    words = title.removeprefix(section).strip()
+    words = title.removeprefix("Appendix ").removeprefix(section).strip()
     number = section.zfill(2) if section.isdigit() else section.lower() or "00"
     stem = f"{number}-{slug(words) or 'table'}"[:_LONGEST].rstrip("-")
     name, count = f"{stem}.csv", 1

@@ -9,6 +9,8 @@ from incline.report.show import MISSING, NOT_DETERMINED, NOT_RECORDED
 from incline.report.tables import Column, Row, grid, steps
 
 if TYPE_CHECKING:
+    from collections.abc import Iterable
+
     from incline.record import Tank
 
 __all__ = ["centre_of_gravity"]
@@ -55,11 +57,20 @@ def _tanks(sheet: Sheet) -> list[Any]:
             ("total", "", "", "", "", mass, "", "", "", show.number(free.moment, "moment")), "total"
         )
     )
-    bases = [f"{t.name}: {t.fsm_basis}." for t in trial.tanks if t.fsm_basis and t.fsm]
+    bases = [f"{basis}: {', '.join(names)}." for basis, names in _bases(trial.tanks).items()]
     flow: list[Any] = [grid(columns, rows, sheet.width)]
     if bases:
         flow.append(note("Free-surface moments. " + " ".join(bases)))
     return flow
+
+
+def _bases(tanks: Iterable[Tank]) -> dict[str, list[str]]:
+    """How free-surface moments were found, with the tanks of each way."""
+    found: dict[str, list[str]] = {}
+    for tank in tanks:
+        if tank.fsm_basis and tank.fsm:
+            found.setdefault(tank.fsm_basis, []).append(tank.name)
+    return found
 
 
 def _tank(sheet: Sheet, tank: Tank) -> list[str]:

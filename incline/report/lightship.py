@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import TYPE_CHECKING, Any
 
 from incline.report.document import Sheet, note, paragraph, part
@@ -35,7 +36,7 @@ def to_lightship(sheet: Sheet) -> list[Any]:
     )
     rows = _rows(outcome, show)
     if sheet.beside is not None:
-        rows = _interleaved(rows, _rows(outcome, sheet.beside))
+        rows = _in_both(rows, _rows(outcome, sheet.beside))
     return [grid(columns, rows, sheet.width), *_sums(sheet), *_bases(sheet)]
 
 
@@ -49,14 +50,12 @@ def _rows(outcome: Outcome, show: Show) -> list[Row]:
     return [*rows, _total(show, "Lightship", light.displacement.value, centre)]
 
 
-def _interleaved(rows: list[Row], others: list[Row]) -> list[Row]:
-    """Each row of numbers followed by the same in other units."""
-    both: list[Row] = []
-    for own, other in zip(rows, others, strict=True):
-        both.append(own)
-        if any(other.cells[1:]):
-            both.append(Row(("", *other.cells[1:]), "beside"))
-    return both
+def _in_both(rows: list[Row], others: list[Row]) -> list[Row]:
+    """Each row of numbers with the same in other units below them."""
+    return [
+        replace(own, other=("", *other.cells[1:])) if any(other.cells[1:]) else own
+        for own, other in zip(rows, others, strict=True)
+    ]
 
 
 def _total(

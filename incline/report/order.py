@@ -70,7 +70,7 @@ def story(sheet: Sheet) -> list[Any]:
     further = [(title, body) for title, section in _APPENDICES if (body := section(sheet))]
     numbered = [(str(n), title, body) for n, (title, body) in enumerate(bodies, start=1)]
     lettered = [
-        (letter, f"Appendix: {title}", body)
+        (f"Appendix {letter}", title, body)
         for letter, (title, body) in zip(ascii_uppercase, further, strict=False)
     ]
     sections = [[*heading(n, title), *body] for n, title, body in (*numbered, *lettered)]

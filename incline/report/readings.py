@@ -16,6 +16,10 @@ if TYPE_CHECKING:
 __all__ = ["devices_and_readings"]
 
 
+_LONG = 24
+"""Characters of a device's name from which its column is wider."""
+
+
 def devices_and_readings(sheet: Sheet) -> list[Any]:
     """Table of devices, table of readings, and the exclusions with their reasons."""
     return [
@@ -53,15 +57,16 @@ def _device(sheet: Sheet, device: Device) -> list[str]:
 
 def _readings(sheet: Sheet) -> list[Any]:
     trial = sheet.reduction.trial
+    more = 0.12 if any(len(d.id) > _LONG for d in trial.devices) else 0.0
     columns = (
         Column("shift", 0.05, "left"),
-        Column("device", 0.12, "left"),
-        Column("as recorded", 0.25, "left"),
+        Column("device", 0.12 + more, "left"),
+        Column("as recorded", 0.25 - more / 2.0, "left"),
         Column("reduced", 0.09),
         Column("u", 0.06),
         Column("unit", 0.06, "left"),
         Column("tangent", 0.09),
-        Column("how reduced; note", 0.28, "left"),
+        Column("how reduced; note", 0.28 - more / 2.0, "left"),
     )
     decimals = sheet.show.raw_decimals(trial.readings)
     points = {(p.shift, p.device): p for p in sheet.reduction.outcome.heel.points}

@@ -9,6 +9,7 @@ from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
 from incline.report.show import NOT_RECORDED
+from incline.report.text import elide
 
 if TYPE_CHECKING:
     from collections.abc import Iterable, Sequence
@@ -209,13 +210,13 @@ def about_tables(trial: Trial) -> list[Asked]:
     ]  # fmt: skip
 
 
-_NAMED = 6
-"""Most names in one line; of more, the number is told."""
+_NAMED, _SHORT = 6, 32
+"""Most names in one line, and most characters of each; of more names, the number is told."""
 
 
 def _of(names: Sequence[str]) -> str:
     if not names:
         return ""
-    if len(names) > _NAMED:
-        return f": {', '.join(names[:_NAMED])} and {len(names) - _NAMED} more"
-    return f": {', '.join(names)}"
+    shown = ", ".join(elide(name, _SHORT) for name in names[:_NAMED])
+    more = len(names) - _NAMED
+    return f": {shown} and {more} more" if more > 0 else f": {shown}"

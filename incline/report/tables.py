@@ -19,6 +19,8 @@ __all__ = ["Column", "Listed", "Row", "facts", "grid", "steps"]
 
 _SHADE = Color(0.93, 0.93, 0.93)
 _PAD = 1.6
+_PAGE, _ENOUGH = 600.0, 300.0
+"""Points of height that every empty page has, and in which a row taller than that may begin."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -36,11 +38,12 @@ class Row:
 
     A ``stress`` row is shaded and bold. An ``under`` row belongs to the one above it: its second
     cell spans all columns but the first. A ``beside`` row belongs to the one above it too, and says
-    the same in other units.
+    the same in other units; ``other`` are cells that say so within the row itself.
     """
 
     cells: tuple[str, ...]
     look: Literal["plain", "total", "band", "span", "stress", "under", "beside"] = "plain"
+    other: tuple[str, ...] = ()
 
 
 class Listed(Table):  # type: ignore[misc]
@@ -48,6 +51,19 @@ class Listed(Table):  # type: ignore[misc]
 
     titles: tuple[str, ...] = ()
     texts: tuple[tuple[str, ...], ...] = ()
+
+    def split(self, width: float, height: float) -> list[Table]:
+        """Parts for this page and the next; a row splits only when no page could hold it."""
+        allowed, self.splitInRow = self.splitInRow, 0
+        parts: list[Table] = super().split(width, height)
+        if not parts and allowed and height > _ENOUGH:
+            first = self._rowHeights[: self.repeatRows + 1]
+            self.splitInRow = int(sum(first) > _PAGE)
+            parts = super().split(width, height)
+        self.splitInRow = allowed
+        for part in parts:
+            part.splitInRow = allowed
+        return parts
 
 
 def _cell(text: str, align: str, *, bold: bool) -> Paragraph:
@@ -68,7 +84,11 @@ def _row_cells(columns: Sequence[Column], row: Row) -> list[Any]:
             for t, a in zip(row.cells, aligns, strict=True)
         ]
     bold = row.look in ("total", "stress")
-    return [_cell(t, a, bold=bold) for t, a in zip(row.cells, aligns, strict=True)]
+    cells = [_cell(t, a, bold=bold) for t, a in zip(row.cells, aligns, strict=True)]
+    if not row.other:
+        return cells
+    others = zip(cells, row.other, aligns, strict=True)
+    return [[c, Paragraph(markup(t), STYLES[f"beside_{a}"])] if t else c for c, t, a in others]
 
 
 def _looks(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
@@ -76,6 +96,7 @@ def _looks(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
     for i, row in enumerate(rows, start=1):
         if row.look == "band":
             commands += [("SPAN", (0, i), (-1, i)), ("BACKGROUND", (0, i), (-1, i), _SHADE)]
+            commands.append(("NOSPLIT", (0, i), (-1, min(i + 1, len(rows)))))  # nor a heading
         elif row.look == "span":
             commands.append(("SPAN", (0, i), (-1, i)))
         elif row.look == "stress":
@@ -160,7 +181,7 @@ def grid(
         spaceAfter=7,
     )
     table.titles = tuple(c.title for c in columns)
-    table.texts = tuple(r.cells for r in listed)
+    table.texts = tuple(t for r in listed for t in (r.cells, r.other) if t)
     return table
 
 

@@ -16,11 +16,15 @@ from incline.report.recorded import (
     about_vessel,
 )
 from incline.report.tables import Column, Row, grid
+from incline.report.text import elide
 
 if TYPE_CHECKING:
     from incline.result import Check
 
 __all__ = ["unrecorded"]
+
+_LONGEST = 300
+"""Most characters of what one criterion lacks."""
 
 
 def unrecorded(sheet: Sheet) -> list[Any]:
@@ -61,8 +65,8 @@ def _silent(sheet: Sheet, silent: list[Check]) -> list[Any]:
     columns = (Column("criterion", 0.44, "left"), Column("what it lacks", 0.56, "left"))
     return [
         *part("Asked for by criteria, and not recorded"),
-        grid(columns, [(c.title, lacking_of(c)) for c in silent], sheet.width),
-        note("`incline check` names the file for each."),
+        grid(columns, [(c.title, elide(lacking_of(c), _LONGEST)) for c in silent], sheet.width),
+        note("incline check names the file for each."),
     ]
 
 
