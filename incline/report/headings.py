@@ -13,6 +13,8 @@ __all__ = ["Heading", "Room", "settle"]
 
 _ROWS, _TEXT = 2, 34.0
 """What must follow a heading on its page: rows under a table's header, or points of text."""
+_SMALL = 120.0
+"""Height of a table that is kept whole under its heading [pt]."""
 _MOST = 600.0
 """Points that are there on every empty page: more is never asked for."""
 
@@ -47,7 +49,7 @@ def _beginning(flowable: Any, width: float, canvas: Any) -> float:  # noqa: ANN4
     _, high = flowable.wrapOn(canvas, width, 1e6)
     if isinstance(flowable, Heading):
         return before + float(high) + float(flowable.getSpaceAfter())
-    if isinstance(flowable, Table):
+    if isinstance(flowable, Table) and high > _SMALL:
         rows = flowable._rowHeights[: flowable.repeatRows + _ROWS]  # noqa: SLF001 - not offered otherwise
         return before + float(sum(rows))
     if isinstance(flowable, Paragraph):
