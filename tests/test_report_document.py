@@ -12,7 +12,19 @@ import pypdf
 import pytest
 from large_trial import DEVICES, ITEMS, NAMES, TANKS, VESSEL, long_name, write_large
 from made_trial import AT, REPORT_DATE
-from read_report import APPENDICES, SECTIONS, body, pages, reader, section, texts, without_contents
+from placed_text import lines_of, overlaps
+from read_report import (
+    APPENDICES,
+    KINDS,
+    SECTIONS,
+    body,
+    pages,
+    reader,
+    report,
+    section,
+    texts,
+    without_contents,
+)
 
 from incline import read_trial, reduce
 from incline.papers import (
@@ -252,7 +264,13 @@ def test_what_is_not_recorded_is_said_in_place_and_listed_with_its_file():
 
 def test_what_is_recorded_is_not_listed(issued_body):
     listed = section(issued_body, "Not recorded by the trial")
-    for said in ("[[compare]]", "column tide", "[[devices]] damping", "column sounding", "[report]"):
+    for said in (
+        "[[compare]]",
+        "column tide",
+        "[[devices]] damping",
+        "column sounding",
+        "[report]",
+    ):
         assert said not in listed
     assert "Number and revision: Tank plan trial.toml, [[documents]] number, revision" in listed
 
@@ -282,7 +300,10 @@ def test_both_units_stand_side_by_side_in_the_tables_of_results(tmp_path):
     assert f"{kg:.3f} {kg / FOOT:.3f}" in total
     inclined = section(text, "Condition as inclined")
     assert f"{state.displacement:.3f} t {state.displacement / LONG_TON:.3f} LT" in inclined
-    assert f"Draft at AP {state.waterline.draft_ap:.3f} m {state.waterline.draft_ap / FOOT:.3f} ft" in inclined
+    assert (
+        f"Draft at AP {state.waterline.draft_ap:.3f} m {state.waterline.draft_ap / FOOT:.3f} ft"
+        in inclined
+    )
 
 
 @pytest.mark.parametrize(("paper", "size"), [("A4", (595.28, 841.89)), ("Letter", (612.0, 792.0))])
@@ -309,7 +330,11 @@ def large(tmp_path_factory):
 
 def test_nothing_of_a_large_trial_is_lost(large):
     text = "".join("".join(t.split()) for t in texts(large))
-    for name in (VESSEL, NAMES[-1], *(long_name(f"{k} {n:02d}") for k, n in (("off", 29), ("on", 44), ("moved", 59)))):
+    for name in (
+        VESSEL,
+        NAMES[-1],
+        *(long_name(f"{k} {n:02d}") for k, n in (("off", 29), ("on", 44), ("moved", 59))),
+    ):
         assert len(name) == 120
         assert "".join(name.split()) in text
     assert len([n for n in range(TANKS) if f"Tank{n:02d}Δ" in text]) == TANKS
@@ -319,28 +344,49 @@ def test_nothing_of_a_large_trial_is_lost(large):
 
 
 def test_headers_of_a_large_trial_are_repeated_on_every_page_of_a_table(large):
-    for cell, head in ((r"(?:off|on|moved) \d\d Δ", "mass × x [t m; LT ft]"), (r"Tank \d\d Δ.*μαζούτ", "FSM [t m]")):
+    for cell, head in (
+        (r"(?:off|on|moved) \d\d Δ", "mass × x [t m; LT ft]"),
+        (r"Tank \d\d Δ.*μαζούτ", "FSM [t m]"),
+    ):
         found = [t for t in texts(large)[8:] if re.search(cell, t)]
         assert len(found) > 2
         assert [t for t in found if head not in t] == []
 
 
-def test_nothing_of_a_large_trial_lies_outside_the_page_or_on_other_words(large):
-    """Lines of text, by their places in the file, neither overlap nor leave the text's width."""
-    opened = pypdf.PdfReader(BytesIO(large))
-    right = 595.28 - 15.0 / 25.4 * 72.0 + 1.0  # margin of 15 mm, and a point for rounding
-    for number, page in enumerate(opened.pages, 1):
-        lines = []
+def placed(data):
+    """Each page's number, lines of text and width."""
+    for number, page in enumerate(pypdf.PdfReader(BytesIO(data)).pages, 1):
+        yield number, lines_of(page), float(page.mediabox.width)
 
-        def visit(text, _cm, tm, _font, size, lines=lines):
-            if text.strip() and abs(tm[1]) < 1e-6 and tm[0] > 0.0 and size:
-                lines.append((round(tm[4], 1), round(tm[5], 1), size * tm[0], text.strip()))
 
-        page.extract_text(visitor_text=visit)
+@pytest.mark.parametrize("kind", [*KINDS, "large"])
+def test_no_words_lie_on_others_or_beyond_the_margin(kind, request):
+    data = request.getfixturevalue("large") if kind == "large" else report(kind)
+    # The right margin is 15 mm. A full line is set with its blanks up to a twentieth narrower than
+    # measured here: some 25 blanks of 2.6 points.
+    spare = 3.5
+    for number, lines, width in placed(data):
         assert lines
-        for x, y, _, text in lines:
-            assert -1.0 <= x <= right, (number, text)
-            assert -1.0 <= y <= 842.0, (number, text)
+        assert (number, list(overlaps(lines))) == (number, [])
+        right = width - 15.0 / 25.4 * 72.0 + spare
+        assert [line for line in lines if line.right > right or line.x < 50.0] == []
+
+
+def test_words_on_one_another_are_seen(tmp_path):
+    """The measure itself: two lines drawn in one place, and one apart."""
+    from reportlab.pdfgen.canvas import Canvas
+
+    from incline.report.fonts import REGULAR, register_fonts
+
+    register_fonts()
+    canvas = Canvas(str(tmp_path / "a.pdf"), initialFontName=REGULAR)
+    canvas.setFont(REGULAR, 8)
+    for x, y, text in ((100, 500, "device P1"), (110, 502, "moment"), (100, 515, "apart")):
+        canvas.drawString(x, y, text)
+    canvas.save()
+    lines = lines_of(pypdf.PdfReader(tmp_path / "a.pdf").pages[0])
+    assert len(lines) == 3
+    assert [(a.text, b.text) for a, b in overlaps(lines)] == [("device P1", "moment")]
 
 
 def test_a_large_report_is_below_a_megabyte(large):
@@ -350,7 +396,7 @@ def test_a_large_report_is_below_a_megabyte(large):
 # --- headings -----------------------------------------------------------------------------------
 
 
-@pytest.mark.parametrize("kind", ["metric", "us", "bare", "long"])
+@pytest.mark.parametrize("kind", KINDS)
 def test_no_heading_is_the_last_line_of_a_page(kind):
     opened = reader(kind)
     titles = set()
