@@ -58,10 +58,14 @@ def lightship_of_file(
     return found_there if len(collector.defects) == before else None
 
 
-def lightship_of_section(top: Section) -> OtherLightship:
-    """The lightship whose figures stand in one section; other keys are left for the caller."""
+def lightship_of_section(top: Section, own: float | None = None) -> OtherLightship:
+    """The lightship whose figures stand in one section; other keys are left for the caller.
+
+    ``own`` [m] is its length between perpendiculars where the section states none.
+    """
     name = top.text("name")
-    lpp = top.maybe("lpp", LENGTH, Sign.POSITIVE)
+    stated = top.maybe("lpp", LENGTH, Sign.POSITIVE)
+    lpp = own if stated is None else stated
     displacement = _stated(top, "displacement", MASS, Sign.POSITIVE)
     if displacement.value is None:
         top.missing("displacement", "a mass with its unit, t, kg, LT or lb")

@@ -37,7 +37,7 @@ SECTIONS = (
     "report", "revisions", "documents", "deviations", "anomalies", "signatures", "predicted",
     "compare",
 )  # fmt: skip
-_STATED = ("name", "displacement", "kg", "vcg", "lcg", "tcg", "x_origin")
+_STATED = ("displacement", "kg", "vcg", "lcg", "tcg", "x_origin", "lpp")
 """Keys that give a lightship's figures in the section itself."""
 
 
@@ -121,7 +121,7 @@ def _day(section: Section) -> str:
 def _deviation(section: Section) -> Deviation:
     found = Deviation(
         what=section.text("what", required=True),
-        reason=section.text("reason", required=True),
+        reason=section.text("reason"),
         allowed_by=section.text("allowed_by"),
     )
     section.close()
@@ -168,7 +168,11 @@ def _other(section: Section, folder: Path, lpp: float) -> OtherLightship | None:
     )
     situation = _situation(section)
     name, file = section.text("name"), section.text("file")
-    found = _of_file(section, folder, file) if file else lightship_of_section(section)
+    found: OtherLightship | None
+    if file:
+        found = _of_file(section, folder, file)
+    else:
+        found = lightship_of_section(section, None if kind == "sister" else lpp)
     section.close()
     if found is None:
         return None
@@ -177,13 +181,12 @@ def _other(section: Section, folder: Path, lpp: float) -> OtherLightship | None:
         kind=kind,
         name=name or found.name or f"{kind} lightship",
         situation=situation,
-        lpp=found.lpp or lpp,
         where=section.where("kind"),
     )
 
 
 def _of_file(section: Section, folder: Path, file: str) -> OtherLightship | None:
-    for key in _STATED[1:]:
+    for key in _STATED:
         if section.value(key) is not None:
             section.fault(key, "value-wrong", quoted(file), "figures here or a file, not both")
     return lightship_of_file(folder / file, file, FILES, section.collector)
