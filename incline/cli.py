@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import datetime
 import math
+import os
 import sys
 from enum import StrEnum
 from pathlib import Path
@@ -63,6 +64,8 @@ class Paper(StrEnum):
 
 def main() -> None:
     """Run the command line; user errors become lines on standard error and exit status 1."""
+    # The sums are small: threads of the linear algebra wait for one another longer than they work.
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
     for stream in (sys.stdout, sys.stderr):
         if hasattr(stream, "reconfigure"):
             stream.reconfigure(errors="backslashreplace")
@@ -334,8 +337,6 @@ def _masses(texts: list[str] | None, situation: Situation | None) -> list[float]
 
 def _report_date() -> datetime.date:
     """Today, or the day that SOURCE_DATE_EPOCH names for a reproducible report."""
-    import os
-
     epoch = os.environ.get("SOURCE_DATE_EPOCH", "")
     if epoch.isdigit():
         return datetime.datetime.fromtimestamp(int(epoch), tz=datetime.UTC).date()

@@ -51,7 +51,7 @@ class Listed(Table):  # type: ignore[misc]
 
     titles: tuple[str, ...] = ()
     texts: tuple[tuple[str, ...], ...] = ()
-    splitInRow: int
+    splitInRow: int  # noqa: N815 - the name of the library
 
     def split(self, width: float, height: float) -> list[Table]:
         """Parts for this page and the next; a row splits only when no page could hold it."""
