@@ -46,6 +46,11 @@ class Deviation:
     reason: str
     allowed_by: str = ""
 
+    @property
+    def is_none(self) -> bool:
+        """Whether it only says that there was none."""
+        return self.what.casefold() == "none"
+
 
 @dataclass(frozen=True, slots=True, kw_only=True)
 class Anomaly:

@@ -275,6 +275,15 @@ def test_what_is_recorded_is_not_listed(issued_body):
     assert "Number and revision: Tank plan trial.toml, [[documents]] number, revision" in listed
 
 
+def test_that_there_was_no_deviation_can_be_said(tmp_path):
+    base = made.made_reduction()
+    papers = Papers(deviations=(Deviation(what="None", reason=""),))
+    data = written(replace(base, trial=replace(base.trial, papers=papers)), tmp_path)
+    text = without_contents(" ".join(texts(data)))
+    assert "Deviations: none, as the trial says." in section(text, "Rules and criteria")
+    assert "deviations" not in section(text, "Not recorded by the trial")
+
+
 def test_assumptions_stand_before_the_calculation():
     text = body("metric")
     said = "The marks at x = 12 m are taken at half the beam."
@@ -328,8 +337,13 @@ def large(tmp_path_factory):
     return data
 
 
-def test_nothing_of_a_large_trial_is_lost(large):
-    text = "".join("".join(t.split()) for t in texts(large))
+@pytest.fixture(scope="module")
+def large_texts(large):
+    return texts(large)
+
+
+def test_nothing_of_a_large_trial_is_lost(large_texts):
+    text = "".join("".join(t.split()) for t in large_texts)
     for name in (
         VESSEL,
         NAMES[-1],
@@ -343,12 +357,12 @@ def test_nothing_of_a_large_trial_is_lost(large):
     assert "[U+" not in text
 
 
-def test_headers_of_a_large_trial_are_repeated_on_every_page_of_a_table(large):
+def test_headers_of_a_large_trial_are_repeated_on_every_page_of_a_table(large_texts):
     for cell, head in (
         (r"(?:off|on|moved) \d\d Δ", "mass × x [t m; LT ft]"),
         (r"Tank \d\d Δ.*μαζούτ", "FSM [t m]"),
     ):
-        found = [t for t in texts(large)[8:] if re.search(cell, t)]
+        found = [t for t in large_texts[8:] if re.search(cell, t)]
         assert len(found) > 2
         assert [t for t in found if head not in t] == []
 

@@ -151,7 +151,7 @@ def about_papers(sheet: Sheet) -> list[Asked]:
     unsigned = [p for p in parts if p not in signed]
     drawn = "yes" if papers.documents else ""
     loose = [d.title for d in papers.documents if not (d.number and d.revision)]
-    allowed = [d.what for d in papers.deviations if not d.allowed_by]
+    allowed = [d.what for d in papers.deviations if not (d.allowed_by or d.is_none)]
     allowed += [f"limit of {o.check}" for o in sheet.reduction.trial.settings.overrides
                 if not o.allowed_by]  # fmt: skip
     return [

@@ -32,13 +32,15 @@ def rules(sheet: Sheet) -> list[Any]:
 
 def _deviations(sheet: Sheet) -> list[Any]:
     trial = sheet.reduction.trial
-    rows = [(d.what, d.reason, d.allowed_by) for d in trial.papers.deviations]
+    told = trial.papers.deviations
+    rows = [(d.what, d.reason, d.allowed_by) for d in told if not d.is_none]
     rows += [
         (f"limit of {o.check} set by the trial", o.reason, o.allowed_by)
         for o in trial.settings.overrides
     ]
     if not rows:
-        return [paragraph(f"Deviations: {NOT_RECORDED}.")]
+        said = "none, as the trial says" if told else NOT_RECORDED
+        return [paragraph(f"Deviations: {said}.")]
     columns = (
         Column("deviation", 0.34, "left"),
         Column("reason", 0.38, "left"),
