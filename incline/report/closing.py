@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
-from reportlab.platypus import Paragraph, Table
+from reportlab.platypus import KeepTogether, Paragraph, Table
 
 from incline.report.document import Sheet, bullet, paragraph, part
 from incline.report.fonts import REGULAR
@@ -97,20 +97,19 @@ def signatures(sheet: Sheet) -> list[Any]:
     )
     rows = [row for key, title in _PARTS.items() for row in _rows_of(papers, key, title)]
     accepted = _rows_of(papers, "accepted", "Accepted by")
+    vouch = paragraph(
+        "The signatures vouch for the part named in each line. They do not take the place of the "
+        "administration's acceptance."
+    )
+    decided = paragraph(
+        f"{authority}The test and its lightship count as accepted when the flag administration, or "
+        "the organisation that it has recognised for the purpose, says so in writing, here or "
+        "elsewhere; the program, its author and the signatures above cannot."
+    )
     return [
-        paragraph(
-            "The signatures vouch for the part named in each line. They do not take the place of "
-            "the administration's acceptance."
-        ),
-        _lines_to_sign(sheet, rows),
+        KeepTogether([vouch, _lines_to_sign(sheet, rows)]),
         *part("Acceptance"),
-        paragraph(
-            f"{authority}The test and its lightship count as accepted when the flag "
-            "administration, or the organisation that it has recognised for the purpose, says so "
-            "in writing, here or elsewhere; the program, its author and the signatures above "
-            "cannot."
-        ),
-        _lines_to_sign(sheet, accepted),
+        KeepTogether([decided, _lines_to_sign(sheet, accepted)]),
     ]
 
 
