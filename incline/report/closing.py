@@ -4,10 +4,11 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
-from reportlab.platypus import KeepTogether, Paragraph, Table
+from reportlab.platypus import Paragraph, Table
 
 from incline.report.document import Sheet, bullet, paragraph, part
 from incline.report.fonts import REGULAR
+from incline.report.headings import Whole
 from incline.report.show import NOT_RECORDED
 from incline.report.styles import INK, STYLES
 from incline.report.text import markup
@@ -107,9 +108,9 @@ def signatures(sheet: Sheet) -> list[Any]:
         "elsewhere; the program, its author and the signatures above cannot."
     )
     return [
-        KeepTogether([vouch, _lines_to_sign(sheet, rows)]),
+        Whole([vouch, _lines_to_sign(sheet, rows)]),
         *part("Acceptance"),
-        KeepTogether([decided, _lines_to_sign(sheet, accepted)]),
+        Whole([decided, _lines_to_sign(sheet, accepted)]),
     ]
 
 

@@ -2,14 +2,17 @@
 
 from __future__ import annotations
 
-from typing import Any
+from typing import TYPE_CHECKING, Any
 
-from reportlab.platypus import CondPageBreak, Paragraph, Table
+from reportlab.platypus import CondPageBreak, KeepTogether, Paragraph, Table
 
 from incline.report.styles import STYLES
 from incline.report.text import markup
 
-__all__ = ["Heading", "Room", "settle"]
+if TYPE_CHECKING:
+    from collections.abc import Sequence
+
+__all__ = ["Heading", "Room", "Whole", "settle"]
 
 _ROWS, _TEXT = 2, 34.0
 """What must follow a heading on its page: rows under a table's header, or points of text."""
@@ -25,6 +28,14 @@ class Heading(Paragraph):  # type: ignore[misc]
     def __init__(self, title: str, level: int, key: str = "") -> None:
         super().__init__(markup(title), STYLES["part" if level else "section"])
         self.title, self.level, self.key = title, level, key
+
+
+class Whole(KeepTogether):  # type: ignore[misc]
+    """Flowables that stay on one page where one page holds them."""
+
+    def __init__(self, parts: Sequence[Any]) -> None:
+        super().__init__(list(parts))
+        self.parts = tuple(parts)
 
 
 class Room(CondPageBreak):  # type: ignore[misc]
@@ -45,6 +56,8 @@ class Room(CondPageBreak):  # type: ignore[misc]
 
 def _beginning(flowable: Any, width: float, canvas: Any) -> float:  # noqa: ANN401 - untyped library
     """Height of as much of a flowable as should stand below its heading [pt]."""
+    if isinstance(flowable, Whole):
+        return sum(_whole(f, width, canvas) for f in flowable.parts)
     before = float(flowable.getSpaceBefore())
     _, high = flowable.wrapOn(canvas, width, 1e6)
     if isinstance(flowable, Heading):
@@ -55,6 +68,12 @@ def _beginning(flowable: Any, width: float, canvas: Any) -> float:  # noqa: ANN4
     if isinstance(flowable, Paragraph):
         return before + min(float(high), _TEXT)
     return before + float(high)
+
+
+def _whole(flowable: Any, width: float, canvas: Any) -> float:  # noqa: ANN401
+    """Height of a flowable with the space around it [pt]."""
+    _, high = flowable.wrapOn(canvas, width, 1e6)
+    return float(flowable.getSpaceBefore()) + float(high) + float(flowable.getSpaceAfter())
 
 
 def settle(flow: list[Any]) -> list[Any]:
