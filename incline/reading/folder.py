@@ -88,18 +88,18 @@ def read_records(folder: str | os.PathLike[str], collector: Collector) -> Trial:
     path = Path(folder)
     files = read_files(path, (FILE, *TABLES), collector)
     remarks = strangers(path, files, collector)
-    return _Reader(files, collector).trial(str(path), remarks)
+    return _Reader(files, collector, path).trial(str(path), remarks)
 
 
 class _Reader:
     """Reads the tables of one trial, each with what it needs of the others."""
 
-    def __init__(self, files: dict[str, bytes], collector: Collector) -> None:
+    def __init__(self, files: dict[str, bytes], collector: Collector, path: Path) -> None:
         self.files = files
         self.collector = collector
         self.tables = Tables(files, collector)
         self.sheets = self.tables.sheets
-        self.head: Head = read_head(files.get(FILE), self.tables.hull, collector)
+        self.head: Head = read_head(files.get(FILE), self.tables.hull, collector, path)
 
     def trial(self, folder: str, remarks: list[str]) -> Trial:
         """Read everything; of no use once a defect has been collected."""
@@ -131,6 +131,8 @@ class _Reader:
             rolls=self._rolls(),
             environment=head.environment,
             hydrometer=head.hydrometer,
+            condition=head.condition,
+            papers=head.papers,
             remarks=(
                 *remarks,
                 *by_moment,

@@ -14,13 +14,15 @@ if TYPE_CHECKING:
 __all__ = ["stamped"]
 
 
-def stamped(date: datetime.date, identity: str) -> Callable[..., Canvas]:
-    """Canvas whose dates and identifier come from the arguments, not from a clock or machine."""
+def stamped(
+    date: datetime.date, identity: str, kind: Callable[..., Canvas] = Canvas
+) -> Callable[..., Canvas]:
+    """Canvas of a kind whose dates and identifier come from the arguments, not from a clock."""
     stamp = f"D:{date:%Y%m%d}000000+00'00'"
     whole = f"{identity} {stamp}"
 
     def make(*args: object, **options: object) -> Canvas:
-        canvas = Canvas(*args, **options)
+        canvas = kind(*args, **options)
         canvas.setDateFormatter(lambda *_: stamp)
         canvas._doc.signature = hashlib.md5(whole.encode(), usedforsecurity=False)  # noqa: SLF001
         return canvas
