@@ -5,6 +5,7 @@ time; a whole process with the hull against the same trial by the straight line,
 medians given; a million Monte Carlo draws against drawing the numbers alone.
 """
 
+import importlib.util
 import itertools
 import shutil
 import statistics
@@ -14,6 +15,7 @@ import time
 from pathlib import Path
 
 import numpy as np
+import trimesh
 from cost import ROOT, cpu, said
 
 sys.path.insert(0, str(ROOT / "tests"))
@@ -94,6 +96,21 @@ def cut_mesh(meshes: list[Mesh], mean: float, tau: float, t: float, half: float)
     return total
 
 
+def whole_cut(meshes: list[Mesh], mean: float, tau: float, t: float, half: float):
+    """The library's own cut of a mesh with its cap, as a call; None where it cannot make caps.
+
+    Caps need the packages shapely and mapbox_earcut beside trimesh.
+    """
+    if not all(importlib.util.find_spec(name) for name in ("shapely", "mapbox_earcut")):
+        return None
+    bodies = [trimesh.Trimesh(*mesh) for mesh in meshes]
+    below = np.array([-tau, t, -1.0]) / np.sqrt(1.0 + tau**2 + t**2)
+    origin = np.array([half, 0.0, mean])
+    return lambda: sum(
+        b.slice_plane(origin, below, cap=True, engine="earcut").volume for b in bodies
+    )
+
+
 def per_call(work, least: float = 0.4) -> float:
     """CPU seconds of one call, the median of five runs of as many calls as fill ``least`` seconds."""
     began, count = time.process_time(), 0
@@ -133,6 +150,10 @@ def compare(title: str, ship: Ship, offsets: Offsets, places: list[Places]) -> N
             f"  trimesh, {sum(len(f) for _, f in meshes)} triangles: {1e3 * took:.2f} ms,"
             f" {took / alone:.1f} times; {took / together:.0f} times one of many; {off:+.4f} % volume"
         )
+        capped = whole_cut(meshes, ship.draft, tau, t, half)
+        if capped is not None:
+            took = per_call(capped)
+            print(f"    cut and capped: {1e3 * took:.2f} ms, {took / alone:.1f} times")
 
 
 def main() -> None:
