@@ -17,6 +17,7 @@ from incline.report.lightship import all_counted, to_lightship
 from incline.report.particulars import conventions, vessel_and_test
 from incline.report.readings import devices_and_readings
 from incline.report.show import Show
+from incline.report.steps_page import calculation
 from incline.report.uncertainty import uncertainty
 from incline.report.weights import weights_and_moments
 
@@ -40,6 +41,7 @@ _SECTIONS: tuple[tuple[str, Callable[[Sheet], list[Any]]], ...] = (
     ("What the residuals say", residuals),
     ("From GM to the centre of gravity", centre_of_gravity),
     ("From as inclined to lightship", to_lightship),
+    ("Calculation, step by step", calculation),
     ("Uncertainty", uncertainty),
     ("With the excluded readings counted", all_counted),
     ("Criteria", criteria),
@@ -49,7 +51,7 @@ _SECTIONS: tuple[tuple[str, Callable[[Sheet], list[Any]]], ...] = (
 )
 
 
-_TEXT_FIRST = (conventions, residuals, uncertainty, criteria, remarks)
+_TEXT_FIRST = (conventions, residuals, calculation, uncertainty, criteria, remarks)
 _ROOM, _ROOM_FOR_TEXT = 136.0, 80.0
 """Points below a section's heading without which it starts a new page; less where text follows."""
 

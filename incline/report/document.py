@@ -30,7 +30,7 @@ _LEFT, _RIGHT, _TOP, _BOTTOM = 21 * mm, 15 * mm, 21 * mm, 18 * mm
 _SIZES = {"A4": A4, "Letter": LETTER}
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, slots=True, eq=False)
 class Sheet:
     """What every section needs: the reduction, number formats, and the width of the text [pt]."""
 

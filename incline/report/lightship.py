@@ -6,102 +6,22 @@ from typing import TYPE_CHECKING, Any
 
 from incline.report.document import Sheet, note, paragraph, part
 from incline.report.show import MISSING, NOT_DETERMINED, Kind, signed
-from incline.report.tables import Column, Row, grid
+from incline.report.steps import calculation_of
+from incline.report.steps_page import board_table
+from incline.report.tables import Column, grid
 
 if TYPE_CHECKING:
     from collections.abc import Iterable
 
-    from incline.result import LedgerLine, Outcome
+    from incline.result import Outcome
 
 __all__ = ["all_counted", "to_lightship"]
 
-_ACTIONS = {
-    "deduct": "Deduct: aboard at the test, no part of lightship",
-    "add": "Add: part of lightship, not yet aboard",
-    "relocate": "Relocate: aboard, but not in its final place",
-}
-
-
 def to_lightship(sheet: Sheet) -> list[Any]:
     """All lines with masses, centres and moments; totals; self-check."""
-    outcome, show = sheet.reduction.outcome, sheet.show
-    length, moment = show.unit("length"), show.unit("moment")
-    columns = (
-        Column("item", 0.28, "left"),
-        Column(f"mass [{show.unit('mass')}]", 0.11),
-        *(Column(f"{axis} [{length}]", 0.09) for axis in "xyz"),
-        *(Column(f"mass × {axis} [{moment}]", 0.115) for axis in "xyz"),
-    )
-    state = outcome.as_inclined
-    rows = [
-        _total(sheet, "As inclined", state.displacement, (state.lcg, state.tcg, state.vcg)),
-    ]
-    for action, title in _ACTIONS.items():
-        rows += _group(
-            sheet, title, [line for line in outcome.ledger.lines if line.action == action]
-        )
-    light = outcome.lightship
-    rows.append(
-        _total(
-            sheet,
-            "Lightship",
-            light.displacement.value,
-            (light.lcg.value, light.tcg.value, light.vcg.value),
-        )
-    )
-    return [grid(columns, rows, sheet.width), *_sums(sheet), *_bases(sheet)]
-
-
-def _total(
-    sheet: Sheet,
-    name: str,
-    mass: float | None,
-    centre: tuple[float | None, float | None, float | None],
-) -> Row:
-    show = sheet.show
-    places = [show.number(c, "length") for c in centre]
-    moments = [show.mass_by_length(mass, c) for c in centre]
-    return Row((name, show.number(mass, "mass"), *places, *moments), "total")
-
-
-def _group(sheet: Sheet, title: str, lines: list[LedgerLine]) -> list[Row]:
-    """The lines of one action under their heading, with the sum of mass and moments."""
-    rows = [Row((title, *[""] * 7), "band")]
-    if not lines:
-        return [*rows, Row(("none", *[""] * 7))]
-    rows += [_line(sheet, line) for line in lines]
-    show = sheet.show
-    sign = -1.0 if lines[0].action == "deduct" else 1.0
-    mass = sign * sum(line.mass for line in lines)
-    text = show.number(mass, "mass")
-    if lines[0].action == "relocate":
-        text = f"({text})"
-    moments = [show.number(sum(_moment(line)[i] for line in lines), "moment") for i in range(3)]
-    return [*rows, Row(("sum", text, "", "", "", *moments), "total")]
-
-
-def _moment(line: LedgerLine) -> tuple[float, float, float]:
-    """What the line adds to the three first moments [t m]."""
-    at = (line.centre.x, line.centre.y, line.centre.z)
-    if line.to is not None:
-        to = (line.to.x, line.to.y, line.to.z)
-        x, y, z = (line.mass * (b - a) for a, b in zip(at, to, strict=True))
-        return x, y, z
-    sign = -1.0 if line.action == "deduct" else 1.0
-    x, y, z = (sign * line.mass * a for a in at)
-    return x, y, z
-
-
-def _line(sheet: Sheet, line: LedgerLine) -> Row:
-    show = sheet.show
-    mass = show.number(line.mass if line.action != "deduct" else -line.mass, "mass")
-    places = [show.number(c, "length") for c in (line.centre.x, line.centre.y, line.centre.z)]
-    if line.to is not None:
-        mass = f"({mass})"
-        ends = (show.number(c, "length") for c in (line.to.x, line.to.y, line.to.z))
-        places = [f"{a}\n→ {b}" for a, b in zip(places, ends, strict=True)]
-    name = line.name if line.source == "ledger" else f"{line.name} [{line.source}]"
-    return Row((name, mass, *places, *(show.number(m, "moment") for m in _moment(line))))
+    found = calculation_of(sheet)
+    table = board_table(found.ledger, found.digits, sheet.width)
+    return [*table, *_sums(sheet), *_bases(sheet)]
 
 
 def _sums(sheet: Sheet) -> list[Any]:
