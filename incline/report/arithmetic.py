@@ -1,31 +1,28 @@
 """Arithmetic as printed: every number with the digits that make the printed results follow.
 
 A formula is built once from `Value` and the usual operators. The same tree gives the formula in
-symbols, the numbers put in, and the result of the numbers as printed. `settle` chooses the digits.
+symbols, the numbers put in, and the result of the numbers as printed.
 """
 
 from __future__ import annotations
 
 import math
+from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, Literal
 
 from incline.report.show import signed
 
 if TYPE_CHECKING:
-    from collections.abc import Iterator, Mapping, Sequence
+    from collections.abc import Iterator
 
-    Digits = Mapping[str, int]
 
-__all__ = [
-    "Power", "Relation", "Sum", "Tangent", "Term", "Value", "Whole", "natural", "settle",
-]  # fmt: skip
+__all__ = ["Digits", "Power", "Sum", "Tangent", "Term", "Value", "Whole"]
+
+Digits = Mapping[str, int]
+"""Decimals by place."""
 
 _NBSP = "\N{NO-BREAK SPACE}"
-_MOST = 12
-"""Most decimals: a double holds little more of a ship's numbers."""
-_HALF = 0.5 + 1e-6
-"""Units of the last digit by which a result may miss."""
 _NUDGE = 1e-7
 """Units of the last digit by which numbers are moved off zero, so that a five always rounds up."""
 
@@ -167,7 +164,7 @@ class Pair(Term):
         """Sums 1, products and quotients 2."""
         return 1 if self.sign in "+−" else 2
 
-    def at(self, digits: Digits | None) -> float:  # noqa: D102
+    def at(self, digits: Digits | None) -> float:
         left, right = self.left.at(digits), self.right.at(digits)
         if self.sign == "+":
             return left + right
@@ -177,7 +174,7 @@ class Pair(Term):
             return left * right
         return left / right if right else math.nan
 
-    def text(self, digits: Digits) -> str:  # noqa: D102
+    def text(self, digits: Digits) -> str:
         left, right = self.left.text(digits), self.right.text(digits)
         if self._bracket_left(self.left):
             left = f"({left})"
@@ -195,7 +192,7 @@ class Pair(Term):
         """Whether a power of ten would fall apart behind the bar of a fraction."""
         return self.sign == "/" and isinstance(self.right, Value) and self.right.power != 0
 
-    def symbols(self) -> str:  # noqa: D102
+    def symbols(self) -> str:
         left, right = self.left.symbols(), self.right.symbols()
         if self._bracket_left(self.left):
             left = f"({left})"
@@ -203,7 +200,7 @@ class Pair(Term):
             right = f"({right})"
         return f"{left}{_NBSP}{right}" if self.sign == "×" else f"{left} {self.sign} {right}"
 
-    def values(self) -> Iterator[Value]:  # noqa: D102
+    def values(self) -> Iterator[Value]:
         yield from self.left.values()
         yield from self.right.values()
 
@@ -281,62 +278,3 @@ class Tangent(Term):
 
     def values(self) -> Iterator[Value]:  # noqa: D102
         yield from self.angle.values()
-
-
-@dataclass(frozen=True, slots=True)
-class Relation:
-    """A printed result and the formula that it must follow from."""
-
-    result: Value
-    term: Term
-
-    def follows(self, digits: Digits) -> bool:
-        """Whether the numbers as printed give the result to its last printed digit."""
-        miss = abs(self.term.at(digits) - self.result.at(digits))
-        return miss <= _HALF * self.result.step(digits)
-
-
-def settle(relations: Sequence[Relation]) -> dict[str, int]:
-    """Decimals of every place, the fewest by turns that make each relation follow.
-
-    Where a result does not follow, the number in it whose rounding moves it most gets one more
-    decimal, and so on back to the numbers that were measured. A relation that does not hold at full
-    precision is left as it is: `Relation.follows` tells.
-    """
-    digits: dict[str, int] = {}
-    for relation in relations:
-        for value in (relation.result, *relation.term.values()):
-            digits[value.place] = max(digits.get(value.place, 0), value.least)
-    for _ in range(_MOST):
-        before = dict(digits)
-        for relation in reversed(relations):
-            while not relation.follows(digits):
-                place = _coarsest(relation, digits)
-                if place is None:
-                    break
-                digits[place] += 1
-        if digits == before:
-            break
-    return digits
-
-
-def _coarsest(relation: Relation, digits: Digits) -> str | None:
-    """The place whose rounding moves the result most; None when more digits cannot help."""
-    exact, step = relation.term.at(None), relation.result.step(digits)
-    if not abs(exact - relation.result.amount) <= 1e-3 * step + 1e-9 * abs(exact):
-        return None  # nan too
-    moved: dict[str, float] = {}
-    fine = dict.fromkeys(digits, _MOST + 3)
-    for place in {v.place for v in relation.term.values()}:
-        if digits[place] < _MOST:
-            rounded = relation.term.at(fine | {place: digits[place]})
-            moved[place] = abs(rounded - exact) / step
-    place = max(moved, key=lambda p: (moved[p], p), default=None)
-    return place if place is not None and moved[place] > 1e-6 else None
-
-
-def natural(amount: float, least: int, most: int) -> int:
-    """Fewest decimals, from ``least``, that print an amount exactly; ``least`` when none does."""
-    near = 1e-10 * max(1.0, abs(amount))
-    return next((d for d in range(least, most + 1) if abs(round(amount, d) - amount) < near), least)
-

@@ -7,9 +7,9 @@ from typing import TYPE_CHECKING, Any
 from incline.report.canvas_backend import FigureFlowable
 from incline.report.document import Sheet, note, paragraph, part
 from incline.report.figures_waterline import waterline_plot
-from incline.report.show import MISSING, NOT_DETERMINED, NOT_RECORDED
+from incline.report.show import NOT_DETERMINED, NOT_RECORDED
 from incline.report.table_rows import table_rows
-from incline.report.tables import Column, facts, grid, steps
+from incline.report.tables import Column, facts, grid
 
 if TYPE_CHECKING:
     from incline.result import DraftResidual
@@ -204,32 +204,19 @@ def _entry(sheet: Sheet) -> list[Any]:
 
 
 def _displacement(sheet: Sheet) -> list[Any]:
+    """What the calculation finds; its steps stand in a section of their own."""
     trial, show, state = sheet.reduction.trial, sheet.show, sheet.reduction.outcome.as_inclined
-    volume, density = show.number(state.volume, "volume", 3), show.number(state.density, "density")
     allowance = trial.settings.allowance
-    if allowance is None:
-        formula, values = "Δ = ∇ ρ   (extreme volume)", f"{volume} × {density}"
-    else:
-        formula = "Δ = ∇ ρ (1 + a)   (moulded volume, shell and appendages a)"
-        values = f"{volume} × {density} × (1 + {show.plain(allowance, 5)})"
-    if show.system.name == "us":
-        values += " / 2240"
-    lcb = "LCB could not be found" if state.lcb is None else "at the trimmed waterline"
-    return [
-        steps(
-            (
-                (formula, values, show.full(state.displacement, "mass")),
-                (
-                    "KM = KB + BM",
-                    f"{show.number(state.kb, 'length')} + {show.number(state.bmt, 'length')}",
-                    show.full(state.kmt, "length"),
-                ),
-                (
-                    "LCB",
-                    lcb,
-                    MISSING if state.lcb is None else show.full(state.lcb, "length"),
-                ),
-            ),
-            sheet.width,
-        )
-    ]
+    extreme = "none: the volume is extreme"
+    share = extreme if allowance is None else f"{show.plain(100.0 * allowance, 3)} %"
+    lcb = NOT_DETERMINED if state.lcb is None else show.full(state.lcb, "length")
+    pairs = (
+        ("Volume of displacement", show.full(state.volume, "volume", 3)),
+        ("Allowance, shell and appendages", share),
+        ("Displacement", show.full(state.displacement, "mass")),
+        ("LCB, at the trimmed waterline", lcb),
+        ("KB", show.full(state.kb, "length")),
+        ("BM", show.full(state.bmt, "length")),
+        ("KM", show.full(state.kmt, "length")),
+    )
+    return [facts(pairs, sheet.width, abreast=2)]

@@ -10,7 +10,7 @@ from incline.report.document import Sheet, note, part
 from incline.report.figures import common_plot, device_plots, residual_plot
 from incline.report.rolling import rolling_period
 from incline.report.show import MISSING, signed
-from incline.report.tables import Column, grid, steps
+from incline.report.tables import Column, facts, grid
 
 if TYPE_CHECKING:
     from incline.result import DeviceFit, HeelPoint
@@ -56,38 +56,23 @@ def _per_moment(sheet: Sheet, slope: float | None) -> str:
 
 def _common(sheet: Sheet) -> Any:  # noqa: ANN401 - untyped library
     heel, show = sheet.reduction.outcome.heel, sheet.show
-    weight = sheet.reduction.outcome.as_inclined.displacement
     slope, unit = _per_moment(sheet, heel.slope), show.unit("moment")
     counted = sum(1 for p in heel.points if not p.excluded)
     error = show.full(heel.u_gm_fluid, "length", 4) if heel.u_gm_fluid is not None else MISSING
     spread = MISSING if heel.residual_sd is None else show.plain(heel.residual_sd, 6)
-    lines = (
-        (
-            "b, common slope of tangent on moment",
-            f"{counted} readings, {len(heel.devices)} devices, {heel.dof} degrees of freedom",
-            f"{slope} per {unit}",
-        ),
-        (
-            "standard error of b, regression alone",
-            "",
-            f"{_per_moment(sheet, heel.u_slope)} per {unit}",
-        ),
-        ("1 / b, moment for unit tangent", f"1 / {slope}", show.full(1.0 / heel.slope, "moment")),
-        (
-            "GM fluid = 1 / (b Δ)",
-            f"{show.number(1.0 / heel.slope, 'moment')} / {show.number(weight, 'mass')}",
-            show.full(heel.gm_fluid, "length"),
-        ),
-        ("standard error of GM fluid, regression alone", "from that of b", error),
-        ("standard deviation of the residuals", "in tangents", spread),
-        (
-            "greatest heel",
-            f"to port {show.degrees(heel.max_heel_port)}°, "
-            f"to starboard {show.degrees(heel.max_heel_starboard)}°",
-            "",
-        ),
+    sides = ((heel.max_heel_port, "port"), (heel.max_heel_starboard, "starboard"))
+    pairs = (
+        ("b, slope of tangent on moment", f"{slope} per {unit}"),
+        ("its standard error", f"{_per_moment(sheet, heel.u_slope)} per {unit}"),
+        ("1 / b, moment for unit tangent", show.full(1.0 / heel.slope, "moment")),
+        ("GM fluid = 1 / (b Δ)", show.full(heel.gm_fluid, "length")),
+        ("its standard error", error),
+        ("readings; devices", f"{counted}; {len(heel.devices)}"),
+        ("degrees of freedom", str(heel.dof)),
+        ("standard deviation of residuals", f"{spread}, as tangents"),
+        ("greatest heel", ", ".join(f"{show.degrees(h)}° to {side}" for h, side in sides)),
     )
-    return steps(lines, sheet.width)
+    return facts(pairs, sheet.width, abreast=2)
 
 
 def _devices(sheet: Sheet) -> list[Any]:

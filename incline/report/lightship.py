@@ -17,6 +17,7 @@ if TYPE_CHECKING:
 
 __all__ = ["all_counted", "to_lightship"]
 
+
 def to_lightship(sheet: Sheet) -> list[Any]:
     """All lines with masses, centres and moments; totals; self-check."""
     found = calculation_of(sheet)

@@ -11,11 +11,13 @@ from dataclasses import dataclass
 from functools import lru_cache
 from typing import TYPE_CHECKING
 
-from incline.report.arithmetic import Relation, Term, Value, settle
+from incline.report.arithmetic import Term, Value
+from incline.report.digits import Relation, settle
 
 if TYPE_CHECKING:
     from collections.abc import Iterator, Mapping
 
+    from incline.report.arithmetic import Digits
     from incline.report.document import Sheet
 
 __all__ = [
@@ -112,7 +114,7 @@ class Calculation:
 
     chapters: tuple[Chapter, ...]
     ledger: Board
-    digits: Mapping[str, int]
+    digits: Digits
 
     @property
     def sound(self) -> bool:
@@ -126,12 +128,14 @@ class Calculation:
         return tuple(_printed(n, lay, self.digits) for n, lay in enumerate(laid, start=1))
 
 
-def _printed(number: int, lay: Lay, digits: Mapping[str, int]) -> Step:
+def _printed(number: int, lay: Lay, digits: Digits) -> Step:
     term, symbol = lay.term, lay.result.symbol
     return Step(
         number=number,
         name=lay.name,
-        formula=symbol if term is None or term.symbols() == symbol else f"{symbol} = {term.symbols()}",
+        formula=symbol
+        if term is None or term.symbols() == symbol
+        else f"{symbol} = {term.symbols()}",
         put_in=lay.how if term is None else term.text(digits),
         result=lay.result.text(digits),
         values={} if term is None else {v.symbol: v.text(digits) for v in term.values()},
@@ -144,13 +148,15 @@ def _printed(number: int, lay: Lay, digits: Mapping[str, int]) -> Step:
 def calculation_of(sheet: Sheet) -> Calculation:
     """The calculation of a report, with its digits settled; worked out once a sheet."""
     from incline.report.steps_floating import floating_chapters
+    from incline.report.steps_gravity import gravity_chapters
     from incline.report.steps_heel import heel_chapters
-    from incline.report.steps_lightship import ledger_board, lightship_chapters
+    from incline.report.steps_lightship import ledger_board, lightship_chapter
 
     chapters = (
         *floating_chapters(sheet),
         *heel_chapters(sheet),
-        *lightship_chapters(sheet),
+        *gravity_chapters(sheet),
+        lightship_chapter(sheet),
     )
     ledger = ledger_board(sheet)
     relations = [r for c in chapters for r in c.relations()]

@@ -5,12 +5,14 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from incline.flotation import plan_waterline
-from incline.report.arithmetic import Relation, Sum, Value
+from incline.report.arithmetic import Sum, Value
+from incline.report.digits import Relation
 from incline.report.steps import Board, Chapter, Head, Lay
 from incline.report.steps_hydrostatics import hydrostatics
 from incline.report.steps_units import Units
 
 if TYPE_CHECKING:
+    from incline.report.arithmetic import Term
     from incline.report.document import Sheet
 
 __all__ = ["floating_chapters"]
@@ -61,9 +63,7 @@ def _waterline(sheet: Sheet) -> Chapter:
     )
 
 
-def _marks(
-    sheet: Sheet, u: Units, found: list[tuple[Value, int]]
-) -> tuple[Board, dict[int, Sum]]:
+def _marks(sheet: Sheet, u: Units, found: list[tuple[Value, int]]) -> tuple[Board, dict[int, Sum]]:
     """The table of marks with the factors of each unknown, and the sums that give them."""
     trial, length = sheet.reduction.trial, sheet.show.unit("length")
     solve = plan_waterline(trial.drafts, trial.vessel.lpp).solve
@@ -72,7 +72,7 @@ def _marks(
         for d in trial.drafts
     ]
     factors: dict[int, list[Value]] = {}
-    for value, column in found:
+    for _, column in found:
         power = -1 if column in (1, 3) else 0
         factors[column] = [
             u.power_of_length(float(c), power, f"c{column}", f"c{column}", 6) for c in solve[column]
@@ -104,7 +104,9 @@ def _marks(
     ]
     relations = tuple(Relation(v, v) for row in rows for v in row[:2])
     names = ", ".join(signs[c] for c in factors)
-    return Board(f"Drafts at the marks, and the factors of {names}", tuple(heads), tuple(rows), relations), sums
+    return Board(
+        f"Drafts at the marks, and the factors of {names}", tuple(heads), tuple(rows), relations
+    ), sums
 
 
 def _density(sheet: Sheet) -> Chapter:
@@ -132,19 +134,41 @@ def _density(sheet: Sheet) -> Chapter:
 def _displacement(sheet: Sheet) -> Chapter:
     trial, state = sheet.reduction.trial, sheet.reduction.outcome.as_inclined
     u = Units(sheet.show)
-    volume = u.of("volume", state.volume, "∇", "∇")
     density = u.of("density", state.density, "ρ", "ρ", 5)
+    volume = u.of("volume", state.volume, "∇", "∇")
     weight = u.of("mass", state.displacement, "Δ", "Δ")
-    term = u.as_mass(volume * density)
-    name = "Displacement (the volume is extreme)"
-    if trial.settings.allowance is not None:
-        share = u.ratio(trial.settings.allowance, "a", "a", 4)
-        term = u.as_mass(volume * density * (1 + share))
-        name = "Displacement; a: shell and appendages"
+    share = trial.settings.allowance
+    whole = 1.0 if share is None else 1.0 + share
+    name = "the volume is extreme" if share is None else "a: shell and appendages"
+
+    def heavy(some: Value) -> Term:
+        term = u.as_mass(some * density)
+        if share is None:
+            return term
+        return u.as_mass(some * density * (1 + u.ratio(share, "a", "a", 4)))
+
+    steps = [Lay(f"Displacement; {name}", weight, heavy(volume))]
+    if trial.changes:
+        signs = {"aboard": 1.0, "ashore": -1.0}
+        every = [c.mass for c in trial.changes]
+        changes = [
+            u.recorded("mass", signs[c.change] * c.mass, "w change", "w", every)
+            for c in trial.changes
+        ]
+        before = state.displacement - sum(signs[c.change] * c.mass for c in trial.changes)
+        read = u.of("volume", before / state.density / whole, "∇ read", "∇<sub>0</sub>")
+        first = u.of("mass", before, "Δ read", "Δ<sub>0</sub>")
+        total = Sum((first, *changes), "Δ<sub>0</sub> + Σw", "with all changes")
+        steps = [
+            Lay(
+                "Volume when the drafts were read", read, how="at the waterline through the drafts"
+            ),
+            Lay(f"Displacement when the drafts were read; {name}", first, heavy(read)),
+            Lay("Displacement during the shifts", weight, total),
+            Lay("The same from the waterline of the shifts", weight, heavy(volume)),
+        ]
     kb, bm, km = (
         u.of("length", v, s, s) for v, s in ((state.kb, "KB"), (state.bmt, "BM"), (state.kmt, "KM"))
     )
-    return Chapter(
-        "Displacement and metacentre",
-        (Lay(name, weight, term), Lay("Height of the metacentre", km, kb + bm)),
-    )
+    steps.append(Lay("Height of the metacentre", km, kb + bm))
+    return Chapter("Displacement and metacentre", tuple(steps))

@@ -5,11 +5,13 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from incline.moments import place_weights
-from incline.report.arithmetic import Relation, Sum, Value
+from incline.report.arithmetic import Sum, Value
+from incline.report.digits import Relation
 from incline.report.show import MISSING
 from incline.report.steps import Board, Cell, Chapter, Head, Lay
-from incline.report.steps_readings import sums_chapter, tangents_chapter
+from incline.report.steps_readings import readings_chapters
 from incline.report.steps_units import Units
+from incline.report.text import markup
 
 if TYPE_CHECKING:
     from incline.moments import Placing
@@ -22,11 +24,7 @@ __all__ = ["heel_chapters"]
 
 def heel_chapters(sheet: Sheet) -> tuple[Chapter, ...]:
     """Moments by shift, tangents of every reading, and, for a straight line, slope and GM."""
-    heel = sheet.reduction.outcome.heel
-    found = (_moments(sheet), tangents_chapter(sheet))
-    if heel.method == "straight-line":
-        return (*found, sums_chapter(sheet))
-    return found
+    return (_moments(sheet), *readings_chapters(sheet))
 
 
 def _moments(sheet: Sheet) -> Chapter:
@@ -36,7 +34,7 @@ def _moments(sheet: Sheet) -> Chapter:
     if not trial.weights:
         return Chapter(
             "Moments by shift",
-            (f"The trial gives the moments themselves [{unit}]; they stand with the readings below.",),
+            (f"The trial gives the moments themselves [{unit}]; see the readings below.",),
         )
     rising = any(s.vertical for s in heel.shifts)
     board = _moment_board(sheet, rising=rising)
@@ -95,7 +93,7 @@ def _shift_rows(
         name = placing.names[k][0]
         w = next(w.mass for w in trial.weights if w.id == name)
         mass = u.recorded("mass", w, "w", among=[x.mass for x in trial.weights])
-        cells: list[Cell] = [str(shift.shift) if i == 0 else "", name, mass]
+        cells: list[Cell] = [str(shift.shift) if i == 0 else "", markup(name), mass]
         for axis in axes:
             at, start = _arms(placing, k, name, axis, trial)
             ends = [u.recorded("length", v, axis, among=_all(placing, axis)) for v in (start, at)]

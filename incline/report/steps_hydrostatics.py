@@ -12,9 +12,20 @@ from incline.report.steps_units import Units
 if TYPE_CHECKING:
     from incline.report.arithmetic import Term
     from incline.report.document import Sheet
+    from incline.report.show import Kind
 
 __all__ = ["hydrostatics"]
 
+_COLUMNS: tuple[tuple[str, Kind, str, str], ...] = (
+    ("Volume", "volume", "volume", "∇"),
+    ("KB", "length", "kb", "KB"),
+    ("BM", "length", "bmt", "BM"),
+    ("LCB", "length", "lcb", "LCB"),
+)
+_TOGETHER = (
+    "The entry draft and the table's values at it depend on one another; they were found together, "
+    "by iteration, and hold together as printed."
+)
 _INTEGRATED = "integrated from the offsets at this waterline"
 
 
@@ -26,9 +37,9 @@ def hydrostatics(sheet: Sheet) -> Chapter:
         return Chapter("Hydrostatics", (*before, *_carried(sheet, _INTEGRATED)))
     entered = _Entered(sheet)
     if len(trial.table.trims) > 1:
-        steps = (*entered.several_trims(), *_carried(sheet, _read(sheet)))
+        steps: tuple[Lay | str, ...] = (*entered.several_trims(), *_carried(sheet, _read(sheet)))
     else:
-        steps = entered.one_trim()
+        steps = (_TOGETHER, *entered.one_trim())
     return Chapter("Hydrostatics entered", (*before, *steps))
 
 
@@ -136,14 +147,21 @@ class _Entered:
             Lay("Area of the waterplane there",
                 u.power_of_length(area_of(value, slope), 2, "A", "A<sub>w</sub>", 2), how=how),
             Lay("LCF there", u.of("length", value["lcf"], "LCF", "LCF"), how=how),
-            Lay("Longitudinal BM there", u.of("length", value["bml"], "BM_L", "BM<sub>L</sub>"), how=how),
+            Lay("Longitudinal BM there",
+                u.of("length", value["bml"], "BM_L", "BM<sub>L</sub>"), how=how),
         ]  # fmt: skip
 
     def _share_of_deflection(self, draft: float) -> list[Lay]:
         """How much of the deflection adds volume."""
         value, slope = self._columns(draft)
         if not {"bml", "lcf"} <= value.keys():
-            return [Lay("Share of the deflection that counts", self.factor, how="3/4: no BM<sub>L</sub> in the table")]
+            return [
+                Lay(
+                    "Share of the deflection that counts",
+                    self.factor,
+                    how="3/4: no BM<sub>L</sub> in the table",
+                )
+            ]
         u = self.u
         area = u.power_of_length(area_of(value, slope), 2, "A", "A<sub>w</sub>", 2)
         lcf = u.of("length", value["lcf"], "LCF", "LCF")
@@ -166,11 +184,13 @@ class _Entered:
         table_tau = self.table.trims[0] / self.sheet.reduction.trial.vessel.lpp
         more = self.tau - u.ratio(table_tau, "τ_0", "τ<sub>0</sub>") if table_tau else self.tau
         lays = [
-            Lay("Volume in the table", u.of("volume", value["volume"], "∇_t", "∇<sub>0</sub>"), how=how),
-            Lay("KB in the table", u.of("length", value["kb"], "KB_t", "KB<sub>0</sub>"), how=how),
-            Lay("BM in the table", u.of("length", value["bmt"], "BM_t", "BM<sub>0</sub>"), how=how),
-            Lay("LCB in the table", u.of("length", value["lcb"], "LCB_t", "LCB<sub>0</sub>"), how=how),
-        ]  # fmt: skip
+            Lay(
+                f"{name} in the table",
+                u.of(kind, value[n], f"{sign}_t", f"{sign}<sub>0</sub>"),
+                how=how,
+            )
+            for name, kind, n, sign in _COLUMNS
+        ]
         if "area" in value or "bml" in value:
             area = u.power_of_length(area_of(value, slope), 2, "A", "A<sub>w</sub>", 2)
             lays.append(Lay("Area of the waterplane", area, how=how))
@@ -194,15 +214,11 @@ class _Entered:
     ) -> list[Lay]:
         """What trim does to a table for another trim."""
         u, state = self.u, self.state
-        v0, kb0, bm0, lcb0 = (
-            u.of(kind, value[n], place, symbol)
-            for kind, n, place, symbol in (
-                ("volume", "volume", "∇_t", "∇<sub>0</sub>"),
-                ("length", "kb", "KB_t", "KB<sub>0</sub>"),
-                ("length", "bmt", "BM_t", "BM<sub>0</sub>"),
-                ("length", "lcb", "LCB_t", "LCB<sub>0</sub>"),
-            )
-        )  # fmt: skip
+        v0 = u.of("volume", value["volume"], "∇_t", "∇<sub>0</sub>")
+        kb0, bm0, lcb0 = (
+            u.of("length", value[n], f"{name}_t", f"{name}<sub>0</sub>")
+            for n, name in (("kb", "KB"), ("bmt", "BM"), ("lcb", "LCB"))
+        )
         volume = u.of("volume", state.volume, "∇", "∇")
         kb, bm = u.of("length", state.kb, "KB", "KB"), u.of("length", state.bmt, "BM", "BM")
         lcb = None if state.lcb is None else u.of("length", state.lcb, "LCB", "LCB")
@@ -220,10 +236,14 @@ class _Entered:
         more = self.tau - zero if table_tau else self.tau
         squares = Power(self.tau) - Power(zero) if table_tau else Power(self.tau)
         rate = u.power_of_length(
-            slope["volume"] * value["bml"] + value["volume"] * slope["bml"], 3, "I_L'", "I<sub>L</sub>′", 0
+            slope["volume"] * value["bml"] + value["volume"] * slope["bml"],
+            3,
+            "I_L'",
+            "I<sub>L</sub>′",
+            0,
         )
         second = u.of("volume", self.entered.trim_volume, "δ∇", "δ∇", 3)
-        how = "how fast I<sub>L</sub> = BM<sub>L</sub> ∇<sub>0</sub> grows with the draft in the table"
+        how = "growth of I<sub>L</sub> = BM<sub>L</sub> ∇<sub>0</sub> with the draft in the table"
         lays = [
             Lay("Second moment by draft", rate, how=how),
             Lay("Second trim correction", second, Power(more) * rate / 2),

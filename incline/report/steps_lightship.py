@@ -1,4 +1,4 @@
-"""Steps from GM to the centre of gravity, and through the ledger to lightship."""
+"""Steps through the ledger to lightship."""
 
 from __future__ import annotations
 
@@ -6,93 +6,24 @@ import math
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
-from incline.report.arithmetic import Power, Relation, Sum, Term, Value
+from incline.report.arithmetic import Sum, Term, Value
+from incline.report.digits import Relation
 from incline.report.show import MISSING
 from incline.report.steps import Board, Cell, Chapter, Head, Lay, Travel
-from incline.report.steps_hydrostatics import shifts_draft
 from incline.report.steps_units import Units
+from incline.report.text import markup
 
 if TYPE_CHECKING:
-    from incline.record import Tank
     from incline.report.document import Sheet
     from incline.result import Estimate, LedgerLine
 
-__all__ = ["ACTIONS", "ledger_board", "lightship_chapters"]
+__all__ = ["ledger_board", "lightship_chapter"]
 
 ACTIONS = {
     "deduct": "Deduct: aboard at the test, no part of lightship",
     "add": "Add: part of lightship, not yet aboard",
     "relocate": "Relocate: aboard, but not in its final place",
 }
-
-
-def lightship_chapters(sheet: Sheet) -> tuple[Chapter, ...]:
-    """Free surfaces, centre of gravity as inclined, lightship."""
-    return (_free_surfaces(sheet), _gravity(sheet), _lightship(sheet))
-
-
-def _free_surfaces(sheet: Sheet) -> Chapter:
-    state, u = sheet.reduction.outcome.as_inclined, Units(sheet.show)
-    free = sheet.reduction.outcome.free_surface
-    slack = [t for t in sheet.reduction.trial.tanks if t.fsm]
-    total = u.of("moment", free.moment, "ΣFSM", "ΣFSM")
-    rise = u.of("length", free.correction, "GGv", "GG<sub>v</sub>", 4)
-    weight = u.of("mass", state.displacement, "Δ", "Δ")
-    moments = tuple(u.of("moment", t.fsm, "FSM", "FSM") for t in slack)
-    steps: list[Lay] = []
-    for tank, moment in zip(slack, moments, strict=True):
-        term, how = _surface(u, tank)
-        steps.append(Lay(f"Free-surface moment, {tank.name}", moment, term, how))
-    whole = Lay("Sum of the free-surface moments", total, Sum(moments, "ΣFSM"))
-    if not slack:
-        whole = Lay("Sum of the free-surface moments", total, how="no slack tank")
-    return Chapter(
-        "Free surfaces",
-        (*steps, whole, Lay("Virtual rise of G", rise, total / weight)),
-    )
-
-
-def _surface(u: Units, tank: Tank) -> tuple[Term | None, str]:
-    """How a tank's free-surface moment comes about."""
-    boxlike = tank.fsm_basis.startswith("density x length")
-    if not (boxlike and tank.density and tank.length and tank.breadth):
-        return None, tank.fsm_basis or "as recorded"
-    density = u.recorded("density", tank.density, f"ρ {tank.name}", "ρ")
-    length = u.recorded("length", tank.length, f"l {tank.name}", "l")
-    breadth = u.recorded("length", tank.breadth, f"b {tank.name}", "b")
-    return u.as_mass(density * length * Power(breadth, 3)) / 12, ""
-
-
-def _gravity(sheet: Sheet) -> Chapter:
-    outcome, u = sheet.reduction.outcome, Units(sheet.show)
-    state, heel = outcome.as_inclined, outcome.heel
-    rise = u.of("length", outcome.free_surface.correction, "GGv", "GG<sub>v</sub>", 4)
-    gm, km = u.of("length", heel.gm_fluid, "GM", "GM"), u.of("length", state.kmt, "KM", "KM")
-    kg, kb = u.of("length", state.vcg, "KG", "KG"), u.of("length", state.kb, "KB", "KB")
-    steps: list[Lay] = []
-    if heel.method == "straight-line":
-        solid = u.of("length", heel.gm_fluid + outcome.free_surface.correction, "GM solid", "GM<sub>s</sub>")
-        steps += [
-            Lay("GM, liquids held", solid, gm + rise),
-            Lay("KG, solid", kg, km - gm - rise),
-        ]
-    else:
-        fluid = u.of("length", state.vcg + outcome.free_surface.correction, "KG fluid", "KG<sub>f</sub>")
-        steps += [
-            Lay("KG, liquids free to move", fluid, how="from the fit of N(t), not from a straight line"),
-            Lay("KG, solid", kg, fluid - rise),
-            Lay("GM, liquids free to move, upright", gm, km - fluid),
-        ]  # fmt: skip
-    if state.lcg is not None and state.lcb is not None:
-        *_, tau = shifts_draft(sheet)
-        lcb, lcg = (u.of("length", v, s, s) for v, s in ((state.lcb, "LCB"), (state.lcg, "LCG")))
-        steps.append(Lay("Longitudinal centre of gravity", lcg, lcb + tau * (kg - kb)))
-    if state.tcg is not None and state.list_tan is not None:
-        place = "λ" if sheet.reduction.trial.changes else "list read"
-        lean = u.ratio(state.list_tan, place, "λ")
-        tcg = u.of("length", state.tcg, "TCG", "TCG", 4)
-        steps.append(Lay("Transverse centre of gravity", tcg, gm * lean))
-    return Chapter("Centre of gravity as inclined, test weights at their start", tuple(steps))
 
 
 @dataclass(frozen=True, slots=True)
@@ -165,7 +96,7 @@ def moment_of(line: LedgerLine) -> tuple[float, float, float]:
     return x, y, z
 
 
-def _lightship(sheet: Sheet) -> Chapter:
+def lightship_chapter(sheet: Sheet) -> Chapter:
     """Sums of the ledger and the divisions that end it."""
     outcome, u = sheet.reduction.outcome, Units(sheet.show)
     state, whole = outcome.as_inclined, _whole(sheet, units=True)
@@ -187,10 +118,15 @@ def _lightship(sheet: Sheet) -> Chapter:
             continue
         name = _NAMES[axis]
         arm = u.of("length", at, name, name, 4 if axis == "y" else 3)
-        total = Sum((start, *(whole.sums[a][i] for a in ACTIONS)), f"Δ\N{NO-BREAK SPACE}{name} + Σm<sub>{axis}</sub>")
+        total = Sum(
+            (start, *(whole.sums[a][i] for a in ACTIONS)),
+            f"Δ\N{NO-BREAK SPACE}{name} + Σm<sub>{axis}</sub>",
+        )
         least = sheet.show.decimals(found.u, "length", 3)
         result = u.of("length", found.value, f"{name} light", f"{name}<sub>L</sub>", least)
-        ship = Value(start.amount, start.place, f"Δ\N{NO-BREAK SPACE}{name}", start.unit, start.least)
+        ship = Value(
+            start.amount, start.place, f"Δ\N{NO-BREAK SPACE}{name}", start.unit, start.least
+        )
         steps += [
             Lay(f"Moment as inclined, {axis}", ship, weight * arm),
             Lay(f"Moment of lightship, {axis}", end, total),
@@ -244,9 +180,7 @@ def ledger_board(sheet: Sheet) -> Board:
     return Board("", heads, tuple(rows), tuple(relations), frozenset(totals))
 
 
-def _line(
-    sheet: Sheet, u: Units, line: LedgerLine
-) -> tuple[tuple[Cell, ...], list[Relation]]:
+def _line(sheet: Sheet, u: Units, line: LedgerLine) -> tuple[tuple[Cell, ...], list[Relation]]:
     lines = sheet.reduction.outcome.ledger.lines
     sign = -1.0 if line.action == "deduct" else 1.0
     mass = u.recorded("mass", sign * line.mass, "ledger w", "", [x.mass for x in lines])
@@ -256,7 +190,9 @@ def _line(
     relations = []
     for i, axis in enumerate(_AXES):
         at = getattr(line.centre, axis)
-        arm = u.recorded("length", at, f"ledger {axis}", "", [getattr(x.centre, axis) for x in lines])
+        arm = u.recorded(
+            "length", at, f"ledger {axis}", "", [getattr(x.centre, axis) for x in lines]
+        )
         moment = u.bare("moment", moment_of(line)[i], f"m{axis}")
         moments.append(moment)
         cells.append(arm)
@@ -267,12 +203,10 @@ def _line(
             term = mass * (end - arm)
         relations.append(Relation(moment, term))
     name = line.name if line.source == "ledger" else f"{line.name} [{line.source}]"
-    return (name, mass if line.to is None else Travel(mass), *cells, *moments), relations
+    return (markup(name), mass if line.to is None else Travel(mass), *cells, *moments), relations
 
 
-def _column_sums(
-    whole: _Ledger, action: str, rows: list[tuple[Cell, ...]]
-) -> list[Relation]:
+def _column_sums(whole: _Ledger, action: str, rows: list[tuple[Cell, ...]]) -> list[Relation]:
     columns = {1: whole.masses[action], **{5 + i: v for i, v in enumerate(whole.sums[action])}}
     return [
         Relation(total, Sum(tuple(_counted(row[i]) for row in rows), "Σ"))

@@ -15,13 +15,18 @@ from incline.report.tables import SHADE
 from incline.report.text import markup
 
 if TYPE_CHECKING:
-    from collections.abc import Iterator, Mapping, Sequence
+    from collections.abc import Iterator, Sequence
 
+    from incline.report.arithmetic import Digits
     from incline.report.steps import Chapter
 
 __all__ = ["board_table", "calculation"]
 
-_SHARES = (0.055, 0.365, 0.40, 0.18)
+_SHARES = (0.05, 0.32, 0.41, 0.22)
+_DIGIT = "\N{NO-BREAK SPACE}\N{NO-BREAK SPACE}"
+"""As wide as a digit of the typeface."""
+_SUB = '<sub rise="1.3" size="5.2">'
+"""A subscript that stays clear of the line below."""
 _INTRO = (
     "Every result is worked out from the numbers printed beside it, and a number is printed with "
     "the same digits wherever it stands: as many as the results need that follow from it. "
@@ -66,9 +71,7 @@ def _verdict(found: Calculation) -> str:
     return f"{_UNSOUND} {', '.join([*wrong, *tables])}."
 
 
-def _chapter(
-    sheet: Sheet, chapter: Chapter, steps: Iterator[Step], digits: Mapping[str, int]
-) -> list[Any]:
+def _chapter(sheet: Sheet, chapter: Chapter, steps: Iterator[Step], digits: Digits) -> list[Any]:
     """Sentences, tables, and runs of steps in one table each."""
     flow: list[Any] = list(part(chapter.title, 70.0))
     run: list[Step] = []
@@ -81,7 +84,7 @@ def _chapter(
         if isinstance(piece, Board):
             flow += board_table(piece, digits, sheet.width)
         else:
-            flow.append(Paragraph(piece, STYLES["body"]))
+            flow.append(_set(piece, "body"))
     return [*flow, *_run(run, sheet.width)]
 
 
@@ -118,25 +121,27 @@ def _step_cells(step: Step) -> list[Any]:
     put_in = step.put_in if step.carried else f"=\N{NO-BREAK SPACE}{markup(step.put_in)}"
     result = f"=\N{NO-BREAK SPACE}{markup(step.result)}"
     return [
-        Paragraph(f"({step.number})", STYLES["cell_left"]),
-        Paragraph(name, STYLES["cell_left"]),
-        Paragraph(put_in, STYLES["cell_left"]),
-        Paragraph(result, STYLES["cell_right"]),
+        _set(f"({step.number})", "cell_left"),
+        _set(name, "cell_left"),
+        _set(put_in, "cell_left"),
+        _set(result, "cell_right"),
     ]
 
 
-def board_table(board: Board, digits: Mapping[str, int], width: float) -> list[Any]:
+def _set(text: str, style: str) -> Paragraph:
+    """A paragraph of markup with its subscripts."""
+    return Paragraph(text.replace("<sub>", _SUB), STYLES[style])
+
+
+def board_table(board: Board, digits: Digits, width: float) -> list[Any]:
     """A table of values; a title above it where it has one."""
     looks: list[tuple[Any, ...]] = []
     body: list[list[Any]] = []
-    deepest = [
-        max((digits[r[i].place] for r in board.rows if i < len(r) and isinstance(r[i], Value)), default=0)
-        for i in range(len(board.heads))
-    ]
+    deepest = [_deepest(board, i, digits) for i in range(len(board.heads))]
     for i, row in enumerate(board.rows, start=1):
         bold = i - 1 in board.totals
         if len(row) == 1:
-            cells: list[Any] = [Paragraph(markup(str(row[0])), STYLES["head_left"])]
+            cells: list[Any] = [_set(str(row[0]), "head_left")]
             body.append([*cells, *[""] * (len(board.heads) - 1)])
             looks += [("SPAN", (0, i), (-1, i)), ("BACKGROUND", (0, i), (-1, i), SHADE)]
             continue
@@ -147,15 +152,13 @@ def board_table(board: Board, digits: Mapping[str, int], width: float) -> list[A
         kind = "head" if bold else "cell"
         body.append(
             [
-                Paragraph(_cell(c, digits, d), STYLES[f"{kind}_{'left' if h.left else 'right'}"])
+                _set(_cell(c, digits, d), f"{kind}_{'left' if h.left else 'right'}")
                 for c, h, d in zip(row, board.heads, deepest, strict=True)
             ]
         )
-    heads = [
-        Paragraph(h.markup, STYLES["head_left" if h.left else "head_right"]) for h in board.heads
-    ]
+    heads = [_set(h.markup, "head_left" if h.left else "head_right") for h in board.heads]
     total = sum(h.share for h in board.heads)
-    title = [Paragraph(board.title, STYLES["caption"])] if board.title else []
+    title = [_set(board.title, "caption")] if board.title else []
     table = Table(
         [heads, *body],
         colWidths=[width * h.share / total for h in board.heads],
@@ -167,6 +170,12 @@ def board_table(board: Board, digits: Mapping[str, int], width: float) -> list[A
         spaceAfter=7,
     )
     return [*title, table]
+
+
+def _deepest(board: Board, column: int, digits: Digits) -> int:
+    """Most decimals of the numbers in a column."""
+    cells = [row[column] for row in board.rows if column < len(row)]
+    return max((digits[c.place] for c in cells if isinstance(c, Value)), default=0)
 
 
 def _frame(rows: int) -> list[tuple[Any, ...]]:
@@ -185,7 +194,7 @@ def _frame(rows: int) -> list[tuple[Any, ...]]:
     ]
 
 
-def _cell(cell: Cell, digits: Mapping[str, int], deepest: int) -> str:
+def _cell(cell: Cell, digits: Digits, deepest: int) -> str:
     """A cell as markup; numbers with fewer decimals than ``deepest`` keep their point in line."""
     if isinstance(cell, str):
         return cell
@@ -195,4 +204,4 @@ def _cell(cell: Cell, digits: Mapping[str, int], deepest: int) -> str:
     if not isinstance(cell, Value):
         return cell.text(digits)
     room = max(0, deepest - digits[cell.place])
-    return cell.bare(digits) + room * "\N{FIGURE SPACE}"
+    return cell.bare(digits) + room * _DIGIT

@@ -3,83 +3,178 @@
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass, replace
+from dataclasses import replace
 from typing import TYPE_CHECKING
 
 from incline.observations import observe
-from incline.report.arithmetic import Power, Relation, Sum, Tangent, Term, Value, natural
+from incline.report.arithmetic import Power, Sum, Tangent, Term, Value
+from incline.report.digits import Relation, natural
 from incline.report.steps import Board, Cell, Chapter, Head, Lay
 from incline.report.steps_units import Units
+from incline.report.text import markup
 
 if TYPE_CHECKING:
     from incline.record import Device, Reading
     from incline.report.document import Sheet
     from incline.result import HeelPoint
 
-__all__ = ["sums_chapter", "tangents_chapter"]
+__all__ = ["readings_chapters"]
 
 _WRITTEN = 40
 """Most repeats of one reading that are written out."""
+_TOLD = "sum over the devices of what stands in their tables"
 
 
-def _moment(u: Units, sheet: Sheet, point: HeelPoint) -> Value:
-    """The moment of a reading, printed as in the table of moments."""
-    rising = any(s.vertical for s in sheet.reduction.outcome.heel.shifts)
-    return u.bare("moment", point.moment, "M_f" if rising else "M", "M")
-
-
-def tangents_chapter(sheet: Sheet) -> Chapter:
-    """Every reading's tangent, device by device."""
-    boards = [_tangent_board(sheet, d) for d in _devices(sheet)]
-    return Chapter(
-        "Tangents of heel",
-        (
-            "Rest values as in “Devices and readings”; a pendulum or U-tube gives its tangent by "
-            "its length or span l, an inclinometer by the angle from the mean of its angles.",
-            *boards,
-        ),
-    )
-
-
-def _devices(sheet: Sheet) -> list[Device]:
-    """Devices with readings that count, in the order of the fit."""
+def readings_chapters(sheet: Sheet) -> tuple[Chapter, ...]:
+    """Every reading's tangent, device by device; for a straight line also slope and GM."""
+    heel = sheet.reduction.outcome.heel
     known = {d.id: d for d in sheet.reduction.trial.devices}
-    return [known[d.id] for d in sheet.reduction.outcome.heel.devices]
-
-
-def _tangent_board(sheet: Sheet, device: Device) -> Board:
-    """Rest values as sums of what was written down, and their tangents."""
-    u, trial = Units(sheet.show), sheet.reduction.trial
-    points = [p for p in sheet.reduction.outcome.heel.points if p.device == device.id]
-    readings = {r.shift: r for r in trial.readings if r.device == device.id}
-    quantity = readings[points[0].shift].quantity
-    rest = [_rest(sheet, readings[p.shift], p, list(readings.values())) for p in points]
-    title, mean = device.id, None
-    relations: list[Relation] = []
-    if quantity == "length" and device.length is not None:
-        size = u.recorded("length", device.length, f"l {device.id}", "l")
-        title += f": t = r / ({u.readings_in_length} l), l = {size.text({size.place: size.least})}"
-    elif quantity == "angle":
-        middle = math.degrees(math.fsum(p.reading.value for p in points)) / len(points)
-        mean = Value(middle, f"r mean {device.id}", "r<sub>m</sub>", "°", 4)
-        relations.append(Relation(mean, Sum(tuple(rest), "Σ r") / len(rest)))
-        title += ": t = tan(r − r<sub>m</sub>)"
-    else:
-        title += ": t as read"
-    rows: list[tuple[Cell, ...]] = []
-    for p, r in zip(points, rest, strict=True):
-        tangent = u.ratio(p.tangent, "t", "t")
-        relations.append(Relation(tangent, _as_tangent(u, device, r, mean)))
-        rows.append((str(p.shift), r, tangent, "excluded" if p.excluded else ""))
-    if mean is not None:
-        rows.append(("mean r<sub>m</sub>", mean, "", ""))
-    heads = (
-        Head("shift", 0.12, left=True),
-        Head(f"rest value r [{sheet.show.raw_unit(quantity)}]", 0.50, left=True),
-        Head("t", 0.20),
-        Head("", 0.18, left=True),
+    fitted = [_Fitted(sheet, known[d.id]) for d in heel.devices]
+    line = heel.method == "straight-line"
+    boards = [f.board(sums=line) for f in fitted]
+    title = "Tangents of heel, and their products with the moments" if line else "Tangents of heel"
+    said = (
+        "r is the rest value: a reading, the mean of repeats, of a swing's extremes, or the centre "
+        "of a swing as fitted in “Devices and readings”."
     )
-    return Board(title, heads, tuple(rows), tuple(relations))
+    if line:
+        said += (
+            " M<sub>0</sub> and t<sub>0</sub> are the means of the device's readings that count; "
+            "S<sub>Mt</sub> and S<sub>MM</sub> the sums of the products and of the squares."
+        )
+    found = Chapter(title, (said, *boards))
+    return (found, _slope(sheet, fitted)) if line else (found,)
+
+
+class _Fitted:
+    """One device's readings as values, with the sums that the slope needs."""
+
+    def __init__(self, sheet: Sheet, device: Device) -> None:
+        self.sheet, self.device = sheet, device
+        self.u, self.unit = Units(sheet.show), sheet.show.unit("moment")
+        heel, trial = sheet.reduction.outcome.heel, sheet.reduction.trial
+        self.points = [p for p in heel.points if p.device == device.id]
+        readings = {r.shift: r for r in trial.readings if r.device == device.id}
+        self.quantity = readings[self.points[0].shift].quantity
+        every = list(readings.values())
+        self.rest = [_rest(sheet, readings[p.shift], p, every) for p in self.points]
+        place = "M_f" if any(s.vertical for s in heel.shifts) else "M"  # as in the moments' table
+        self.moments = [self.u.bare("moment", p.moment, place, "M") for p in self.points]
+        self.tangents = [self.u.ratio(p.tangent, "t", "t", 5) for p in self.points]
+        some = [i for i, p in enumerate(self.points) if not p.excluded]
+        m, t = [self.moments[i] for i in some], [self.tangents[i] for i in some]
+        self.mean_m = Value(_mean(m), "M mean", "M<sub>0</sub>", "", 3)
+        self.mean_t = Value(_mean(t), "t mean", "t<sub>0</sub>", "", 6)
+        off = [v.amount - self.mean_m.amount for v in m]
+        lean = [v.amount - self.mean_t.amount for v in t]
+        self.products = {
+            i: Value(a * b, "product", "", "", 3) for i, a, b in zip(some, off, lean, strict=True)
+        }
+        self.squares = {
+            i: Value(a * a, "square", "", "", 1) for i, a in zip(some, off, strict=True)
+        }
+        self.xy = Value(_total(self.products), "Sxy", "S<sub>Mt</sub>", self.unit, 3)
+        self.xx = Value(_total(self.squares), "Sxx", "S<sub>MM</sub>", f"({self.unit})²", 1)
+        self.mean = self._middle() if self.quantity == "angle" else None
+
+    def _middle(self) -> Value:
+        """The mean angle, from which an inclinometer's angles are counted."""
+        angles = math.fsum(p.reading.value for p in self.points) / len(self.points)
+        return Value(math.degrees(angles), f"r mean {self.device.id}", "r<sub>m</sub>", "°", 4)
+
+    def board(self, *, sums: bool) -> Board:
+        """The device's table, with products and squares where ``sums`` are wanted."""
+        rows: list[tuple[Cell, ...]] = []
+        for i, p in enumerate(self.points):
+            more: tuple[Cell, ...] = ("excluded" if p.excluded else "",)
+            if sums:
+                more = ("excluded", "")
+                if i in self.products:
+                    more = (self.products[i], self.squares[i])
+            rows.append((str(p.shift), self.rest[i], self.tangents[i], self.moments[i], *more))
+        if self.mean is not None:
+            rows.append(("r<sub>m</sub>", self.mean, *[""] * (len(rows[0]) - 2)))
+        totals = frozenset[int]()
+        relations = self._tangents()
+        if sums:
+            plain = (replace(self.xy, unit=""), replace(self.xx, unit=""))
+            rows.append(("", "means; sums", self.mean_t, self.mean_m, *plain))
+            totals, relations = frozenset({len(rows) - 1}), [*relations, *self._sums()]
+        return Board(self._title(), self._heads(sums=sums), tuple(rows), tuple(relations), totals)
+
+    def _title(self) -> str:
+        name = markup(self.device.id)
+        if self.mean is not None:
+            return f"{name}: t = tan(r − r<sub>m</sub>), r<sub>m</sub> the mean of all r"
+        size = self._length()
+        if size is None:
+            return f"{name}: t as read"
+        said = "span" if self.device.kind == "u-tube" else "length"
+        many, length = self.u.readings_in_length, size.text({size.place: size.least})
+        return f"{name}: t = r / ({many} l), {said} l = {length}"
+
+    def _length(self) -> Value | None:
+        if self.quantity != "length" or self.device.length is None:
+            return None
+        return self.u.recorded("length", self.device.length, f"l {self.device.id}", "l")
+
+    def _heads(self, *, sums: bool) -> tuple[Head, ...]:
+        unit = self.sheet.show.raw_unit(self.quantity)
+        first = (
+            Head("shift", 0.07, left=True),
+            Head(f"r [{unit}]" if unit != "tan" else "r", 0.29, left=True),
+            Head("t", 0.14),
+            Head(f"M [{self.unit}]", 0.13),
+        )
+        if not sums:
+            return (*first, Head("", 0.37, left=True))
+        return (
+            *first,
+            Head("(M − M<sub>0</sub>) (t − t<sub>0</sub>)", 0.19),
+            Head("(M − M<sub>0</sub>)²", 0.18),
+        )
+
+    def _tangents(self) -> list[Relation]:
+        """What each tangent follows from."""
+        found: list[Relation] = []
+        if self.mean is not None:
+            found.append(Relation(self.mean, Sum(tuple(self.rest), "Σ r") / len(self.rest)))
+        size = self._length()
+        for tangent, rest in zip(self.tangents, self.rest, strict=True):
+            term = rest
+            if self.mean is not None:
+                term = Tangent(rest - self.mean)
+            elif size is not None:
+                term = rest / (self.u.readings_in_length * size)
+            found.append(Relation(tangent, term))
+        return found
+
+    def _sums(self) -> list[Relation]:
+        """Means, products, squares, and their sums."""
+        m, t = ([c[i] for i in self.products] for c in (self.moments, self.tangents))
+        found = [
+            Relation(self.mean_m, Sum(tuple(m), "Σ M") / len(m)),
+            Relation(self.mean_t, Sum(tuple(t), "Σ t") / len(t)),
+        ]
+        for i in self.products:
+            off, lean = self.moments[i] - self.mean_m, self.tangents[i] - self.mean_t
+            found += [
+                Relation(self.products[i], off * lean),
+                Relation(self.squares[i], Power(off)),
+            ]
+        return [
+            *found,
+            Relation(self.xy, Sum(tuple(self.products.values()), "Σ")),
+            Relation(self.xx, Sum(tuple(self.squares.values()), "Σ")),
+        ]
+
+
+def _mean(values: list[Value]) -> float:
+    return math.fsum(v.amount for v in values) / len(values)
+
+
+def _total(values: dict[int, Value]) -> float:
+    return math.fsum(v.amount for v in values.values())
 
 
 def _rest(sheet: Sheet, reading: Reading, point: HeelPoint, others: list[Reading]) -> Term:
@@ -101,7 +196,9 @@ def _rest(sheet: Sheet, reading: Reading, point: HeelPoint, others: list[Reading
 def _raw(sheet: Sheet, reading: Reading, value: float, place: str, every: list[float]) -> Value:
     """A reading in its printed unit, which stands in the heading."""
     if reading.quantity == "length":
-        found = Units(sheet.show).recorded("reading", value, f"{place} {reading.device}", "r", every)
+        found = Units(sheet.show).recorded(
+            "reading", value, f"{place} {reading.device}", "r", every
+        )
         return replace(found, unit="")
     if reading.quantity == "angle":
         least = max(natural(math.degrees(v), 3, 6) for v in (value, *every))
@@ -110,70 +207,51 @@ def _raw(sheet: Sheet, reading: Reading, value: float, place: str, every: list[f
     return Value(value, f"{place} {reading.device}", "r", "", least)
 
 
-def _as_tangent(u: Units, device: Device, rest: Term, mean: Value | None) -> Term:
-    """The formula of a tangent for one kind of device."""
-    if mean is not None:
-        return Tangent(rest - mean)
-    if device.length is not None:
-        return rest / (u.readings_in_length * u.recorded("length", device.length, f"l {device.id}", "l"))
-    return rest
-
-
-@dataclass(frozen=True, slots=True)
-class _Sums:
-    """A device's part in the slope."""
-
-    xx: Value
-    xy: Value
-    weight: float
-
-
-def sums_chapter(sheet: Sheet) -> Chapter:
-    """Centred products by device, their sums, the slope and GM."""
+def _slope(sheet: Sheet, fitted: list[_Fitted]) -> Chapter:
+    """The devices' sums put together, the slope and GM."""
     heel, u = sheet.reduction.outcome.heel, Units(sheet.show)
-    weights = _weights(sheet)
-    boards, sums = [], []
-    for device in _devices(sheet):
-        board, parts = _centred(sheet, device, weights.get(device.id))
-        boards.append(board)
-        sums.append(parts)
+    unit, weights = sheet.show.unit("moment"), _weights(sheet)
+    share = {f.device.id: weights.get(f.device.id, 1.0) for f in fitted}
+    xy = math.fsum(share[f.device.id] * f.xy.amount for f in fitted)
+    xx = math.fsum(share[f.device.id] * f.xx.amount for f in fitted)
+    total_xy = Value(xy, "ΣSxy", "S<sub>Mt</sub>", unit, 3)
+    total_xx = Value(xx, "ΣSxx", "S<sub>MM</sub>", f"({unit})²", 1)
     slope = u.slope(heel.slope, "b", "b")
-    state = sheet.reduction.outcome.as_inclined
-    weight = u.of("mass", state.displacement, "Δ", "Δ")
+    weight = u.of("mass", sheet.reduction.outcome.as_inclined.displacement, "Δ", "Δ")
     gm = u.of("length", heel.gm_fluid, "GM", "GM")
-    unit = sheet.show.unit("moment")
-    total_xy = Value(_total(sums, "xy"), "ΣSxy", "S<sub>Mt</sub>", unit, 3)
-    total_xx = Value(_total(sums, "xx"), "ΣSxx", "S<sub>MM</sub>", f"({unit})²", 1)
-    said = (
-        "Readings that count, less the means of their device. S<sub>Mt</sub> and S<sub>MM</sub> "
-        "are the sums of products and squares."
-    )
+    said = "All devices share one slope, each has a zero of its own."
     if weights:
-        said += " Each device's sums are weighted by g, from the resolution of its readings."
+        said += " The sums of each are weighted by g, from the resolution of its readings."
     return Chapter(
         "Slope and GM",
         (
             said,
-            *boards,
-            Lay("Sum of products, all devices", total_xy, _joined(u, sums, "xy", weights)),
-            Lay("Sum of squares, all devices", total_xx, _joined(u, sums, "xx", weights)),
-            Lay("Slope common to all devices", slope, total_xy / total_xx),
+            *_joined(u, fitted, weights, (total_xy, total_xx)),
+            Lay("Slope of tangent on moment", slope, total_xy / total_xx),
             Lay("GM, liquids free to move", gm, 1 / (slope * weight)),
         ),
     )
 
 
-def _total(sums: list[_Sums], key: str) -> float:
-    return math.fsum(s.weight * getattr(s, key).amount for s in sums)
-
-
-def _joined(u: Units, sums: list[_Sums], key: str, weights: dict[str, float]) -> Sum:
-    label = "S<sub>Mt,j</sub>" if key == "xy" else "S<sub>MM,j</sub>"
-    told = "sum over the devices"
+def _joined(
+    u: Units, fitted: list[_Fitted], weights: dict[str, float], totals: tuple[Value, Value]
+) -> list[Lay | Board]:
+    """The sums over the devices; from a table where there are many or they are weighted."""
+    labels = ("Σ S<sub>Mt</sub> of the devices", "Σ S<sub>MM</sub> of the devices")
+    names = ("Sum of products, all devices", "Sum of squares, all devices")
+    columns = ([f.xy for f in fitted], [f.xx for f in fitted])
     if not weights:
-        return Sum(tuple(getattr(s, key) for s in sums), f"Σ {label}", told)
-    terms = tuple(u.ratio(s.weight, "g", "g", 4) * getattr(s, key) for s in sums)
-    return Sum(terms, f"Σ g\N{NO-BREAK SPACE}{label}", told)
+        terms = [Sum(tuple(c), label, _TOLD) for c, label in zip(columns, labels, strict=True)]
+        return [Lay(n, v, t) for n, v, t in zip(names, totals, terms, strict=True)]
+    shares = [u.ratio(weights[f.device.id], "g", "g", 4) for f in fitted]
+    sums = [
+        Sum(tuple(g * v for g, v in zip(shares, c, strict=True)), f"Σ g {label[2:]}", _TOLD)
+        for c, label in zip(columns, labels, strict=True)
+    ]
+    rows = tuple((markup(f.device.id), g) for f, g in zip(fitted, shares, strict=True))
+    heads = (Head("device", 0.4, left=True), Head("weight g", 0.2), Head("", 0.4))
+    board = Board("", heads, tuple((*r, "") for r in rows))
+    return [board, *(Lay(n, v, t) for n, v, t in zip(names, totals, sums, strict=True))]
 
 
 def _weights(sheet: Sheet) -> dict[str, float]:
@@ -181,56 +259,4 @@ def _weights(sheet: Sheet) -> dict[str, float]:
     seen = observe(sheet.reduction.trial)
     if seen.weight is None:
         return {}
-    return {
-        d.id: float(seen.weight[seen.device == j][0]) for j, d in enumerate(seen.devices)
-    }
-
-
-def _centred(sheet: Sheet, device: Device, weight: float | None) -> tuple[Board, _Sums]:
-    u, unit = Units(sheet.show), sheet.show.unit("moment")
-    points = [
-        p
-        for p in sheet.reduction.outcome.heel.points
-        if p.device == device.id and not p.excluded
-    ]
-    moments = [_moment(u, sheet, p) for p in points]
-    tangents = [u.ratio(p.tangent, "t", "t") for p in points]
-    mean_m = Value(math.fsum(m.amount for m in moments) / len(points), "M mean", "", "", 4)
-    mean_t = Value(math.fsum(t.amount for t in tangents) / len(points), "t mean", "", "", 7)
-    relations = [
-        Relation(mean_m, Sum(tuple(moments), "Σ M") / len(points)),
-        Relation(mean_t, Sum(tuple(tangents), "Σ t") / len(points)),
-    ]
-    rows: list[tuple[Cell, ...]] = []
-    products, squares = [], []
-    for p, m, t in zip(points, moments, tangents, strict=True):
-        off, lean = m.amount - mean_m.amount, t.amount - mean_t.amount
-        product = Value(off * lean, "product", "", "", 4)
-        square = Value(off**2, "square", "", "", 2)
-        relations += [
-            Relation(product, (m - mean_m) * (t - mean_t)),
-            Relation(square, Power(m - mean_m)),
-        ]
-        products.append(product)
-        squares.append(square)
-        rows.append((str(p.shift), m, t, product, square))
-    xy = Value(math.fsum(v.amount for v in products), "Sxy", "S<sub>Mt</sub>", unit, 3)
-    xx = Value(math.fsum(v.amount for v in squares), "Sxx", "S<sub>MM</sub>", f"({unit})²", 1)
-    relations += [Relation(xy, Sum(tuple(products), "Σ")), Relation(xx, Sum(tuple(squares), "Σ"))]
-    rows.append(("means M<sub>0</sub>, t<sub>0</sub>; sums", mean_m, mean_t, _plain(xy), _plain(xx)))
-    heads = (
-        Head("shift", 0.22, left=True),
-        Head(f"M [{unit}]", 0.17),
-        Head("t", 0.18),
-        Head("(M − M<sub>0</sub>) (t − t<sub>0</sub>)", 0.21),
-        Head("(M − M<sub>0</sub>)²", 0.22),
-    )
-    title = f"{device.id}: {len(points)} readings"
-    if weight is not None:
-        title += f", g = {u.ratio(weight, 'g', 'g', 4).bare({'g': 4})}"
-    board = Board(title, heads, tuple(rows), tuple(relations), frozenset({len(rows) - 1}))
-    return board, _Sums(xx, xy, 1.0 if weight is None else weight)
-
-
-def _plain(value: Value) -> Value:
-    return replace(value, unit="")
+    return {d.id: float(seen.weight[seen.device == j][0]) for j, d in enumerate(seen.devices)}

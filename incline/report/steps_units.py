@@ -6,7 +6,8 @@ import math
 from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
-from incline.report.arithmetic import Value, Whole, natural
+from incline.report.arithmetic import Value, Whole
+from incline.report.digits import natural
 
 if TYPE_CHECKING:
     from collections.abc import Iterable
