@@ -63,10 +63,10 @@ def _common(sheet: Sheet) -> Any:  # noqa: ANN401 - untyped library
     sides = ((heel.max_heel_port, "port"), (heel.max_heel_starboard, "starboard"))
     pairs = (
         ("b, slope of tangent on moment", f"{slope} per {unit}"),
-        ("its standard error", f"{_per_moment(sheet, heel.u_slope)} per {unit}"),
+        ("standard error of b, regression alone", f"{_per_moment(sheet, heel.u_slope)} per {unit}"),
         ("1 / b, moment for unit tangent", show.full(1.0 / heel.slope, "moment")),
         ("GM fluid = 1 / (b Δ)", show.full(heel.gm_fluid, "length")),
-        ("its standard error", error),
+        ("standard error of GM fluid, regression alone", error),
         ("readings; devices", f"{counted}; {len(heel.devices)}"),
         ("degrees of freedom", str(heel.dof)),
         ("standard deviation of residuals", f"{spread}, as tangents"),

@@ -38,6 +38,7 @@ class _Ledger:
 
 
 _AXES = ("x", "y", "z")
+_WEIGHT = "Δ\N{NO-BREAK SPACE}"
 _NAMES = {"x": "LCG", "y": "TCG", "z": "KG"}
 
 
@@ -53,7 +54,9 @@ def _whole(sheet: Sheet, *, units: bool) -> _Ledger:
     ship = tuple(
         None
         if c is None
-        else make("moment", state.displacement * c, f"Σm{a}", f"M<sub>{a}</sub>", least[a])
+        else make(
+            "moment", state.displacement * c, f"Σm{a}", f"Δ\N{NO-BREAK SPACE}{_NAMES[a]}", least[a]
+        )
         for a, c in zip(_AXES, centre, strict=True)
     )
     masses, sums = {}, {}
@@ -120,15 +123,12 @@ def lightship_chapter(sheet: Sheet) -> Chapter:
         arm = u.of("length", at, name, name, 4 if axis == "y" else 3)
         total = Sum(
             (start, *(whole.sums[a][i] for a in ACTIONS)),
-            f"Δ\N{NO-BREAK SPACE}{name} + Σm<sub>{axis}</sub>",
+            f"{_WEIGHT}{name} + Σm<sub>{axis}</sub>",
         )
         least = sheet.show.decimals(found.u, "length", 3)
         result = u.of("length", found.value, f"{name} light", f"{name}<sub>L</sub>", least)
-        ship = Value(
-            start.amount, start.place, f"Δ\N{NO-BREAK SPACE}{name}", start.unit, start.least
-        )
         steps += [
-            Lay(f"Moment as inclined, {axis}", ship, weight * arm),
+            Lay(f"Moment as inclined, {axis}", start, weight * arm),
             Lay(f"Moment of lightship, {axis}", end, total),
             Lay(f"{name} of lightship", result, end / whole.weight),
         ]
@@ -143,9 +143,9 @@ def ledger_board(sheet: Sheet) -> Board:
     length, moment = show.unit("length"), show.unit("moment")
     heads = (
         Head("item", 0.25, left=True),
-        Head(f"mass w [{show.unit('mass')}]", 0.11),
+        Head(f"mass [{show.unit('mass')}]", 0.11),
         *(Head(f"{a} [{length}]", 0.09) for a in _AXES),
-        *(Head(f"w × {a} [{moment}]", 0.125) for a in _AXES),
+        *(Head(f"mass × {a} [{moment}]", 0.125) for a in _AXES),
     )
     state, light = outcome.as_inclined, outcome.lightship
     start = [

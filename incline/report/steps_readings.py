@@ -40,7 +40,7 @@ def readings_chapters(sheet: Sheet) -> tuple[Chapter, ...]:
     if line:
         said += (
             " M<sub>0</sub> and t<sub>0</sub> are the means of the device's readings that count; "
-            "S<sub>Mt</sub> and S<sub>MM</sub> the sums of the products and of the squares."
+            "S<sub>Mt,j</sub> and S<sub>MM,j</sub> the sums of its products and of its squares."
         )
     found = Chapter(title, (said, *boards))
     return (found, _slope(sheet, fitted)) if line else (found,)
@@ -73,8 +73,8 @@ class _Fitted:
         self.squares = {
             i: Value(a * a, "square", "", "", 1) for i, a in zip(some, off, strict=True)
         }
-        self.xy = Value(_total(self.products), "Sxy", "S<sub>Mt</sub>", self.unit, 3)
-        self.xx = Value(_total(self.squares), "Sxx", "S<sub>MM</sub>", f"({self.unit})²", 1)
+        self.xy = Value(_total(self.products), "Sxy", "S<sub>Mt,j</sub>", self.unit, 3)
+        self.xx = Value(_total(self.squares), "Sxx", "S<sub>MM,j</sub>", f"({self.unit})²", 1)
         self.mean = self._middle() if self.quantity == "angle" else None
 
     def _middle(self) -> Value:
@@ -237,7 +237,7 @@ def _joined(
     u: Units, fitted: list[_Fitted], weights: dict[str, float], totals: tuple[Value, Value]
 ) -> list[Lay | Board]:
     """The sums over the devices; from a table where there are many or they are weighted."""
-    labels = ("Σ S<sub>Mt</sub> of the devices", "Σ S<sub>MM</sub> of the devices")
+    labels = ("Σ S<sub>Mt,j</sub>", "Σ S<sub>MM,j</sub>")
     names = ("Sum of products, all devices", "Sum of squares, all devices")
     columns = ([f.xy for f in fitted], [f.xx for f in fitted])
     if not weights:
@@ -245,7 +245,11 @@ def _joined(
         return [Lay(n, v, t) for n, v, t in zip(names, totals, terms, strict=True)]
     shares = [u.ratio(weights[f.device.id], "g", "g", 4) for f in fitted]
     sums = [
-        Sum(tuple(g * v for g, v in zip(shares, c, strict=True)), f"Σ g {label[2:]}", _TOLD)
+        Sum(
+            tuple(g * v for g, v in zip(shares, c, strict=True)),
+            f"Σ g\N{NO-BREAK SPACE}{label[2:]}",
+            _TOLD,
+        )
         for c, label in zip(columns, labels, strict=True)
     ]
     rows = tuple((markup(f.device.id), g) for f, g in zip(fitted, shares, strict=True))

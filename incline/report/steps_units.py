@@ -72,9 +72,9 @@ class Units:
     def power_of_length(
         self, inside: float, power: int, place: str, symbol: str = "", least: int = 3
     ) -> Value:
-        """An area, a second moment of area, or one over a length."""
+        """An area, a second moment of area, a number, or one over a length."""
         unit = self.show.system.length
-        name = f"/{unit}" if power < 0 else f"{unit}{'⁰¹²³⁴'[power]}"
+        name = {-1: f"/{unit}", 0: ""}.get(power, f"{unit}{'⁰¹²³⁴'[power]}")
         return Value(inside / self.show.scale("length") ** power, place, symbol, name, least)
 
     def slope(self, inside: float, place: str, symbol: str) -> Value:
