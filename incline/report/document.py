@@ -146,13 +146,17 @@ def _fit(text: str, room: float) -> str:
     return line
 
 
-def _stamped(sheet: Sheet) -> Callable[..., Canvas]:
-    """Canvas whose dates and identifier come from the report, never from a clock or the machine."""
+def _stamped(sheet: Sheet, *, counting: bool) -> Callable[..., Canvas]:
+    """Canvas whose dates and identifier come from the report, never from a clock or the machine.
+
+    ``counting`` tells figures that the pass is only to find the number of pages.
+    """
     stamp = f"D:{sheet.report_date:%Y%m%d}000000+00'00'"
     identity = f"{sheet.reduction.trial.digest} {stamp} {sheet.version}"
 
     def make(*args: object, **options: object) -> Canvas:
         canvas = Canvas(*args, **options)
+        canvas.counting = counting
         canvas.setDateFormatter(lambda *_: stamp)
         canvas._doc.signature = hashlib.md5(identity.encode(), usedforsecurity=False)  # noqa: SLF001
         return canvas
@@ -168,6 +172,6 @@ def render(sheet: Sheet, story: Callable[[Sheet], list[Any]]) -> bytes:
     for _ in range(2):
         target = BytesIO()
         document = _Document(target, sheet, pages)
-        document.build(story(sheet), canvasmaker=_stamped(sheet))
+        document.build(story(sheet), canvasmaker=_stamped(sheet, counting=pages is None))
         pages = int(document.page)
     return target.getvalue()

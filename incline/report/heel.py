@@ -7,7 +7,7 @@ from typing import TYPE_CHECKING, Any
 
 from incline.report.canvas_backend import FigureFlowable
 from incline.report.document import Sheet, note, part
-from incline.report.figures import common_plot, device_plots, residual_plot
+from incline.report.figures import common_plot, device_plots, named_by, residual_plot
 from incline.report.rolling import rolling_period
 from incline.report.show import MISSING, signed
 from incline.report.tables import Column, facts, grid
@@ -21,9 +21,10 @@ __all__ = ["heel_fit"]
 def heel_fit(sheet: Sheet) -> list[Any]:
     """The fit in numbers, then in plots, then point by point."""
     heel, show, width = sheet.reduction.outcome.heel, sheet.show, sheet.width
-    common = FigureFlowable(common_plot(heel, show, width))
-    rows = [FigureFlowable(f) for f in device_plots(heel, show, width)]
-    residuals = FigureFlowable(residual_plot(heel, show, width))
+    named = named_by(heel, sheet.reduction.diagnosis)
+    common = FigureFlowable(common_plot(heel, show, width, named))
+    rows = [FigureFlowable(f) for f in device_plots(heel, show, width, named)]
+    residuals = FigureFlowable(residual_plot(heel, show, width, named))
     return [
         *part("Common line through all devices"),
         _common(sheet),

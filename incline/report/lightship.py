@@ -4,7 +4,9 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
+from incline.report.canvas_backend import FigureFlowable
 from incline.report.document import Sheet, note, paragraph, part
+from incline.report.figures_ledger import waterfall_plot
 from incline.report.show import MISSING, NOT_DETERMINED, Kind, signed
 from incline.report.steps import calculation_of
 from incline.report.steps_page import board_table
@@ -22,7 +24,22 @@ def to_lightship(sheet: Sheet) -> list[Any]:
     """All lines with masses, centres and moments; totals; self-check."""
     found = calculation_of(sheet)
     table = board_table(found.ledger, found.digits, sheet.width)
-    return [*table, *_sums(sheet), *_bases(sheet)]
+    return [*table, *_sums(sheet), *_waterfall(sheet), *_bases(sheet)]
+
+
+def _waterfall(sheet: Sheet) -> list[Any]:
+    outcome = sheet.reduction.outcome
+    if not outcome.ledger.lines:
+        return []
+    picture = FigureFlowable(waterfall_plot(outcome, sheet.show, sheet.width))
+    return [
+        *part("From KG as inclined to KG of the lightship", picture.height + 16.0),
+        picture,
+        note(
+            "What an item changes depends on what has gone before it; small ones stand together. "
+            "−: taken off, +: added, →: moved."
+        ),
+    ]
 
 
 def _sums(sheet: Sheet) -> list[Any]:
