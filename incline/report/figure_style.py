@@ -8,13 +8,13 @@ from __future__ import annotations
 
 from contextlib import contextmanager
 from dataclasses import dataclass
+from itertools import pairwise
 from typing import TYPE_CHECKING, Any
 
 import matplotlib as mpl
 from matplotlib.figure import Figure
-from reportlab.pdfbase.pdfmetrics import stringWidth
 
-from incline.report.fonts import REGULAR
+from incline.report.figure_text import width_of
 
 if TYPE_CHECKING:
     from collections.abc import Callable, Iterator, Sequence
@@ -150,9 +150,14 @@ _KEY_LINE, _KEY_ROOM, _KEY_SIZE = 9.6, 27.0, 6.5
 
 
 def _columns(names: Sequence[str], width: float) -> int:
-    """How many entries stand side by side in a legend of a figure this wide."""
-    widest = max((stringWidth(n, REGULAR, _KEY_SIZE) for n in names), default=0.0) + _KEY_ROOM
-    return max(1, min(len(names), int(width / widest)))
+    """How many columns of entries a legend of a figure this wide has room for."""
+    wide = [width_of(n, _KEY_SIZE) + _KEY_ROOM for n in names]
+    for many in range(len(wide), 1, -1):
+        high, more = divmod(len(wide), many)  # as matplotlib deals them out
+        ends = [n * high + min(n, more) for n in range(many + 1)]
+        if sum(max(wide[a:b]) for a, b in pairwise(ends)) <= width:
+            return many
+    return 1
 
 
 def legend_height(names: Sequence[str], width: float) -> float:

@@ -6,13 +6,13 @@ from typing import TYPE_CHECKING
 
 from reportlab.pdfbase.pdfmetrics import stringWidth
 
-from incline.report.fonts import BOLD, REGULAR
+from incline.report.fonts import BOLD, REGULAR, register_fonts
 from incline.report.text import clean, elide
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
-__all__ = ["Box", "place", "wrapped"]
+__all__ = ["Box", "place", "widest", "width_of", "wrapped"]
 
 _MOST = 160
 """Most characters of a name in a figure; longer ones stand whole in the tables."""
@@ -21,22 +21,32 @@ Box = tuple[float, float, float, float]
 """Left, bottom, right, top [pt]."""
 
 
+def width_of(text: str, size: float, *, bold: bool = False) -> float:
+    """Width of a line of text [pt]."""
+    register_fonts()
+    return float(stringWidth(text, BOLD if bold else REGULAR, size))
+
+
 def wrapped(text: str, size: float, room: float, *, bold: bool = False) -> str:
     """Text in lines no wider than ``room`` [pt]; a word wider than that is broken."""
-    face = BOLD if bold else REGULAR
     lines = [""]
     for word in elide(clean(text), _MOST).split():
         longer = f"{lines[-1]} {word}".strip()
-        if stringWidth(longer, face, size) <= room:
+        if width_of(longer, size, bold=bold) <= room:
             lines[-1] = longer
             continue
         if lines[-1]:
             lines.append("")
         for letter in word:
-            if lines[-1] and stringWidth(lines[-1] + letter, face, size) > room:
+            if lines[-1] and width_of(lines[-1] + letter, size, bold=bold) > room:
                 lines.append("")
             lines[-1] += letter
     return "\n".join(lines)
+
+
+def widest(text: str, size: float) -> float:
+    """Width of the longest line [pt]."""
+    return max(width_of(line, size) for line in text.split("\n"))
 
 
 def place(
@@ -47,7 +57,7 @@ def place(
     All in points. Places around the point are tried, nearest first; when all are taken the one
     that covers least is used.
     """
-    wide, high = stringWidth(text, REGULAR, size), 0.95 * size
+    wide, high = width_of(text, size), 0.95 * size
     best: tuple[float, float, Box] | None = None
     least = float("inf")
     for reach in (4.0, 9.0, 15.0, 22.0):

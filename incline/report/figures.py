@@ -37,7 +37,7 @@ __all__ = ["PANELS_IN_ROW", "common_plot", "device_plots", "named_by", "residual
 
 PANELS_IN_ROW = 3
 _THOUSANDTHS = 1000.0
-_LABEL = 60
+_LABEL = 110
 """Most characters of a device's name in a legend."""
 _TITLE, _TITLE_LINE = 7.5, 9.2
 """Size of a panel's title and height of a line of it [pt]."""
@@ -46,8 +46,8 @@ _TITLE, _TITLE_LINE = 7.5, 9.2
 def named_by(heel: HeelFit, found: Diagnosis | None) -> frozenset[int]:
     """Indices of the points that the leading findings name.
 
-    A finding names its shift, its device, or both; one of the whole ship without a shift names the
-    points that its pattern moves by more than half of what it moves any.
+    A finding names the points of its shift, of its device there if it has one; without a shift,
+    those that its pattern moves by more than half of what it moves any.
     """
     named: set[int] = set()
     kept = [i for i, p in enumerate(heel.points) if not p.excluded]
@@ -55,13 +55,10 @@ def named_by(heel: HeelFit, found: Diagnosis | None) -> frozenset[int]:
     for finding in () if found is None else found.findings:
         if finding.rank:
             continue
-        if finding.shift is not None or finding.device is not None:
-            named |= {
-                i
-                for i in kept
-                if finding.shift in (None, heel.points[i].shift)
-                and finding.device in (None, heel.points[i].device)
-            }
+        if finding.shift is not None:
+            at = finding.shift
+            some = [i for i in kept if heel.points[i].shift == at]
+            named |= {i for i in some if finding.device in (None, heel.points[i].device)}
         elif finding.expected:
             moved = [abs(e - b) for e, b in zip(finding.expected, base, strict=True)]
             named |= {i for i, m in zip(kept, moved, strict=True) if m > 0.5 * max(moved)}
@@ -278,8 +275,12 @@ def _crossed(axes: Axes, x: Sequence[float], y: Sequence[float], look: Mark) -> 
 
 
 def _origin(axes: Axes) -> None:
-    axes.axhline(0.0, color=GREY, linewidth=0.5, zorder=0)
-    axes.axvline(0.0, color=GREY, linewidth=0.5, zorder=0)
+    """Lines through zero, where zero lies within the points."""
+    (low, high), (left, right) = axes.get_ylim(), axes.get_xlim()
+    if low < 0.0 < high:
+        axes.axhline(0.0, color=GREY, linewidth=0.5, zorder=0.5)
+    if left < 0.0 < right:
+        axes.axvline(0.0, color=GREY, linewidth=0.5, zorder=0.5)
 
 
 def _span(points: Sequence[HeelPoint]) -> tuple[float, float]:

@@ -33,7 +33,7 @@ __all__ = ["finding_plot"]
 _THOUSANDTHS = 1000.0
 _PATTERN = "0.6"
 """Grey of the pattern, drawn thick under the readings."""
-_AS_FOUND, _NAME = "as the finding has it", 60
+_AS_FOUND, _NAME = "as the finding has it", 110
 """Its name in the legend; most characters of a device's name there."""
 _LETTER = 3.9
 """Width of a letter of an axis [pt], on average."""

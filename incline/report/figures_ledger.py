@@ -9,7 +9,7 @@ from itertools import accumulate, pairwise
 from typing import TYPE_CHECKING
 
 from incline.report.figure_style import GREY, INK, PALE, Plot, add_panel, legend, legend_height
-from incline.report.figure_text import wrapped
+from incline.report.figure_text import widest, wrapped
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -24,10 +24,11 @@ __all__ = ["Rung", "rungs_of", "waterfall_plot"]
 
 _MOST = 14
 """Most items shown by themselves; the others stand together by kind."""
-_LEFT, _RIGHT, _SIZE = 188.0, 52.0, 6.5
-"""Room for names and for changes beside the bars, and their size [pt]."""
+_LEFT, _RIGHT, _SIZE = 200.0, 52.0, 6.5
+"""Most room for names, room for changes beside the bars, and their size [pt]."""
 _ROW, _LINE = 12.5, 7.8
 """Height of a row and of each further line of its name [pt]."""
+_START, _END = "KG as inclined", "KG of lightship"
 _RAISES, _LOWERS = "raises KG", "lowers KG"
 _ORDER = (
     ("test weights", "deduct", "test weights off"),
@@ -100,7 +101,7 @@ def _change(line: LedgerLine, vcg: float, weight: float) -> float:
 def waterfall_plot(outcome: Outcome, show: Show, width: float) -> Plot:
     """KG as inclined, the change by each item or kind of items, KG of the lightship."""
     rungs = rungs_of(outcome)
-    names = [wrapped(r.name, _SIZE, _LEFT - 10.0) for r in rungs]
+    names = [wrapped(r.name, _SIZE, _LEFT - 12.0) for r in rungs]
     heights = [_ROW, *(_ROW + _LINE * n.count("\n") for n in names), _ROW]
     keys = legend_height([_RAISES, _LOWERS], width)
     paint = partial(_paint, rungs, names, heights, show, outcome.as_inclined.vcg)
@@ -119,7 +120,9 @@ def _paint(
     scale = show.scale("length")
     tops = [0.0, *accumulate(heights)]
     middles = [(a + b) / 2.0 for a, b in pairwise(tops)]
-    axes = add_panel(figure, _LEFT, 28.0, width - _LEFT - _RIGHT, tops[-1])
+    left = 12.0 + max(widest(n, _SIZE) for n in (*names, _START, _END))
+    axes = add_panel(figure, left, 28.0, width - left - _RIGHT, tops[-1])
+    axes.use_sticky_edges = False
     end = rungs[-1].after if rungs else start
     for middle, rung in zip(middles[1:-1], rungs, strict=True):
         _bar(axes, middle, rung, scale)
@@ -140,7 +143,7 @@ def _paint(
     levels = [start, *(r.after for r in rungs)]
     for level, (upper, lower) in zip(levels, pairwise(middles), strict=True):
         axes.plot([level / scale] * 2, [upper, lower], color=GREY, linewidth=0.5, zorder=1)
-    axes.set_yticks(middles, ["KG as inclined", *names, "KG of lightship"])
+    axes.set_yticks(middles, [_START, *names, _END])
     axes.set_ylim(tops[-1], 0.0)
     axes.margins(x=0.05)
     axes.grid(visible=False, axis="y")

@@ -24,6 +24,8 @@ if TYPE_CHECKING:
 __all__ = ["numbered_tanks", "plan_plot", "weight_labels"]
 
 _LEFT, _FOOT, _EDGE = 40.0, 27.0, 8.0
+_GAP = 6.0
+"""Room between the label below the plan and the title of what follows [pt]."""
 _TALL, _LOW = 190.0, 80.0
 """Height of the plan at most and at least [pt]."""
 _ROW, _HEAD = 84.0, 16.0
@@ -33,6 +35,8 @@ _SLOT = 8.0
 _SIZE = 6.0
 _SHORT = 3
 """Most characters of a name that is written into the plan."""
+_CLEAR = {"boxstyle": "square,pad=0.05", "facecolor": "white", "edgecolor": "none"}
+"""White behind a number, so that no line runs through it."""
 _KEYS = ("test weight at its start", "later place", "slack tank", "full tank", "half beam")
 
 
@@ -66,15 +70,18 @@ def plan_plot(trial: Trial, show: Show, width: float) -> Plot:
     rows = tuple(tuple(numbers[i : i + count]) for i in range(0, len(numbers), count))
     found = _Plan(high, high / natural, rows)
     total = high + _FOOT + _HEAD + legend_height(_KEYS, width)
-    total += sum(_ROW + _HEAD for _ in rows) + (_FOOT - 8.0 if rows else 0.0)
-    return Plot(width, total, partial(_paint, trial, show, found))
+    return Plot(width, total + _below(rows), partial(_paint, trial, show, found))
+
+
+def _below(rows: Sequence[Sequence[int]]) -> float:
+    """Height of all that stands below the plan [pt]."""
+    return _FOOT + _GAP + len(rows) * (_ROW + _HEAD) if rows else 0.0
 
 
 def _paint(trial: Trial, show: Show, found: _Plan, figure: Figure) -> None:
     width = 72.0 * float(figure.get_size_inches()[0])
     room = width - _LEFT - _EDGE
-    below = sum(_ROW + _HEAD for _ in found.rows) + (_FOOT - 8.0 if found.rows else 0.0)
-    axes = add_panel(figure, _LEFT, below + _FOOT, room, found.high)
+    axes = add_panel(figure, _LEFT, _below(found.rows) + _FOOT, room, found.high)
     _hull(axes, trial, show, found)
     taken: list[Box] = []
     _weights(axes, trial, show, taken)
@@ -176,7 +183,7 @@ def _write(axes: Axes, show: Show, text: str, at: tuple[float, float], taken: li
     left, base, covers = place(_points(axes, show, *at), text, _SIZE, taken, inside)
     axes.annotate(
         text, (0.0, 0.0), xycoords="axes fraction", xytext=(left, base),
-        textcoords="offset points", fontsize=_SIZE, zorder=4,
+        textcoords="offset points", fontsize=_SIZE, zorder=4, bbox=_CLEAR,
     )  # fmt: skip
     taken.append(covers)
 

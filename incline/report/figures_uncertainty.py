@@ -11,7 +11,7 @@ from matplotlib.patches import Patch
 
 from incline.defaults import LABEL
 from incline.report.figure_style import INK, Plot, add_panel, legend, legend_height
-from incline.report.figure_text import wrapped
+from incline.report.figure_text import widest, wrapped
 from incline.sources import SEEN, STATED
 
 if TYPE_CHECKING:
@@ -26,7 +26,7 @@ if TYPE_CHECKING:
 __all__ = ["distribution_plot", "share_plot"]
 
 _LEFT, _SIZE, _BAR, _LINE = 200.0, 6.5, 11.5, 7.8
-"""Room for the names beside the bars, their size, and the height of a bar and of a line [pt]."""
+"""Most room for names beside the bars, their size, height of a bar and of a line [pt]."""
 _SHADES = {"stated": "0.0", "assumed": "1.0", "seen": "0.72", "estimated": "0.42", "rest": "0.9"}
 _WORDS = {
     "stated": "stated by the trial",
@@ -46,7 +46,7 @@ def share_plot(budget: Budget, shown: Sequence[BudgetLine], width: float) -> Plo
     if rest:
         share = sum(x.share for x in budget.lines) - sum(x.share for x in shown)
         bars.append((f"{rest} further input{'s' if rest > 1 else ''}", 100.0 * share, "rest"))
-    names = [wrapped(name, _SIZE, _LEFT - 8.0) for name, _, _ in bars]
+    names = [wrapped(name, _SIZE, _LEFT - 12.0) for name, _, _ in bars]
     bases = list(dict.fromkeys(basis for _, _, basis in bars if basis != "rest"))
     keys = legend_height([_WORDS[b] for b in bases], width)
     high = sum(_BAR + _LINE * n.count("\n") for n in names)
@@ -64,7 +64,8 @@ def _shares(
     heights = [_BAR + _LINE * n.count("\n") for n in names]
     tops = [0.0, *accumulate(heights)]
     middles = [(a + b) / 2.0 for a, b in pairwise(tops)]
-    axes = add_panel(figure, _LEFT, 28.0, width - _LEFT - 20.0, tops[-1] + 2.0)
+    left = 12.0 + max(widest(n, _SIZE) for n in names)
+    axes = add_panel(figure, left, 28.0, width - left - 20.0, tops[-1] + 2.0)
     for middle, (_, share, basis) in zip(middles, bars, strict=True):
         shade = _SHADES["assumed" if basis == "own" else basis]
         dash = (0, (1.5, 1.0)) if basis == "own" else "solid"

@@ -106,7 +106,7 @@ def _waterline(sheet: Sheet) -> list[Any]:
     flow = FigureFlowable(figure)
     return [
         facts(pairs, sheet.width, abreast=2),
-        *part("Profile of the measured waterline", flow.height + 26),
+        *part("Profile of the measured waterline", flow.height + 30),
         flow,
     ]
 
@@ -207,14 +207,14 @@ def _displacement(sheet: Sheet) -> list[Any]:
     """What the calculation finds; its steps stand in a section of their own."""
     trial, show, state = sheet.reduction.trial, sheet.show, sheet.reduction.outcome.as_inclined
     allowance = trial.settings.allowance
-    extreme = "none: the volume is extreme"
+    extreme = "in the volume"
     share = extreme if allowance is None else f"{show.plain(100.0 * allowance, 3)} %"
     lcb = NOT_DETERMINED if state.lcb is None else show.full(state.lcb, "length")
     pairs = (
-        ("Volume of displacement", show.full(state.volume, "volume", 3)),
-        ("Allowance, shell and appendages", share),
+        ("Volume", show.full(state.volume, "volume", 3)),
+        ("Shell and appendages", share),
         ("Displacement", show.full(state.displacement, "mass")),
-        ("LCB, at the trimmed waterline", lcb),
+        ("LCB as trimmed", lcb),
         ("KB", show.full(state.kb, "length")),
         ("BM", show.full(state.bmt, "length")),
         ("KM", show.full(state.kmt, "length")),

@@ -36,12 +36,12 @@ def heel_fit(sheet: Sheet) -> list[Any]:
         *part("Each device by itself", 80.0),
         *_devices(sheet),
         *rolling_period(sheet),
-        *part("Tangent against moment", common.height + 16),
+        *part("Tangent against moment", common.height + 24.0),
         common,
-        *part("Tangent against moment, device by device", rows[0].height + 30 if rows else 0.0),
+        *part("Tangent against moment, device by device", rows[0].height + 40 if rows else 0.0),
         note("Solid: the line of the device alone. Dashed grey: the common slope."),
         *rows,
-        *part("Residuals", residuals.height + 16),
+        *part("Residuals", residuals.height + 24.0),
         residuals,
         *part("Points of the fit"),
         _points(sheet),
@@ -73,7 +73,7 @@ def _common(sheet: Sheet) -> Any:  # noqa: ANN401 - untyped library
         ("standard deviation of residuals", f"{spread}, as tangents"),
         ("greatest heel", ", ".join(f"{show.degrees(h)}° to {side}" for h, side in sides)),
     )
-    return facts(pairs, sheet.width, abreast=2)
+    return facts(pairs, sheet.width)
 
 
 def _devices(sheet: Sheet) -> list[Any]:

@@ -33,7 +33,7 @@ def _waterfall(sheet: Sheet) -> list[Any]:
         return []
     picture = FigureFlowable(waterfall_plot(outcome, sheet.show, sheet.width))
     return [
-        *part("From KG as inclined to KG of the lightship", picture.height + 16.0),
+        *part("From KG as inclined to KG of the lightship", picture.height + 24.0),
         picture,
         note(
             "What an item changes depends on what has gone before it; small ones stand together. "

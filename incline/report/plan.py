@@ -26,14 +26,14 @@ def plan(sheet: Sheet) -> list[Any]:
     if any(label != name for name, label in labels.items()):
         said.append("Test weights: " + "; ".join(f"{v} {k}" for k, v in labels.items()) + ".")
     if tanks:
-        said.append("Tanks: " + "; ".join(f"{n} {t.name} ({t.state})" for n, t in tanks) + ".")
+        said.append("Tanks: " + "; ".join(f"{n} {t.name}" for n, t in tanks) + ".")
     empty = [t.name for t in trial.tanks if t.centre is None]
     if empty:
         said.append(f"Empty: {'; '.join(empty)}.")
     devices = "; ".join(f"{d.id}: {d.place or NOT_RECORDED}" for d in trial.devices)
     said.append(f"Devices, whose places are recorded in words: {devices}.")
     return [
-        *part("Plan of test weights and tanks", picture.height + 16.0),
+        *part("Plan of test weights and tanks", picture.height + 24.0),
         picture,
         note(" ".join(said)),
     ]
