@@ -4,10 +4,11 @@ from __future__ import annotations
 
 import datetime
 import math
+import os
 import sys
 from enum import StrEnum
 from pathlib import Path
-from typing import TYPE_CHECKING, Annotated, TypeAlias
+from typing import TYPE_CHECKING, Annotated, Literal, TypeAlias
 
 import typer
 
@@ -15,6 +16,7 @@ from incline.errors import FieldDataError, InclineError
 
 if TYPE_CHECKING:
     from incline.comparison import Situation
+    from incline.record import Trial
 
 __all__ = ["app", "main"]
 
@@ -28,7 +30,7 @@ app = typer.Typer(
     context_settings={"help_option_names": ["-h", "--help"]},
 )
 
-Trial = Annotated[Path, typer.Argument(help="Folder with the records of one trial.")]
+Folder = Annotated[Path, typer.Argument(help="Folder with the records of one trial.")]
 Draws: TypeAlias = Annotated[
     int | None,
     typer.Option(
@@ -45,8 +47,25 @@ class Units(StrEnum):
     us = "us"
 
 
+class Shown(StrEnum):
+    """Units of a report."""
+
+    metric = "metric"
+    us = "us"
+    both = "both"
+
+
+class Paper(StrEnum):
+    """Paper of a report."""
+
+    a4 = "a4"
+    letter = "letter"
+
+
 def main() -> None:
     """Run the command line; user errors become lines on standard error and exit status 1."""
+    # The sums are small: threads of the linear algebra wait for one another longer than they work.
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
     for stream in (sys.stdout, sys.stderr):
         if hasattr(stream, "reconfigure"):
             stream.reconfigure(errors="backslashreplace")
@@ -107,7 +126,7 @@ def start(
 
 
 @app.command()
-def check(trial: Trial) -> None:
+def check(trial: Folder) -> None:
     """Read a trial, say all that is wrong with it, and hold it against the published criteria.
 
     Exit status 3 when a criterion is not met. Example: incline check my-vessel
@@ -129,7 +148,7 @@ def check(trial: Trial) -> None:
 
 @app.command()
 def reduce(
-    trial: Trial,
+    trial: Folder,
     json: Annotated[
         str | None,
         typer.Option(metavar="FILE|-", help="Write the result as JSON (- : to the screen)."),
@@ -168,9 +187,20 @@ def reduce(
 
 @app.command()
 def report(
-    trial: Trial,
+    trial: Folder,
     output: Annotated[
         Path | None, typer.Option("--output", "-o", metavar="FILE", help="Name of the PDF.")
+    ] = None,
+    units: Annotated[
+        Shown | None,
+        typer.Option(help="Units, in place of the trial's; both: metric with US beside it."),
+    ] = None,
+    paper: Annotated[
+        Paper | None, typer.Option(help="Paper, in place of the one that goes with the units.")
+    ] = None,
+    tables: Annotated[
+        Path | None,
+        typer.Option(metavar="DIR", help="Also write every table as CSV, and the JSON, there."),
     ] = None,
     draws: Draws = None,
     force: Force = False,
@@ -179,20 +209,43 @@ def report(
 
     Example: incline report my-vessel -o my-vessel.pdf
     """
-    from incline import __version__, read_trial, write_pdf
+    from incline import __version__, read_trial, to_json, write_pdf
     from incline import reduce as work_out
-    from incline.files import file_stem, refuse_existing
+    from incline.files import file_stem, make_folder, refuse_existing, refuse_filled, write_whole
     from incline.progress import Step
 
-    record = read_trial(trial)
+    record = _in_units(read_trial(trial), units)
     stem = file_stem(record.vessel.name, record.occasion.date.isoformat())
     target = output or Path(f"{stem}.pdf")
     refuse_existing(target, force=force)
+    if tables is not None:
+        refuse_filled(tables, force=force)
     with Step("Reducing the trial") as step:
         result = work_out(record, monte_carlo=True, draws=draws, progress=step)
     with Step("Writing the report"):
-        write_pdf(result, target, _report_date(), __version__)
+        from incline.report import Options
+
+        if tables is not None:
+            make_folder(tables)
+            write_whole(tables / "result.json", to_json(result).encode())
+        size: Literal["A4", "Letter"] | None = None
+        if paper is not None:
+            size = "A4" if paper == Paper.a4 else "Letter"
+        options = Options(beside=units == Shown.both, paper=size)
+        written = write_pdf(result, target, _report_date(), __version__, options, tables)
     print(f"Report written to {target}")
+    if tables is not None:
+        print(f"{len(written) - 1} tables and result.json written to {tables}")
+
+
+def _in_units(record: Trial, units: Shown | None) -> Trial:
+    """The trial asked to be shown in other units; with both, metric leads."""
+    from dataclasses import replace
+
+    if units is None:
+        return record
+    name: Literal["metric", "us"] = "us" if units == Shown.us else "metric"
+    return replace(record, settings=replace(record.settings, units=name))
 
 
 @app.command()
@@ -284,8 +337,6 @@ def _masses(texts: list[str] | None, situation: Situation | None) -> list[float]
 
 def _report_date() -> datetime.date:
     """Today, or the day that SOURCE_DATE_EPOCH names for a reproducible report."""
-    import os
-
     epoch = os.environ.get("SOURCE_DATE_EPOCH", "")
     if epoch.isdigit():
         return datetime.datetime.fromtimestamp(int(epoch), tz=datetime.UTC).date()

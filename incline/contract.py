@@ -11,6 +11,7 @@ from dataclasses import asdict
 from typing import TYPE_CHECKING, Any
 
 import incline
+from incline.result import FORMAT
 
 if TYPE_CHECKING:
     from incline.result import (
@@ -25,8 +26,6 @@ if TYPE_CHECKING:
     )
 
 __all__ = ["FORMAT", "to_dict", "to_json"]
-
-FORMAT = 1
 
 
 def to_json(reduction: Reduction) -> str:

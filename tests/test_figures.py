@@ -18,9 +18,9 @@ from reportlab.pdfgen.canvas import Canvas
 from incline import read_trial, reduce
 from incline.diagnosis.search import times_of
 from incline.report.budgets import main_lines
-from incline.report.canvas_backend import CanvasRenderer, FigureFlowable
+from incline.report.canvas_backend import CanvasRenderer
 from incline.report.document import Sheet
-from incline.report.figure_style import Plot, drawing_style, mark
+from incline.report.figure_style import drawing_style, mark
 from incline.report.figure_text import place, wrapped
 from incline.report.figures import common_plot, device_plots, named_by, residual_plot
 from incline.report.figures_findings import finding_plot
@@ -213,18 +213,6 @@ def test_findings_ring_the_points_that_their_pattern_moves():
     assert held <= named
     assert len(named) < len(heel.points)
     assert named_by(reduction("workboat-metric").outcome.heel, None) == frozenset()
-
-
-def test_a_pass_that_counts_pages_draws_no_figure():
-    drawn = []
-    plot = Plot(100.0, 50.0, drawn.append)
-    canvas = Canvas(BytesIO())
-    canvas.counting = True
-    FigureFlowable(plot).drawOn(canvas, 0.0, 0.0)
-    assert drawn == []
-    canvas.counting = False
-    FigureFlowable(plot).drawOn(canvas, 0.0, 0.0)
-    assert len(drawn) == 1
 
 
 @pytest.mark.parametrize("bold", [False, True])

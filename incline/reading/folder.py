@@ -97,7 +97,7 @@ def read_trial(folder: str | os.PathLike[str]) -> Trial:
         raise FieldDataError([Defect(where, "file-missing", found, "the folder of a trial")])
     files = _read_files(path, collector)
     remarks = _strangers(path, files, collector)
-    trial = _Reader(files, collector).trial(str(path), remarks)
+    trial = _Reader(files, collector, path).trial(str(path), remarks)
     if collector.defects:
         raise FieldDataError(folded(collector.defects))
     return trial
@@ -153,10 +153,10 @@ def _digest(files: Mapping[str, bytes]) -> str:
 class _Reader:
     """Reads the tables of one trial, each with what it needs of the others."""
 
-    def __init__(self, files: dict[str, bytes], collector: Collector) -> None:
+    def __init__(self, files: dict[str, bytes], collector: Collector, path: Path) -> None:
         self.files = files
         self.collector = collector
-        self.head: Head = read_head(files.get("trial.toml"), collector)
+        self.head: Head = read_head(files.get("trial.toml"), collector, path)
         self.sheets = {name: self._sheet(name) for name in _COLUMNS}
 
     def _sheet(self, name: str) -> Sheet | None:
@@ -209,6 +209,8 @@ class _Reader:
             rolls=self._rolls(),
             environment=head.environment,
             hydrometer=head.hydrometer,
+            condition=head.condition,
+            papers=head.papers,
             remarks=(
                 *remarks,
                 *by_moment,

@@ -9,19 +9,37 @@ from incline.errors import Where
 from incline.reading.aboard import read_device, read_person
 from incline.reading.assumptions import read_assumed, read_correlations
 from incline.reading.collect import BAD, Sign, quoted
-from incline.reading.occasion import read_environment, read_hydrometer, read_occasion
+from incline.reading.occasion import (
+    read_condition,
+    read_environment,
+    read_hydrometer,
+    read_occasion,
+)
 from incline.reading.overrides import read_overrides
+from incline.reading.papers import SECTIONS as PAPERS
+from incline.reading.papers import read_papers
 from incline.reading.plausible import WATER, Hull, check, check_vessel, hull_of
-from incline.reading.rolls import read_condition
+from incline.reading.rolls import read_condition as read_roll_condition
 from incline.reading.tomlfile import FILE, Document, shown
 from incline.reading.uncertainty import of_key, present
-from incline.record import Device, Environment, Occasion, Person, Settings, Stated, Vessel
+from incline.record import (
+    Condition,
+    Device,
+    Environment,
+    Occasion,
+    Person,
+    Settings,
+    Stated,
+    Vessel,
+)
 from incline.units import DENSITY, FRACTION, LENGTH
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
+    from pathlib import Path
     from typing import Literal
 
+    from incline.papers import Papers
     from incline.reading.collect import Collector
     from incline.reading.tomlfile import Section
     from incline.record import Statements
@@ -32,7 +50,7 @@ _BASE, _KEEL = "baseline", "underside of keel"
 _SECTIONS = (
     "vessel", "test", "axes", "output", "rules", "method", "drafts", "hydrostatics", "density",
     "devices", "people", "limits", "uncertainty", "correlations", "rolling", "evidence",
-    "environment", "instruments", "overrides",
+    "environment", "instruments", "overrides", "condition", *PAPERS,
 )  # fmt: skip
 
 
@@ -68,12 +86,14 @@ class Head:
     people: tuple[Person, ...]
     environment: Environment
     hydrometer: tuple[float, float] | None
+    condition: Condition
+    papers: Papers
     frame: Frame
     complete: bool
 
 
-def read_head(data: bytes | None, collector: Collector) -> Head:
-    """Read ``trial.toml``; ``None`` when there is no such file, which is the caller's defect."""
+def read_head(data: bytes | None, collector: Collector, folder: Path) -> Head:
+    """Read ``trial.toml`` in ``folder``; ``None`` when there is none, which the caller tells."""
     document = Document(data, collector)
     vessel, sound = _vessel(document.section("vessel"))
     settings, frame = _choices(document, vessel, sound=sound)
@@ -89,6 +109,8 @@ def read_head(data: bytes | None, collector: Collector) -> Head:
         occasion=read_occasion(document.section("test")),
         environment=read_environment(document.section("environment")),
         hydrometer=read_hydrometer(document.section("instruments")),
+        condition=read_condition(document.section("condition")),
+        papers=read_papers(document, folder, vessel.lpp),
         settings=settings,
         devices=devices,
         people=people,
@@ -120,6 +142,8 @@ def _vessel(section: Section) -> tuple[Vessel, bool]:
         kind=section.text("kind"),
         flag=section.text("flag"),
         builder=section.text("builder"),
+        yard_number=section.text("yard_number"),
+        port=section.text("port"),
     )
     section.close()
     return vessel, check_vessel(section, vessel)
@@ -141,6 +165,7 @@ def _choices(document: Document, vessel: Vessel, *, sound: bool) -> tuple[Settin
         x_origin=x_origin,
         units=output.choice("units", ("metric", "us")),
         rule_set=rules.text("set"),
+        rule_edition=rules.text("edition"),
         method=method.choice("heel", ("straight-line",), "straight-line"),
         allowance=_allowance(table),
         keel_thickness=keel if marks_from == _KEEL else 0.0,
@@ -148,7 +173,7 @@ def _choices(document: Document, vessel: Vessel, *, sound: bool) -> tuple[Settin
         kg_limit=limits.maybe("kg", LENGTH, Sign.POSITIVE),
         assumed=read_assumed(document.section("uncertainty")),
         correlations=read_correlations(document.sections("correlations")),
-        roll_condition=read_condition(rolling),
+        roll_condition=read_roll_condition(rolling),
         overrides=read_overrides(document.sections("overrides")),
         evidence={key: evidence.text(key) for key in ("liquids", "lines", "weather", "drift")},
     )

@@ -37,6 +37,7 @@ TANK_COLUMNS = (
     Column("shape"),
     Column("depth", LENGTH, sign=Sign.POSITIVE),
     Column("type"),
+    Column("sounding"),
 )
 _MASS_AGREES = 0.005
 _FSM_AGREES = 0.01
@@ -76,6 +77,7 @@ def read_tanks(sheet: Sheet, frame: Frame) -> tuple[tuple[Tank, ...], list[str]]
                 length=row.maybe("length"),
                 breadth=row.maybe("breadth"),
                 type=row.choice("type", types, "") or "",
+                sounding=row.text("sounding"),
                 stated=_stated(row, name, state, {"mass": mass, "fsm": fsm}, remarks),
             )
         )

@@ -42,6 +42,8 @@ SHIFT_COLUMNS = (
     Column("x", LENGTH, stated=True),
     Column("z", LENGTH, stated=True),
     Column("moment", MOMENT, transverse=True, stated=True),
+    Column("weather"),
+    Column("tide"),
 )
 _NEAR = 1e-9
 """Moments closer than this share of the largest are one moment: rounding of the arithmetic."""
@@ -121,6 +123,8 @@ def read_shifts(sheet: Sheet, frame: Frame) -> ShiftTable:
                 moment=rows[0].need("moment") if table.by_moment else None,
                 where=rows[0].where(),
                 stated=of_row(rows[0], "moment") if table.by_moment else {},
+                weather=_words(rows, "weather"),
+                tide=_words(rows, "tide"),
             )
         )
     return table
@@ -165,6 +169,11 @@ def _time(rows: list[Row], *, timed: bool) -> str:
         elif timed and row is rows[0]:
             row.missing("time", expected)
     return times[0] if times else ""
+
+
+def _words(rows: list[Row], column: str) -> str:
+    """What the rows of a shift say in a column of text, each thing once."""
+    return "; ".join(dict.fromkeys(filter(None, (row.text(column) for row in rows))))
 
 
 def _moves(rows: list[Row], frame: Frame) -> tuple[Move, ...]:

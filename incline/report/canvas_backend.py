@@ -159,10 +159,7 @@ def _face(prop: FontProperties) -> str:
 
 
 class FigureFlowable(Flowable):  # type: ignore[misc]
-    """A matplotlib figure (72 dots per inch), or a plot still to be drawn, in the flow of the page.
-
-    A canvas that only counts pages (``counting`` true) is spared the drawing.
-    """
+    """A matplotlib figure (72 dots per inch), or a plot to be drawn, in the flow of the page."""
 
     def __init__(self, figure: Figure | Plot, space_after: float = 6.0) -> None:
         super().__init__()
@@ -177,8 +174,6 @@ class FigureFlowable(Flowable):  # type: ignore[misc]
 
     def draw(self) -> None:
         """Draw on the canvas that the page has set."""
-        if getattr(self.canv, "counting", False):
-            return
         figure = self.figure.figure() if isinstance(self.figure, Plot) else self.figure
         with drawing_style():
             figure.draw(CanvasRenderer(self.canv, self.width, self.height))

@@ -95,10 +95,10 @@ def _waterline(sheet: Sheet) -> list[Any]:
         bend = show.full(line.deflection, "reading")
         bend += " (sag)" if line.deflection > 0.0 else " (hog)" if line.deflection < 0.0 else ""
     pairs = (
-        ("Draft at AP", show.full(line.draft_ap, "length")),
-        ("Draft amidships", show.full(line.draft_mid, "length")),
-        ("Draft at FP", show.full(line.draft_fp, "length")),
-        ("Trim, + by the stern", show.full(line.trim, "length")),
+        ("Draft at AP", sheet.full(line.draft_ap, "length")),
+        ("Draft amidships", sheet.full(line.draft_mid, "length")),
+        ("Draft at FP", sheet.full(line.draft_fp, "length")),
+        ("Trim, + by the stern", sheet.full(line.trim, "length")),
         ("Deflection", bend),
         ("List from the drafts", lean),
     )
@@ -209,14 +209,14 @@ def _displacement(sheet: Sheet) -> list[Any]:
     allowance = trial.settings.allowance
     extreme = "in the volume"
     share = extreme if allowance is None else f"{show.plain(100.0 * allowance, 3)} %"
-    lcb = NOT_DETERMINED if state.lcb is None else show.full(state.lcb, "length")
+    lcb = NOT_DETERMINED if state.lcb is None else sheet.full(state.lcb, "length")
     pairs = (
-        ("Volume", show.full(state.volume, "volume", 3)),
+        ("Volume", sheet.full(state.volume, "volume", 3)),
         ("Shell and appendages", share),
-        ("Displacement", show.full(state.displacement, "mass")),
+        ("Displacement", sheet.full(state.displacement, "mass")),
         ("LCB as trimmed", lcb),
-        ("KB", show.full(state.kb, "length")),
-        ("BM", show.full(state.bmt, "length")),
-        ("KM", show.full(state.kmt, "length")),
+        ("KB", sheet.full(state.kb, "length")),
+        ("BM", sheet.full(state.bmt, "length")),
+        ("KM", sheet.full(state.kmt, "length")),
     )
     return [facts(pairs, sheet.width, abreast=2)]

@@ -9,6 +9,8 @@ from incline.report.show import MISSING, NOT_DETERMINED, NOT_RECORDED
 from incline.report.tables import Column, Row, facts, grid
 
 if TYPE_CHECKING:
+    from collections.abc import Iterable
+
     from incline.record import Tank
 
 __all__ = ["centre_of_gravity"]
@@ -43,7 +45,11 @@ def _tanks(sheet: Sheet) -> list[Any]:
         *(Column(f"{axis} [{length}]", 0.08) for axis in "xyz"),
         Column(f"FSM [{show.unit('moment')}]", 0.10),
     )
-    rows = [Row(tuple(_tank(sheet, t))) for t in trial.tanks]
+    rows: list[Row] = []
+    for tank in trial.tanks:
+        rows.append(Row(tuple(_tank(sheet, tank))))
+        if tank.sounding:
+            rows.append(Row(("", f"Sounding: {tank.sounding}"), "under"))
     free = sheet.reduction.outcome.free_surface
     mass = show.number(sum(t.mass for t in trial.tanks), "mass")
     rows.append(
@@ -51,11 +57,20 @@ def _tanks(sheet: Sheet) -> list[Any]:
             ("total", "", "", "", "", mass, "", "", "", show.number(free.moment, "moment")), "total"
         )
     )
-    bases = [f"{t.name}: {t.fsm_basis}." for t in trial.tanks if t.fsm_basis and t.fsm]
+    bases = [f"{basis}: {', '.join(names)}." for basis, names in _bases(trial.tanks).items()]
     flow: list[Any] = [grid(columns, rows, sheet.width)]
     if bases:
         flow.append(note("Free-surface moments. " + " ".join(bases)))
     return flow
+
+
+def _bases(tanks: Iterable[Tank]) -> dict[str, list[str]]:
+    """How free-surface moments were found, with the tanks of each way."""
+    found: dict[str, list[str]] = {}
+    for tank in tanks:
+        if tank.fsm_basis and tank.fsm:
+            found.setdefault(tank.fsm_basis, []).append(tank.name)
+    return found
 
 
 def _tank(sheet: Sheet, tank: Tank) -> list[str]:
@@ -76,11 +91,11 @@ def _tank(sheet: Sheet, tank: Tank) -> list[str]:
 
 
 def _found(sheet: Sheet) -> list[tuple[str, str]]:
-    outcome, show = sheet.reduction.outcome, sheet.show
+    outcome = sheet.reduction.outcome
     state, heel, free = outcome.as_inclined, outcome.heel, outcome.free_surface
 
     def known(value: float | None, decimals: int) -> str:
-        return NOT_DETERMINED if value is None else show.full(value, "length", decimals)
+        return NOT_DETERMINED if value is None else sheet.full(value, "length", decimals)
 
     return [
         ("GM fluid, as measured", known(heel.gm_fluid, 3)),

@@ -63,7 +63,7 @@ def _common(sheet: Sheet) -> Any:  # noqa: ANN401 - untyped library
     spread = MISSING if heel.residual_sd is None else show.plain(heel.residual_sd, 6)
     sides = ((heel.max_heel_port, "port"), (heel.max_heel_starboard, "starboard"))
     pairs = (
-        ("b, slope of tangent on moment", f"{slope} per {unit}"),
+        ("b, common slope of tangent on moment", f"{slope} per {unit}"),
         ("standard error of b, regression alone", f"{_per_moment(sheet, heel.u_slope)} per {unit}"),
         ("1 / b, moment for unit tangent", show.full(1.0 / heel.slope, "moment")),
         ("GM fluid = 1 / (b Δ)", show.full(heel.gm_fluid, "length")),

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import TYPE_CHECKING, Any
 
 from incline.report.canvas_backend import FigureFlowable
@@ -15,16 +16,35 @@ from incline.report.tables import Column, grid
 if TYPE_CHECKING:
     from collections.abc import Iterable
 
+    from incline.report.steps import Board
     from incline.result import Outcome
 
 __all__ = ["all_counted", "to_lightship"]
 
+_NAMES: dict[str, Kind] = {
+    "mass": "mass", "x": "length", "y": "length", "z": "length",
+    "mass × x": "moment", "mass × y": "moment", "mass × z": "moment",
+}  # fmt: skip
+"""Headings of the ledger after the item, and their kinds."""
+
 
 def to_lightship(sheet: Sheet) -> list[Any]:
     """All lines with masses, centres and moments; totals; self-check."""
-    found = calculation_of(sheet)
-    table = board_table(found.ledger, found.digits, sheet.width)
+    found, other = calculation_of(sheet), None
+    if sheet.beside is not None:
+        also = calculation_of(replace(sheet, show=sheet.beside))
+        other = (also.ledger, also.digits)
+    table = board_table(_headed(sheet, found.ledger), found.digits, sheet.width, other)
     return [*table, *_sums(sheet), *_waterfall(sheet), *_bases(sheet)]
+
+
+def _headed(sheet: Sheet, board: Board) -> Board:
+    """The ledger with both units in its headings where both are printed."""
+    heads = [
+        replace(head, markup=f"{name} [{sheet.units(kind)}]")
+        for head, (name, kind) in zip(board.heads[1:], _NAMES.items(), strict=True)
+    ]
+    return replace(board, heads=(board.heads[0], *heads))
 
 
 def _waterfall(sheet: Sheet) -> list[Any]:

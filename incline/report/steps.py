@@ -144,9 +144,9 @@ def _printed(number: int, lay: Lay, digits: Digits) -> Step:
     )
 
 
-@lru_cache(maxsize=1)
+@lru_cache(maxsize=2)
 def calculation_of(sheet: Sheet) -> Calculation:
-    """The calculation of a report, with its digits settled; worked out once a sheet."""
+    """The calculation of a report, with its digits settled; kept for the next who asks."""
     from incline.report.steps_floating import floating_chapters
     from incline.report.steps_gravity import gravity_chapters
     from incline.report.steps_heel import heel_chapters

@@ -3,15 +3,16 @@
 from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
+from xml.sax.saxutils import unescape
 
-from reportlab.platypus import Paragraph, Table
+from reportlab.platypus import Paragraph
 
 from incline.report.arithmetic import Value
 from incline.report.document import Sheet, note, paragraph, part
 from incline.report.fonts import REGULAR
 from incline.report.steps import Board, Calculation, Cell, Lay, Step, Travel, calculation_of
 from incline.report.styles import INK, RULE, STYLES
-from incline.report.tables import SHADE
+from incline.report.tables import SHADE, Listed
 from incline.report.text import markup
 
 if TYPE_CHECKING:
@@ -93,27 +94,30 @@ def _run(steps: Sequence[Step], width: float) -> list[Any]:
     if not steps:
         return []
     rows = [_step_cells(step) for step in steps]
-    return [
-        Table(
-            rows,
-            colWidths=[width * s for s in _SHARES],
-            style=[
-                ("FONT", (0, 0), (-1, -1), REGULAR, 1, 1),
-                ("VALIGN", (0, 0), (-1, -1), "BOTTOM"),
-                ("VALIGN", (0, 0), (0, -1), "TOP"),
-                ("LEFTPADDING", (0, 0), (-1, -1), 2.5),
-                ("RIGHTPADDING", (0, 0), (-1, -1), 2.5),
-                ("TOPPADDING", (0, 0), (-1, -1), 1.8),
-                ("BOTTOMPADDING", (0, 0), (-1, -1), 2.2),
-                ("LINEABOVE", (0, 0), (-1, 0), 0.5, INK),
-                ("LINEBELOW", (0, 0), (-1, -2), 0.25, RULE),
-                ("LINEBELOW", (0, -1), (-1, -1), 0.5, INK),
-            ],
-            hAlign="LEFT",
-            spaceBefore=3,
-            spaceAfter=7,
-        )
-    ]
+    table = Listed(
+        rows,
+        colWidths=[width * s for s in _SHARES],
+        style=[
+            ("FONT", (0, 0), (-1, -1), REGULAR, 1, 1),
+            ("VALIGN", (0, 0), (-1, -1), "BOTTOM"),
+            ("VALIGN", (0, 0), (0, -1), "TOP"),
+            ("LEFTPADDING", (0, 0), (-1, -1), 2.5),
+            ("RIGHTPADDING", (0, 0), (-1, -1), 2.5),
+            ("TOPPADDING", (0, 0), (-1, -1), 1.8),
+            ("BOTTOMPADDING", (0, 0), (-1, -1), 2.2),
+            ("LINEABOVE", (0, 0), (-1, 0), 0.5, INK),
+            ("LINEBELOW", (0, 0), (-1, -2), 0.25, RULE),
+            ("LINEBELOW", (0, -1), (-1, -1), 0.5, INK),
+        ],
+        hAlign="LEFT",
+        spaceBefore=3,
+        spaceAfter=7,
+    )
+    table.titles = ("step", "name", "formula", "numbers put in", "result")
+    table.texts = tuple(
+        (str(s.number), s.name, _words(s.formula), _words(s.put_in), s.result) for s in steps
+    )
+    return [table]
 
 
 def _step_cells(step: Step) -> list[Any]:
@@ -128,38 +132,40 @@ def _step_cells(step: Step) -> list[Any]:
     ]
 
 
+def _words(text: str) -> str:
+    """Markup without its tags; a subscript follows an underscore, as in a formula typed."""
+    plain = text.replace("<sub>", "_").replace("</sub>", "").replace("<br/>", " ")
+    return unescape(plain)
+
+
 def _set(text: str, style: str) -> Paragraph:
     """A paragraph of markup with its subscripts."""
     return Paragraph(text.replace("<sub>", _SUB), STYLES[style])
 
 
-def board_table(board: Board, digits: Digits, width: float) -> list[Any]:
-    """A table of values; a title above it where it has one."""
-    looks: list[tuple[Any, ...]] = []
-    body: list[list[Any]] = []
+def board_table(
+    board: Board, digits: Digits, width: float, other: tuple[Board, Digits] | None = None
+) -> list[Any]:
+    """A table of values; a title above it where it has one.
+
+    ``other`` is the same board in the other units, with its digits: it stands below each number.
+    """
     deepest = [_deepest(board, i, digits) for i in range(len(board.heads))]
-    for i, row in enumerate(board.rows, start=1):
-        bold = i - 1 in board.totals
+    body, looks = [], list(_looks(board))
+    texts: list[tuple[str, ...]] = []
+    for n, row in enumerate(board.rows):
+        cells = [_cell(c, digits, d) for c, d in zip(row, deepest, strict=False)]
+        texts.append(tuple(_words(c) for c in cells))
         if len(row) == 1:
-            cells: list[Any] = [_set(str(row[0]), "head_left")]
-            body.append([*cells, *[""] * (len(board.heads) - 1)])
-            looks += [("SPAN", (0, i), (-1, i)), ("BACKGROUND", (0, i), (-1, i), SHADE)]
+            body.append([_set(cells[0], "head_left"), *[""] * (len(board.heads) - 1)])
             continue
-        if bold:
-            looks.append(("LINEABOVE", (0, i), (-1, i), 0.6, INK))
-            if i > 1:
-                looks.append(("NOSPLIT", (0, i - 1), (-1, i)))
-        kind = "head" if bold else "cell"
-        body.append(
-            [
-                _set(_cell(c, digits, d), f"{kind}_{'left' if h.left else 'right'}")
-                for c, h, d in zip(row, board.heads, deepest, strict=True)
-            ]
-        )
+        beside = None if other is None else _beside(*other, n)
+        if beside:
+            texts.append(tuple(_words(c) for c in beside))
+        body.append(_row(board, cells, beside, bold=n in board.totals))
     heads = [_set(h.markup, "head_left" if h.left else "head_right") for h in board.heads]
     total = sum(h.share for h in board.heads)
-    title = [_set(board.title, "caption")] if board.title else []
-    table = Table(
+    table = Listed(
         [heads, *body],
         colWidths=[width * h.share / total for h in board.heads],
         repeatRows=1,
@@ -169,7 +175,36 @@ def board_table(board: Board, digits: Digits, width: float) -> list[Any]:
         spaceBefore=2,
         spaceAfter=7,
     )
-    return [*title, table]
+    table.titles, table.texts = tuple(_words(h.markup) for h in board.heads), tuple(texts)
+    return [*([_set(board.title, "caption")] if board.title else []), table]
+
+
+def _row(board: Board, cells: list[str], beside: list[str] | None, *, bold: bool) -> list[Any]:
+    """The cells of a row as paragraphs, the other units below each."""
+    row: list[Any] = []
+    for i, (text, head) in enumerate(zip(cells, board.heads, strict=True)):
+        side = "left" if head.left else "right"
+        found = _set(text, f"{'head' if bold else 'cell'}_{side}")
+        more = beside[i] if beside else ""
+        row.append([found, _set(more, f"beside_{side}")] if more else found)
+    return row
+
+
+def _beside(board: Board, digits: Digits, n: int) -> list[str]:
+    """The numbers of a row in the other units; words are not said twice."""
+    return ["" if isinstance(c, str) else _cell(c, digits, 0) for c in board.rows[n]]
+
+
+def _looks(board: Board) -> Iterator[tuple[Any, ...]]:
+    """Headings within the table, and totals set off."""
+    for i, row in enumerate(board.rows, start=1):
+        if len(row) == 1:
+            yield from (("SPAN", (0, i), (-1, i)), ("BACKGROUND", (0, i), (-1, i), SHADE))
+            yield "NOSPLIT", (0, i), (-1, min(i + 1, len(board.rows)))
+        elif i - 1 in board.totals:
+            yield "LINEABOVE", (0, i), (-1, i), 0.6, INK
+            if i > 1:
+                yield "NOSPLIT", (0, i - 1), (-1, i)
 
 
 def _deepest(board: Board, column: int, digits: Digits) -> int:
