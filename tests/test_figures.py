@@ -20,12 +20,14 @@ from incline.diagnosis.search import times_of
 from incline.report.budgets import main_lines
 from incline.report.canvas_backend import CanvasRenderer
 from incline.report.document import Sheet
+from incline.report.figure_points import named_by
 from incline.report.figure_style import drawing_style, mark
 from incline.report.figure_text import place, wrapped
-from incline.report.figures import common_plot, device_plots, named_by, residual_plot
+from incline.report.figures import common_plot, device_plots
 from incline.report.figures_findings import finding_plot
 from incline.report.figures_ledger import rungs_of, waterfall_plot
 from incline.report.figures_plan import plan_plot
+from incline.report.figures_residuals import residual_plot
 from incline.report.figures_uncertainty import share_plot
 from incline.report.figures_waterline import waterline_plot
 from incline.report.fonts import BOLD, REGULAR, register_fonts

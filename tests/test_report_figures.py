@@ -15,7 +15,7 @@ from reportlab.pdfgen.canvas import Canvas
 
 from incline.report.canvas_backend import FigureFlowable
 from incline.report.figure_style import add_panel, blank_figure, drawing_style
-from incline.report.figures import residual_plot
+from incline.report.figures_residuals import residual_plot
 from incline.report.figures_waterline import waterline_plot
 from incline.report.fonts import register_fonts
 from incline.report.show import Show

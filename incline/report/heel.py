@@ -7,7 +7,9 @@ from typing import TYPE_CHECKING, Any
 
 from incline.report.canvas_backend import FigureFlowable
 from incline.report.document import Sheet, note, part
-from incline.report.figures import common_plot, device_plots, named_by, residual_plot
+from incline.report.figure_points import named_by
+from incline.report.figures import common_plot, device_plots
+from incline.report.figures_residuals import residual_plot
 from incline.report.rolling import rolling_period
 from incline.report.show import MISSING, signed
 from incline.report.tables import Column, facts, grid
