@@ -126,10 +126,15 @@ def words(plot):
     return renderer.seen
 
 
+@cache
+def worded(name):
+    """Every figure of a report: its name, its plot, and its words as drawn."""
+    return [(title, plot, words(plot)) for title, plot in plots(reduction(name))]
+
+
 @pytest.mark.parametrize("name", [*NAMES, "made", "many"])
 def test_no_word_runs_off_a_figure_or_into_another(name):
-    for title, plot in plots(reduction(name)):
-        found = words(plot)
+    for title, plot, found in worded(name):
         assert len(found) > 4
         for text, (left, low, right, top) in found:
             assert left >= 0.0, (title, text)
@@ -145,7 +150,7 @@ def test_no_word_runs_off_a_figure_or_into_another(name):
 @pytest.mark.parametrize("name", ["made", "many"])
 def test_no_name_is_cut_short(name):
     found = reduction(name)
-    whole = "".join("".join(text.split()) for _, plot in plots(found) for text, _ in words(plot))
+    whole = "".join("".join(text.split()) for *_, seen in worded(name) for text, _ in seen)
     assert "…" not in whole
     for device in found.outcome.heel.devices:
         assert "".join(device.id.split()) in whole

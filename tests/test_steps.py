@@ -16,9 +16,11 @@ from read_report import printed
 from small_trial import SMALL, changed, write
 
 from incline import read_trial, reduce
+from incline.report import steps_page
 from incline.report.arithmetic import Power, Sum, Value
 from incline.report.digits import Relation, settle
-from incline.report.document import Sheet
+from incline.report.document import Sheet, render
+from incline.report.fonts import register_fonts
 from incline.report.show import Show
 from incline.report.steps import calculation_of
 
@@ -42,8 +44,12 @@ def calculation(name):
     return section(paper(name), "Calculation, step by step", FOLLOWING)
 
 
+def sheet_of(found):
+    return Sheet(found, Show.of(found), datetime.date(2026, 5, 1), "0")
+
+
 def settled(found):
-    return calculation_of(Sheet(found, Show.of(found), datetime.date(2026, 5, 1), "0"))
+    return calculation_of(sheet_of(found))
 
 
 @pytest.mark.parametrize("name", NAMES)
@@ -247,9 +253,11 @@ HARD = {
 @pytest.mark.parametrize("case", HARD)
 def test_steps_follow_for_every_kind_of_record(case, tmp_path):
     found = reduce(read_trial(write(tmp_path / "t", HARD[case])))
-    whole = settled(found)
+    sheet = sheet_of(found)
+    whole = calculation_of(sheet)
     assert whole.sound
-    steps = steps_of(section(lines_of(printed(found)), "Calculation, step by step", FOLLOWING))
+    register_fonts()
+    steps = steps_of(lines_of(render(sheet, steps_page.calculation(sheet))))
     assert len(steps) == len(whole.steps())
     for step in steps:
         if step.put_in is not None and not step.put_in.startswith(("sum over", "with all")):
