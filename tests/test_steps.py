@@ -19,7 +19,7 @@ from incline import read_trial, reduce
 from incline.report import steps_page
 from incline.report.arithmetic import Power, Sum, Value
 from incline.report.digits import Relation, settle
-from incline.report.document import Sheet, render
+from incline.report.document import Sheet, heading, render
 from incline.report.fonts import register_fonts
 from incline.report.show import Show
 from incline.report.steps import calculation_of
@@ -257,7 +257,8 @@ def test_steps_follow_for_every_kind_of_record(case, tmp_path):
     whole = calculation_of(sheet)
     assert whole.sound
     register_fonts()
-    steps = steps_of(lines_of(render(sheet, steps_page.calculation(sheet))))
+    flow = [*heading("1", "Calculation"), *steps_page.calculation(sheet)]
+    steps = steps_of(lines_of(render(sheet, flow)))
     assert len(steps) == len(whole.steps())
     for step in steps:
         if step.put_in is not None and not step.put_in.startswith(("sum over", "with all")):
