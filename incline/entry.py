@@ -15,7 +15,7 @@ if TYPE_CHECKING:
     from numpy.typing import NDArray
 
     from incline.buoyancy import Condition
-    from incline.chain import Plan, Yield
+    from incline.chain import Inputs, Plan, Yield
     from incline.hull import Hull
     from incline.record import Trial
 
@@ -101,7 +101,7 @@ def _table_apart(trial: Trial, ship: Condition) -> tuple[float, float, float] | 
 _DRAWN = 41
 
 
-def lever_curve(found: Yield, hull: Hull | None) -> LeverCurve:
+def lever_curve(plan: Plan, given: Inputs, found: Yield, hull: Hull | None) -> LeverCurve:
     """N(t) a little beyond the heels of the test, by every method."""
     import numpy as np
 
@@ -114,8 +114,15 @@ def lever_curve(found: Yield, hull: Hull | None) -> LeverCurve:
         integrated, _ = HeeledHull(hull, 0.0 * tangents).curve(ship)(tangents, found.vcg)
     wall_sided, _ = WallSided().curve(ship)(tangents, found.vcg)
     straight = b.yb + (b.kb + b.bmt) * tangents
+    start, balance = b.yb + (b.kb + b.bmt) * ship.start, b.yb + (b.kb + b.bmt) * heel
+    if plan.lever is not None:
+        start, (balance, _) = plan.lever.start(ship), plan.lever.curve(ship)(heel, found.vcg)
+    liquids, _ = plan.liquids.at(heel, given.fsm)
     return LeverCurve(
         shifts=tuple(map(float, heel)),
+        balance=tuple(map(float, balance)),
+        liquids=tuple(map(float, liquids)),
+        start=float(start),
         tangents=tuple(map(float, tangents)),
         integrated=tuple(map(float, integrated)),
         wall_sided=tuple(map(float, wall_sided)),

@@ -120,7 +120,7 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
         method, *others = methods_of(trial, hull)
         aside = [_by(m, plan, given, hull) for m in others]
     heel = describe_heel(trial, seen, found, method, aside)
-    heel = dataclasses.replace(heel, levers=lever_curve(found, hull))
+    heel = dataclasses.replace(heel, levers=lever_curve(plan, given, found, hull))
     waterline = describe_waterline(plan.waterline, trial.drafts, trial.vessel.lpp)
     straight, line = seen.straightened(found.heeling.bend), found.heeling.regressor
     slope = slope_uncertainty(straight, line[seen.shift])

@@ -209,10 +209,14 @@ class LeverCurve:
     """N(t) = y_B + z_B t [m] over tangents of heel, and what each method puts in its place.
 
     ``integrated`` is empty without a hull. ``shifts`` are the fitted tangents of the shifts, list
-    included.
+    included, ``balance`` N there by the method used, and ``liquids`` the moments of free liquids
+    [t m]; ``start`` is N at the list with the test weights at their start.
     """
 
     shifts: tuple[float, ...]
+    balance: tuple[float, ...]
+    liquids: tuple[float, ...]
+    start: float
     tangents: tuple[float, ...]
     integrated: tuple[float, ...]
     wall_sided: tuple[float, ...]

@@ -34,13 +34,17 @@ def lines_of(page: PageObject) -> list[Line]:
     """The level lines of a page, page numbers apart (they are forms with places of their own)."""
     register_fonts()
     found: list[Line] = []
+    placed: list[tuple[float, float, float]] = []
 
     def visit(text: str, cm: list[float], tm: list[float], font: dict | None, size: float) -> None:
         plain = text.strip()
         if not plain or not font or abs(cm[1]) > 1e-6 or plain == "DRAFT":
             return
-        x = cm[0] * tm[4] + cm[2] * tm[5] + cm[4]
+        start = x = cm[0] * tm[4] + cm[2] * tm[5] + cm[4]
         y = cm[1] * tm[4] + cm[3] * tm[5] + cm[5]
+        if placed and found and placed[-1][:2] == (x, y) and placed[-1][2] != size:
+            x = found[-1].right  # a subscript, or what follows it: the library tells no place
+        placed.append((start, y, size))
         face = BOLD if "Bold" in str(font.get("/BaseFont")) else REGULAR
         if y > 0.0:
             found.append(Line(round(y, 2), x, stringWidth(plain, face, size), size, plain))

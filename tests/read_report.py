@@ -30,6 +30,7 @@ SECTIONS = (
     "Anomalies and explanations",
     "From GM to the centre of gravity",
     "From as inclined to lightship",
+    "Calculation, step by step",
     "With the excluded readings counted",
     "Uncertainty",
     "Cautions, and who decides",

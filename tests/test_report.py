@@ -56,16 +56,14 @@ def test_front_page_carries_identity_and_result():
         assert f"{value} {unit} {u} ± {wide} {found.k:.2f} {dof}" in front
 
 
-def test_calculation_lines_show_the_values_put_in():
+def test_sections_state_what_the_calculation_finds():
     text, o = " ".join(pages("metric")), made.made_reduction().outcome
     s, rise = o.as_inclined, o.free_surface.correction
-    km_gm = f"{s.kmt:.3f} − {o.heel.gm_fluid:.3f} − {rise:.3f}"
-    assert f"KG = KM − GM fluid − correction {km_gm} {s.vcg:.3f} m" in text
-    assert f"ΣFSM / Δ {o.free_surface.moment:.3f} / {s.displacement:.3f} {rise:.3f} m" in text
-    lcg = f"{s.lcb:.3f} + (0.017000) × ({s.vcg:.3f} − {s.kb:.3f}) {s.lcg:.3f} m"
-    assert f"LCG = LCB + τ (KG − KB) {lcg}" in text
-    assert f"tangent of list {o.heel.gm_fluid:.4f} × (0.003000) {s.tcg:.4f} m" in text
-    assert f"{s.volume:.3f} × 1.0218 × (1 + 0.00600) {s.displacement:.3f} t" in text
+    assert f"Virtual rise of G, ΣFSM / Δ {rise:.4f} m" in text
+    for name, value in (("KG", s.vcg), ("LCG", s.lcg), ("KM", s.kmt)):
+        assert f" {name} {value:.3f} m" in text
+    assert f" TCG {s.tcg:.4f} m" in text
+    assert f"Displacement {s.displacement:.3f} t" in text
 
 
 def test_readings_print_as_recorded_with_tangents_of_five_decimals():
@@ -95,7 +93,8 @@ def test_excluded_reading_shows_its_reason_and_both_results():
 
 
 def test_ledger_moments_are_mass_times_arm_with_the_sign_of_the_action():
-    text = " ".join(pages("metric"))
+    # Trailing zeros aside: how many decimals a column has follows from what is worked out from it.
+    text = re.sub(r"(\.\d{3}\d*?)0+\b", r"\1", " ".join(pages("metric")))
     assert "Workshop stores −0.750 4.500 1.100 2.400 −3.375 −0.825 −1.800" in text
     assert "Anchor & cable 0.940 22.800 0.300 3.100 21.432 0.282 2.914" in text
     assert (

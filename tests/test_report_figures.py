@@ -15,7 +15,7 @@ from reportlab.pdfgen.canvas import Canvas
 
 from incline.report.canvas_backend import FigureFlowable
 from incline.report.figure_style import add_panel, blank_figure, drawing_style
-from incline.report.figures import residual_plot
+from incline.report.figures_residuals import residual_plot
 from incline.report.figures_waterline import waterline_plot
 from incline.report.fonts import register_fonts
 from incline.report.show import Show
@@ -26,7 +26,7 @@ from incline.units import SYSTEMS
 @pytest.mark.parametrize("system", ["metric", "us"])
 def test_stated_exaggeration_is_the_scale_of_the_panel(system):
     show = Show(SYSTEMS[system])
-    figure = waterline_plot(WATERLINE, LPP, show, 487.0)
+    figure = waterline_plot(WATERLINE, LPP, show, 487.0).figure()
     wide, high = figure.get_size_inches()
     for axes, unit in zip(figure.axes, ("length", "reading"), strict=True):
         box, (left, right), (low, top) = axes.get_position(), axes.get_xlim(), axes.get_ylim()
@@ -37,7 +37,7 @@ def test_stated_exaggeration_is_the_scale_of_the_panel(system):
 
 
 def test_waterline_panel_shows_baseline_perpendiculars_and_every_mark():
-    figure = waterline_plot(WATERLINE, LPP, Show(SYSTEMS["metric"]), 487.0)
+    figure = waterline_plot(WATERLINE, LPP, Show(SYSTEMS["metric"]), 487.0).figure()
     upper, lower = figure.axes
     assert {t.get_text() for t in upper.texts} == {"AP", "FP", "baseline"}
     low, top = upper.get_ylim()
@@ -56,7 +56,7 @@ def test_waterline_panel_shows_baseline_perpendiculars_and_every_mark():
 
 def test_residual_plot_keeps_the_scale_of_the_readings_that_count():
     heel = made.made_reduction().outcome.heel
-    figure = residual_plot(heel, Show(SYSTEMS["metric"]), 487.0)
+    figure = residual_plot(heel, Show(SYSTEMS["metric"]), 487.0, frozenset()).figure()
     largest = max(abs(p.residual) for p in heel.points if not p.excluded)
     for axes in figure.axes:
         low, top = axes.get_ylim()

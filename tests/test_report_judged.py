@@ -211,7 +211,7 @@ def _lines(axes, *, pattern):
 def _plot(heel, expected):
     base = [p.fitted for p in heel.points if not p.excluded]
     times = [i / 8.0 for i in range(9)]
-    return finding_plot(heel, base, expected, times, Show(SYSTEMS["metric"]), 493.0)
+    return finding_plot(heel, base, expected, times, Show(SYSTEMS["metric"]), 493.0).figure()
 
 
 def test_plot_draws_residuals_and_the_named_pattern_three_times():

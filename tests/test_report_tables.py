@@ -67,7 +67,7 @@ def test_what_is_not_known_is_an_empty_cell(tables):
 
 def test_a_relocated_mass_is_not_taken_for_a_negative_one(tables):
     hook = next(r for r in tables["16-from-as-inclined-to-lightship.csv"] if r[0] == "Towing hook")
-    assert hook[1] == "'(0.410)"
+    assert re.fullmatch(r"'\(0\.410*\)", hook[1])
 
 
 @pytest.mark.parametrize(

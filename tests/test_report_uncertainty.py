@@ -246,7 +246,7 @@ def test_unsettled_run_is_said_to_be_so():
 def test_distribution_of_kg_marks_interval_ends_and_limit(show):
     base = made.made_reduction()
     run, kg, found = base.simulation, base.simulation.results[1], _kg().estimate
-    axes = distribution_plot(run, kg, found, KG_LIMIT, show, 487.0).axes[0]
+    axes = distribution_plot(run, kg, found, KG_LIMIT, show, 487.0).figure().axes[0]
     scale = show.scale("length")
     upright = {line.get_xdata()[0] * scale for line in axes.lines if len(line.get_xdata()) == 2}
     ends = (*kg.symmetric, found.value - found.U, found.value + found.U, KG_LIMIT)
@@ -271,7 +271,7 @@ def test_density_is_that_of_student_and_of_the_normal():
 
 def test_bars_of_the_shares_add_up_and_go_left_of_zero():
     budget = _kg()
-    axes = share_plot(budget, main_lines(budget, 12), 487.0).axes[0]
+    axes = share_plot(budget, main_lines(budget, 12), 487.0).figure().axes[0]
     widths = [bar.get_width() for bar in axes.patches]
     assert sum(widths) == pytest.approx(100.0, abs=1e-9)  # rounding of doubles only
     assert min(widths) == pytest.approx(100.0 * min(x.share for x in budget.lines))

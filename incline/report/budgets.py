@@ -64,7 +64,7 @@ def _one(sheet: Sheet, quoted: Quoted, budget: Budget) -> list[Any]:
     need = 110.0
     if quoted.key == "vcg" and budget.lines:
         picture = FigureFlowable(share_plot(budget, main_lines(budget, 12), sheet.width))
-        plot, need = [picture], picture.height + 16.0
+        plot, need = [picture], picture.height + 24.0
     flow = [*part(title, need), *plot, _table(sheet, quoted, budget, budget.estimate)]
     return [*flow, note(_READING)] if quoted.key == "vcg" else flow
 

@@ -9,7 +9,7 @@ from matplotlib.path import Path
 from reportlab.pdfbase.pdfmetrics import stringWidth
 from reportlab.platypus.flowables import Flowable
 
-from incline.report.figure_style import drawing_style
+from incline.report.figure_style import Plot, drawing_style
 from incline.report.fonts import BOLD, REGULAR
 from incline.report.text import clean
 
@@ -159,12 +159,12 @@ def _face(prop: FontProperties) -> str:
 
 
 class FigureFlowable(Flowable):  # type: ignore[misc]
-    """A matplotlib figure (72 dots per inch) that stands in the flow of the page."""
+    """A matplotlib figure (72 dots per inch), or a plot to be drawn, in the flow of the page."""
 
-    def __init__(self, figure: Figure, space_after: float = 6.0) -> None:
+    def __init__(self, figure: Figure | Plot, space_after: float = 6.0) -> None:
         super().__init__()
         self.figure = figure
-        self.width, self.height = (72.0 * side for side in figure.get_size_inches())
+        self.width, self.height = _size(figure)
         self.spaceAfter = space_after
         self.hAlign = "LEFT"
 
@@ -174,5 +174,13 @@ class FigureFlowable(Flowable):  # type: ignore[misc]
 
     def draw(self) -> None:
         """Draw on the canvas that the page has set."""
+        figure = self.figure.figure() if isinstance(self.figure, Plot) else self.figure
         with drawing_style():
-            self.figure.draw(CanvasRenderer(self.canv, self.width, self.height))
+            figure.draw(CanvasRenderer(self.canv, self.width, self.height))
+
+
+def _size(figure: Figure | Plot) -> tuple[float, float]:
+    if isinstance(figure, Plot):
+        return figure.width, figure.height
+    wide, high = (72.0 * float(side) for side in figure.get_size_inches())
+    return wide, high

@@ -43,7 +43,7 @@ class Options:
     paper: Literal["A4", "Letter"] | None = None
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, slots=True, eq=False)
 class Sheet:
     """What every section needs: the reduction, number formats, and the width of the text [pt]."""
 

@@ -1,19 +1,25 @@
-"""Plots of the heel fit: tangent against moment, together and by device, and the residuals."""
+"""Plots of the heel fit: tangent against moment, together and by device."""
 
 from __future__ import annotations
 
 import statistics
-from typing import TYPE_CHECKING, Any
+from functools import partial
+from typing import TYPE_CHECKING
 
+from incline.report.figure_points import crossed, entries_of, keys
 from incline.report.figure_style import (
     GREY,
+    INK,
     Mark,
+    Plot,
     add_panel,
-    blank_figure,
-    drawing_style,
+    dots,
+    legend,
+    legend_height,
     mark,
+    ring,
 )
-from incline.report.text import elide
+from incline.report.figure_text import wrapped
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -24,62 +30,87 @@ if TYPE_CHECKING:
     from incline.report.show import Show
     from incline.result import DeviceFit, HeelFit, HeelPoint
 
-__all__ = ["PANELS_IN_ROW", "common_plot", "device_plots", "residual_plot"]
+__all__ = ["PANELS_IN_ROW", "common_plot", "device_plots"]
 
 PANELS_IN_ROW = 3
-_THOUSANDTHS = 1000.0
-_LABEL = 22
-"""Most characters of a device's name in a plot."""
+_TITLE, _TITLE_LINE = 7.5, 9.2
+"""Size of a panel's title and height of a line of it [pt]."""
 
 
-def common_plot(heel: HeelFit, show: Show, width: float) -> Figure:
-    """All devices, each less its zero offset, with the common line."""
-    with drawing_style():
-        figure = blank_figure(width, 236.0)
-        axes = add_panel(figure, 46.0, 28.0, width - 54.0, 192.0)
-        unit = show.scale("moment")
-        for index, device in enumerate(heel.devices):
-            some = [p for p in heel.points if p.device == device.id]
-            _scatter(axes, some, [p.tangent - device.intercept for p in some], mark(index), unit)
-            _key(axes, mark(index), elide(device.id, _LABEL))
-        ends = _span(heel.points)
-        axes.plot(
-            [m / unit for m in ends],
-            [m * heel.slope for m in ends],
-            color="black",
-            linewidth=0.9,
-            label="common line",
-            zorder=1,
-        )
-        if any(p.excluded for p in heel.points):
-            _key(axes, Mark("x", "black", (0, ())), "crossed: excluded")
-        _origin(axes)
-        axes.set_title("All devices: tangent less the device's zero offset")
-        axes.set_xlabel(f"moment to starboard [{show.unit('moment')}]")
-        axes.set_ylabel("tangent of heel")
-        axes.legend(loc="upper left")
-    return figure
+def common_plot(heel: HeelFit, show: Show, width: float, named: frozenset[int]) -> Plot:
+    """All devices, each less its zero offset, with the common line; ``named`` points are ringed."""
+    entries = [_fit_name(heel), *entries_of(heel, named)]
+    return Plot(width, 236.0 + legend_height(entries, width), partial(_common, heel, show, named))
 
 
-def device_plots(heel: HeelFit, show: Show, width: float) -> list[Figure]:
+def _fit_name(heel: HeelFit) -> str:
+    return "common line" if heel.method == "straight-line" else "common curve, as fitted"
+
+
+def _common(heel: HeelFit, show: Show, named: frozenset[int], figure: Figure) -> None:
+    width = 72.0 * float(figure.get_size_inches()[0])
+    axes = add_panel(figure, 46.0, 28.0, width - 54.0, 192.0)
+    unit = show.scale("moment")
+    zero = {d.id: d.intercept for d in heel.devices}
+    at = [(m, m * heel.slope) for m in _span(heel.points)]
+    if heel.method != "straight-line":
+        at = sorted({(p.moment, p.fitted - zero[p.device]) for p in heel.points})
+    axes.plot(
+        [m / unit for m, _ in at], [t for _, t in at], color=INK, linewidth=0.9,
+        label=_fit_name(heel), zorder=1,
+    )  # fmt: skip
+    for index, device in enumerate(heel.devices):
+        some = [p for p in heel.points if p.device == device.id]
+        _scatter(axes, some, [p.tangent - device.intercept for p in some], mark(index), unit)
+    keys(axes, entries_of(heel, named))
+    some = [heel.points[i] for i in sorted(named)]
+    ring(axes, [p.moment / unit for p in some], [p.tangent - zero[p.device] for p in some])
+    _origin(axes)
+    axes.set_title("All devices: tangent less the device's zero offset")
+    axes.set_xlabel(f"moment to starboard [{show.unit('moment')}]")
+    axes.set_ylabel("tangent of heel")
+    legend(figure, *axes.get_legend_handles_labels())
+
+
+def device_plots(heel: HeelFit, show: Show, width: float, named: frozenset[int]) -> list[Plot]:
     """Each device by itself, some in a row: its own line drawn, the common slope dashed."""
     numbered = list(enumerate(heel.devices))
-    with drawing_style():
-        return [
-            _device_row(heel, numbered[i : i + PANELS_IN_ROW], show, width)
-            for i in range(0, len(numbered), PANELS_IN_ROW)
-        ]
+    rows = [numbered[i : i + PANELS_IN_ROW] for i in range(0, len(numbered), PANELS_IN_ROW)]
+    return [
+        Plot(
+            width,
+            150.0 + _TITLE_LINE * (_title_lines(row, width) - 1),
+            partial(_device_row, heel, row, show, named),
+        )
+        for row in rows
+    ]
+
+
+def _title(device: DeviceFit, width: float) -> str:
+    return wrapped(device.id, _TITLE, width / PANELS_IN_ROW - 44.0, bold=True)
+
+
+def _title_lines(row: Sequence[tuple[int, DeviceFit]], width: float) -> int:
+    return max(_title(d, width).count("\n") + 1 for _, d in row)
 
 
 def _device_row(
-    heel: HeelFit, devices: Sequence[tuple[int, DeviceFit]], show: Show, width: float
-) -> Figure:
-    figure = blank_figure(width, 150.0)
+    heel: HeelFit,
+    row: Sequence[tuple[int, DeviceFit]],
+    show: Show,
+    named: frozenset[int],
+    figure: Figure,
+) -> None:
+    width = 72.0 * float(figure.get_size_inches()[0])
     each = width / PANELS_IN_ROW
-    for place, (index, device) in enumerate(devices):
-        axes = add_panel(figure, place * each + 40.0, 27.0, each - 48.0, 106.0)
+    for nth, (index, device) in enumerate(row):
+        axes = add_panel(figure, nth * each + 40.0, 27.0, each - 48.0, 106.0)
         _device_panel(axes, heel, index, device, show)
-    return figure
+        some = [heel.points[i] for i in sorted(named) if heel.points[i].device == device.id]
+        ring(axes, [p.moment / show.scale("moment") for p in some], [p.tangent for p in some])
+        axes.set_title(_title(device, width))
+        axes.set_xlabel(f"moment [{show.unit('moment')}]")
+        axes.set_ylabel("tangent as read")
 
 
 def _device_panel(axes: Axes, heel: HeelFit, index: int, device: DeviceFit, show: Show) -> None:
@@ -100,132 +131,30 @@ def _device_panel(axes: Axes, heel: HeelFit, index: int, device: DeviceFit, show
             axes.plot([m / unit for m in ends], heights, color=ink, linestyle=dash, linewidth=0.9)
     _origin(axes)
     axes.locator_params(nbins=5)
-    axes.set_title(elide(device.id, _LABEL))
-    axes.set_xlabel(f"moment [{show.unit('moment')}]")
-    axes.set_ylabel("tangent as read")
-
-
-def residual_plot(heel: HeelFit, show: Show, width: float) -> Figure:
-    """Residuals against moment, and against the shift to show what changes with time.
-
-    The scale is that of the readings that count; an excluded one beyond it stands at the edge with
-    its value.
-    """
-    counted = [abs(p.residual) for p in heel.points if not p.excluded]
-    limit = 1.3 * _THOUSANDTHS * max(max(counted, default=0.0), 1e-6)
-    with drawing_style():
-        keys = 10.0 * -(-len(heel.devices) // 4)  # lines of the legend above the panels
-        figure = blank_figure(width, 154.0 + keys)
-        half = (width - 46.0) / 2.0
-        left = add_panel(figure, 40.0, 27.0, half - 14.0, 108.0)
-        right = add_panel(figure, 40.0 + half + 18.0, 27.0, half - 24.0, 108.0)
-        for index, device in enumerate(heel.devices):
-            _residuals((left, right), heel, (index, device), limit, show.scale("moment"))
-        left.set_title("Residuals against moment")
-        left.set_xlabel(f"moment to starboard [{show.unit('moment')}]")
-        left.set_ylabel("residual of tangent × 1000")
-        right.set_title("Residuals in the order of the shifts")
-        right.set_xlabel("shift")
-        shifts = sorted({p.shift for p in heel.points})
-        right.set_xticks(shifts[:: max(1, len(shifts) // 12)])
-        for axes in (left, right):
-            axes.axhline(0.0, color="black", linewidth=0.6, zorder=1)
-            axes.set_ylim(-limit, limit)
-        figure.legend(*left.get_legend_handles_labels(), loc="upper left", ncols=4)
-    return figure
-
-
-def _residuals(
-    panels: tuple[Axes, Axes],
-    heel: HeelFit,
-    numbered: tuple[int, DeviceFit],
-    limit: float,
-    unit: float,
-) -> None:
-    """The residuals of one device in both panels."""
-    (left, right), look = panels, mark(numbered[0])
-    some = [p for p in heel.points if p.device == numbered[1].id]
-    kept = [p for p in some if not p.excluded]
-    heights = [p.residual * _THOUSANDTHS for p in kept]
-    _dots(left, [p.moment / unit for p in kept], heights, look)
-    _dots(right, [p.shift for p in kept], heights, look, joined=True)
-    _key(left, look, elide(numbered[1].id, _LABEL))
-    for p in some:
-        if p.excluded:
-            value = p.residual * _THOUSANDTHS
-            height = max(-0.93 * limit, min(0.93 * limit, value))
-            _crossed(left, [p.moment / unit], [height], look)
-            _crossed(right, [p.shift], [height], look)
-            _tell(right, (p.shift, height), f"{value:+.2f}".replace("-", "−"))
-
-
-def _dots(
-    axes: Axes, x: Sequence[float], y: Sequence[float], look: Mark, *, joined: bool = False
-) -> None:
-    axes.plot(
-        x,
-        y,
-        linestyle=look.dash if joined else "none",
-        linewidth=0.6,
-        marker=look.shape,
-        color=look.colour,
-        markerfacecolor="white",
-        markeredgewidth=0.9,
-    )
-
-
-def _tell(axes: Axes, at: tuple[float, float], text: str) -> None:
-    """A word beside a point, on the side where there is room and towards the middle."""
-    low, high = axes.get_xlim()
-    last = at[0] > (low + high) / 2.0
-    axes.annotate(
-        text,
-        at,
-        xytext=(-6 if last else 6, -7 if at[1] > 0.0 else 3),
-        textcoords="offset points",
-        ha="right" if last else "left",
-        fontsize=6,
-    )
 
 
 def _scatter(
     axes: Axes, points: Sequence[HeelPoint], heights: Sequence[float], look: Mark, unit: float
 ) -> None:
-    """Points at their moments; excluded ones hollow and crossed, with their shift."""
+    """Points at their moments; excluded ones crossed, with their shift."""
     pairs = list(zip(points, heights, strict=True))
     kept = [(p.moment / unit, h) for p, h in pairs if not p.excluded]
-    _dots(axes, [m for m, _ in kept], [h for _, h in kept], look)
+    dots(axes, [m for m, _ in kept], [h for _, h in kept], look)
     out = [(p.moment / unit, h) for p, h in pairs if p.excluded]
-    _crossed(axes, [m for m, _ in out], [h for _, h in out], look)
+    crossed(axes, [m for m, _ in out], [h for _, h in out], look)
     for (x, y), p in zip(out, (p for p, _ in pairs if p.excluded), strict=True):
         axes.annotate(
-            f"shift {p.shift}", (x, y), xytext=(5, -8), textcoords="offset points", fontsize=6
+            f"shift {p.shift}", (x, y), xytext=(6, -8), textcoords="offset points", fontsize=6
         )
 
 
-def _crossed(axes: Axes, x: Sequence[float], y: Sequence[float], look: Mark) -> None:
-    style: dict[str, Any] = {"linestyle": "none", "color": look.colour, "markeredgewidth": 0.8}
-    axes.plot(x, y, marker=look.shape, markerfacecolor="none", **style)
-    axes.plot(x, y, marker="x", markersize=7.5, **style)
-
-
-def _key(axes: Axes, look: Mark, name: str) -> None:
-    """An entry of the legend without a point in the plot."""
-    axes.plot(
-        [],
-        [],
-        linestyle="none",
-        marker=look.shape,
-        color=look.colour,
-        markerfacecolor="white",
-        markeredgewidth=0.9,
-        label=name,
-    )
-
-
 def _origin(axes: Axes) -> None:
-    axes.axhline(0.0, color=GREY, linewidth=0.5, zorder=0)
-    axes.axvline(0.0, color=GREY, linewidth=0.5, zorder=0)
+    """Lines through zero, where zero lies within the points."""
+    (low, high), (left, right) = axes.get_ylim(), axes.get_xlim()
+    if low < 0.0 < high:
+        axes.axhline(0.0, color=GREY, linewidth=0.5, zorder=0.5)
+    if left < 0.0 < right:
+        axes.axvline(0.0, color=GREY, linewidth=0.5, zorder=0.5)
 
 
 def _span(points: Sequence[HeelPoint]) -> tuple[float, float]:

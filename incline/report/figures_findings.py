@@ -3,10 +3,20 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import partial
 from itertools import pairwise
 from typing import TYPE_CHECKING
 
-from incline.report.figure_style import GREY, add_panel, blank_figure, drawing_style, mark
+from incline.report.figure_style import (
+    GREY,
+    INK,
+    Plot,
+    add_panel,
+    key,
+    legend,
+    legend_height,
+    mark,
+)
 from incline.report.text import elide
 
 if TYPE_CHECKING:
@@ -23,8 +33,8 @@ __all__ = ["finding_plot"]
 _THOUSANDTHS = 1000.0
 _PATTERN = "0.6"
 """Grey of the pattern, drawn thick under the readings."""
-_ABREAST = 4
-"""Keys on a line."""
+_AS_FOUND, _NAME = "as the finding has it", 110
+"""Its name in the legend; most characters of a device's name there."""
 _LETTER = 3.9
 """Width of a letter of an axis [pt], on average."""
 
@@ -46,45 +56,55 @@ def finding_plot(
     times: Sequence[float],
     show: Show,
     width: float,
-) -> Figure:
+) -> Plot:
     """Readings that count less ``base``, and ``expected`` less ``base`` where there is any.
 
     ``base`` and ``expected`` are tangents in the order of the readings that count; ``times`` of the
     shifts run from 0 to 1.
     """
+    entries = [*(elide(d.id, _NAME) for d in heel.devices), *([_AS_FOUND] if expected else [])]
+    paint = partial(_panels, heel, base, expected, times, show)
+    return Plot(width, 138.0 + legend_height(entries, width), paint)
+
+
+def _panels(
+    heel: HeelFit,
+    base: Sequence[float],
+    expected: Sequence[float],
+    times: Sequence[float],
+    show: Show,
+    figure: Figure,
+) -> None:
+    width = 72.0 * float(figure.get_size_inches()[0])
     points = [p for p in heel.points if not p.excluded]
     heights = [_THOUSANDTHS * (p.tangent - b) for p, b in zip(points, base, strict=True)]
     curve = [_THOUSANDTHS * (e - b) for e, b in zip(expected, base, strict=False)]
     limit = 1.25 * max((abs(h) for h in (*heights, *curve)), default=0.0) or 1.0
     when = {s.shift: t for s, t in zip(heel.shifts, times, strict=True)}
-    with drawing_style():
-        rows = -(-(len(heel.devices) + bool(curve)) // _ABREAST)
-        figure = blank_figure(width, 142.0 + 10.0 * rows)  # the keys stand above the panels
-        each = (width - 30.0) / 3.0
-        panels = [add_panel(figure, 40.0 + i * each, 27.0, each - 16.0, 96.0) for i in range(3)]
-        unit, names = show.scale("moment"), [d.id for d in heel.devices]
-        far = max((abs(p.moment) for p in points), default=0.0) or 1.0
+    each = (width - 30.0) / 3.0
+    panels = [add_panel(figure, 40.0 + i * each, 27.0, each - 16.0, 96.0) for i in range(3)]
+    unit, names = show.scale("moment"), [d.id for d in heel.devices]
+    far = max((abs(p.moment) for p in points), default=0.0) or 1.0
 
-        def series(place: dict[int, float]) -> list[_Series]:
-            return [_one(i, name, points, place, heights, curve) for i, name in enumerate(names)]
+    def series(place: dict[int, float]) -> list[_Series]:
+        return [_one(i, name, points, place, heights, curve) for i, name in enumerate(names)]
 
-        numbered = list(enumerate(points))
-        _draw(panels[0], series({i: p.moment / unit for i, p in numbered}), by_moment=True)
-        _draw(panels[1], series({i: when[p.shift] for i, p in numbered}), by_moment=False)
-        beside = {i: names.index(p.device) + 0.36 * p.moment / far for i, p in numbered}
-        _draw(panels[2], series(beside), by_moment=True)
-        for axes in panels:
-            axes.axhline(0.0, color="black", linewidth=0.6, zorder=1)
-            axes.set_ylim(-limit, limit)
-        for axes in panels[1:]:  # one scale for all three
-            axes.tick_params(axis="y", labelleft=False)
-        panels[0].set_title("By moment")
-        panels[0].set_xlabel(f"moment to starboard [{show.unit('moment')}]")
-        panels[0].set_ylabel("residual of tangent × 1000")
-        _clock(panels[1], heel, when)
-        _beside(panels[2], names, each - 16.0)
-        _keys(figure, names, pattern=bool(curve))
-    return figure
+    numbered = list(enumerate(points))
+    _draw(panels[0], series({i: p.moment / unit for i, p in numbered}), by_moment=True)
+    _draw(panels[1], series({i: when[p.shift] for i, p in numbered}), by_moment=False)
+    beside = {i: names.index(p.device) + 0.36 * p.moment / far for i, p in numbered}
+    _draw(panels[2], series(beside), by_moment=True)
+    for axes in panels:
+        axes.axhline(0.0, color=INK, linewidth=0.6, zorder=1)
+        axes.set_ylim(-limit, limit)
+    for axes in panels[1:]:  # one scale for all three
+        axes.tick_params(axis="y", labelleft=False)
+    panels[0].set_title("By moment")
+    panels[0].set_xlabel(f"moment to starboard [{show.unit('moment')}]")
+    panels[0].set_ylabel("residual of tangent × 1000")
+    _clock(panels[1], heel, when)
+    _beside(panels[2], names, each - 16.0)
+    _keys(figure, panels[0], [elide(name, _NAME) for name in names], pattern=bool(curve))
 
 
 def _one(
@@ -118,7 +138,7 @@ def _draw(axes: Axes, some: Sequence[_Series], *, by_moment: bool) -> None:
             )  # fmt: skip
         axes.plot(
             one.x, one.heights, linestyle="none" if by_moment else look.dash, linewidth=0.6,
-            marker=look.shape, color=look.colour, markerfacecolor="white", markeredgewidth=0.9,
+            marker=look.shape, color=look.colour, markerfacecolor=look.filling, markeredgewidth=0.9,
             zorder=2.5,
         )  # fmt: skip
 
@@ -143,27 +163,20 @@ def _clock(axes: Axes, heel: HeelFit, when: dict[int, float]) -> None:
 
 
 def _beside(axes: Axes, names: Sequence[str], width: float) -> None:
-    """The devices side by side, each over the moment."""
-    room = max(2, int(width / len(names) / _LETTER) - 1)
+    """The devices side by side, each over the moment; numbered where their names are too long."""
+    fits = all(len(name) * _LETTER < width / len(names) for name in names)
     axes.set_title("By device, each over the moment")
-    axes.set_xticks(range(len(names)), [elide(name, room) for name in names])
+    axes.set_xticks(range(len(names)), names if fits else [str(i + 1) for i in range(len(names))])
     axes.set_xlim(-0.5, len(names) - 0.5)
     axes.grid(visible=False, axis="x")
     for i in range(1, len(names)):
         axes.axvline(i - 0.5, color=GREY, linewidth=0.4, zorder=0)
-    axes.set_xlabel("device")
+    axes.set_xlabel("device" if fits else "device, in the order of the legend")
 
 
-def _keys(figure: Figure, names: Sequence[str], *, pattern: bool) -> None:
-    from matplotlib.lines import Line2D
-
-    keys = [
-        Line2D(
-            [], [], linestyle="none", marker=mark(i).shape, color=mark(i).colour,
-            markerfacecolor="white", markeredgewidth=0.9, label=elide(name, 22),
-        )
-        for i, name in enumerate(names)
-    ]  # fmt: skip
+def _keys(figure: Figure, axes: Axes, names: Sequence[str], *, pattern: bool) -> None:
+    for i, name in enumerate(names):
+        key(axes, mark(i), name)
     if pattern:
-        keys.append(Line2D([], [], color=_PATTERN, linewidth=3.0, label="as the finding has it"))
-    figure.legend(handles=keys, loc="upper left", ncols=_ABREAST, columnspacing=1.4)
+        axes.plot([], [], color=_PATTERN, linewidth=3.0, label=_AS_FOUND)
+    legend(figure, *axes.get_legend_handles_labels())

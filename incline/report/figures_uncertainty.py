@@ -3,13 +3,15 @@
 from __future__ import annotations
 
 import math
+from functools import partial
+from itertools import accumulate, pairwise
 from typing import TYPE_CHECKING
 
 from matplotlib.patches import Patch
 
 from incline.defaults import LABEL
-from incline.report.figure_style import add_panel, blank_figure, drawing_style
-from incline.report.text import elide
+from incline.report.figure_style import INK, Plot, add_panel, legend, legend_height
+from incline.report.figure_text import widest, wrapped
 from incline.sources import SEEN, STATED
 
 if TYPE_CHECKING:
@@ -23,8 +25,8 @@ if TYPE_CHECKING:
 
 __all__ = ["distribution_plot", "share_plot"]
 
-_NAME = 50
-"""Most characters of an input's name beside its bar."""
+_LEFT, _SIZE, _BAR, _LINE = 200.0, 6.5, 11.5, 7.8
+"""Most room for names beside the bars, their size, height of a bar and of a line [pt]."""
 _SHADES = {"stated": "0.0", "assumed": "1.0", "seen": "0.72", "estimated": "0.42", "rest": "0.9"}
 _WORDS = {
     "stated": "stated by the trial",
@@ -37,33 +39,56 @@ _REACH = 4.5
 """Standard uncertainties to each side of KG that the distribution is drawn over."""
 
 
-def share_plot(budget: Budget, shown: Sequence[BudgetLine], width: float) -> Figure:
+def share_plot(budget: Budget, shown: Sequence[BudgetLine], width: float) -> Plot:
     """Shares of the variance as bars, the largest on top; the shade tells the basis."""
     bars = [(line.name, 100.0 * line.share, _basis(line)) for line in shown]
     rest = len(budget.lines) - len(shown)
     if rest:
         share = sum(x.share for x in budget.lines) - sum(x.share for x in shown)
         bars.append((f"{rest} further input{'s' if rest > 1 else ''}", 100.0 * share, "rest"))
-    high = 11.5 * len(bars)
-    with drawing_style():
-        figure = blank_figure(width, high + 48.0)
-        axes = add_panel(figure, 200.0, 28.0, width - 220.0, high + 2.0)
-        for i, (_, share, basis) in enumerate(bars):
-            shade = _SHADES["assumed" if basis == "own" else basis]
-            dash = (0, (1.5, 1.0)) if basis == "own" else "solid"
-            axes.barh(
-                i, share, height=0.66, color=shade, edgecolor="black", linewidth=0.6, linestyle=dash
-            )
-            _value(axes, share, i)
-        axes.set_yticks(range(len(bars)), [elide(name, _NAME) for name, _, _ in bars])
-        axes.set_ylim(len(bars) - 0.45, -0.55)
-        axes.margins(x=0.09)
-        axes.grid(visible=False, axis="y")
-        axes.tick_params(axis="y", length=0)
-        axes.axvline(0.0, color="black", linewidth=0.6)
-        axes.set_xlabel("share of the variance of KG [%]")
-        _shades(figure, dict.fromkeys(basis for _, _, basis in bars if basis != "rest"))
-    return figure
+    names = [wrapped(name, _SIZE, _LEFT - 12.0) for name, _, _ in bars]
+    bases = list(dict.fromkeys(basis for _, _, basis in bars if basis != "rest"))
+    keys = legend_height([_WORDS[b] for b in bases], width)
+    high = sum(_BAR + _LINE * n.count("\n") for n in names)
+    paint = partial(_shares, bars, names, bases)
+    return Plot(width, high + 34.0 + keys, paint)
+
+
+def _shares(
+    bars: Sequence[tuple[str, float, str]],
+    names: Sequence[str],
+    bases: Sequence[str],
+    figure: Figure,
+) -> None:
+    width = 72.0 * float(figure.get_size_inches()[0])
+    heights = [_BAR + _LINE * n.count("\n") for n in names]
+    tops = [0.0, *accumulate(heights)]
+    middles = [(a + b) / 2.0 for a, b in pairwise(tops)]
+    left = 12.0 + max(widest(n, _SIZE) for n in names)
+    axes = add_panel(figure, left, 28.0, width - left - 20.0, tops[-1] + 2.0)
+    for middle, (_, share, basis) in zip(middles, bars, strict=True):
+        shade = _SHADES["assumed" if basis == "own" else basis]
+        dash = (0, (1.5, 1.0)) if basis == "own" else "solid"
+        axes.barh(
+            middle, share, height=0.66 * _BAR, color=shade, edgecolor=INK, linewidth=0.6,
+            linestyle=dash,
+        )  # fmt: skip
+        _value(axes, share, middle)
+    axes.set_yticks(middles, names)
+    axes.set_ylim(tops[-1] + 1.0, -1.0)
+    axes.margins(x=0.09)
+    axes.grid(visible=False, axis="y")
+    axes.tick_params(axis="y", length=0)
+    axes.axvline(0.0, color=INK, linewidth=0.6)
+    axes.set_xlabel("share of the variance of KG [%]")
+    patches = [
+        Patch(
+            facecolor=_SHADES["assumed" if b == "own" else b], edgecolor=INK, linewidth=0.6,
+            linestyle=(0, (1.5, 1.0)) if b == "own" else "solid",
+        )
+        for b in bases
+    ]  # fmt: skip
+    legend(figure, patches, [_WORDS[b] for b in bases])
 
 
 def _basis(line: BudgetLine) -> str:
@@ -72,7 +97,7 @@ def _basis(line: BudgetLine) -> str:
     return {STATED: "stated", SEEN: "seen"}.get(line.basis, "estimated")
 
 
-def _value(axes: Axes, share: float, height: int) -> None:
+def _value(axes: Axes, share: float, height: float) -> None:
     """The share at the outer end of its bar."""
     axes.annotate(
         f"{share:.1f}".replace("-", "−"),
@@ -85,24 +110,17 @@ def _value(axes: Axes, share: float, height: int) -> None:
     )
 
 
-def _shades(figure: Figure, bases: dict[str, None]) -> None:
-    keys = [
-        Patch(
-            facecolor=_SHADES["assumed" if b == "own" else b],
-            edgecolor="black",
-            linewidth=0.6,
-            linestyle=(0, (1.5, 1.0)) if b == "own" else "solid",
-            label=_WORDS[b],
-        )
-        for b in bases
-    ]
-    figure.legend(handles=keys, loc="upper left", ncols=len(keys), columnspacing=1.4)
-
-
 def distribution_plot(
     run: Simulation, kg: Simulated, found: Estimate, limit: float | None, show: Show, width: float
-) -> Figure:
+) -> Plot:
     """The simulated KG as steps, the first-order curve over it, interval ends, and the limit."""
+    return Plot(width, 190.0, partial(_distribution, run, kg, found, limit, show))
+
+
+def _distribution(
+    run: Simulation, kg: Simulated, found: Estimate, limit: float | None, show: Show, figure: Figure
+) -> None:
+    width = 72.0 * float(figure.get_size_inches()[0])
     value, u, scale = found.value or 0.0, found.u or 0.0, show.scale("length")
     reach = max(_REACH * u, 1.2 * (kg.symmetric[1] - kg.symmetric[0]) / 2.0)
     low, high = value - reach, value + reach
@@ -113,32 +131,29 @@ def distribution_plot(
         c * scale / (run.draws * (b - a))
         for c, a, b in zip(counts, edges[:-1], edges[1:], strict=True)
     ]
-    with drawing_style():
-        figure = blank_figure(width, 190.0)
-        axes = add_panel(figure, 46.0, 28.0, width - 54.0, 140.0)
-        axes.stairs(
-            heights, [e / scale for e in edges], fill=True, facecolor="0.85", edgecolor="0.45",
-            linewidth=0.6, label="simulated",
-        )  # fmt: skip
-        if u > 0.0:
-            places = [low + (high - low) * i / 240.0 for i in range(241)]
-            curve = [density((x - value) / u, found.dof) * scale / u for x in places]
-            axes.plot(
-                [x / scale for x in places],
-                curve,
-                color="black",
-                linewidth=1.0,
-                label="first order",
-            )
-        _ends(axes, kg, found, scale)
-        if limit is not None and low <= limit <= high:
-            axes.axvline(limit / scale, color="black", linewidth=1.8, label="limit of the trial")
-        axes.set_xlim(low / scale, high / scale)
-        axes.set_ylim(bottom=0.0)
-        axes.set_xlabel(f"KG of lightship [{show.unit('length')}]")
-        axes.set_ylabel(f"density [1/{show.unit('length')}]")
-        figure.legend(*axes.get_legend_handles_labels(), loc="upper left", ncols=5)
-    return figure
+    axes = add_panel(figure, 46.0, 28.0, width - 54.0, 140.0)
+    axes.stairs(
+        heights, [e / scale for e in edges], fill=True, facecolor="0.85", edgecolor="0.45",
+        linewidth=0.6, label="simulated",
+    )  # fmt: skip
+    if u > 0.0:
+        places = [low + (high - low) * i / 240.0 for i in range(241)]
+        curve = [density((x - value) / u, found.dof) * scale / u for x in places]
+        axes.plot(
+            [x / scale for x in places],
+            curve,
+            color=INK,
+            linewidth=1.0,
+            label="first order",
+        )
+    _ends(axes, kg, found, scale)
+    if limit is not None and low <= limit <= high:
+        axes.axvline(limit / scale, color=INK, linewidth=1.8, label="limit of the trial")
+    axes.set_xlim(low / scale, high / scale)
+    axes.set_ylim(bottom=0.0)
+    axes.set_xlabel(f"KG of lightship [{show.unit('length')}]")
+    axes.set_ylabel(f"density [1/{show.unit('length')}]")
+    legend(figure, *axes.get_legend_handles_labels())
 
 
 def _ends(axes: Axes, kg: Simulated, found: Estimate, scale: float) -> None:
@@ -150,7 +165,7 @@ def _ends(axes: Axes, kg: Simulated, found: Estimate, scale: float) -> None:
     ):
         for i, end in enumerate(ends):
             axes.axvline(
-                end / scale, color="black", linewidth=0.9, linestyle=dash,
+                end / scale, color=INK, linewidth=0.9, linestyle=dash,
                 label="_" if i else name,
             )  # fmt: skip
 

@@ -3,9 +3,10 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from functools import partial
 from typing import TYPE_CHECKING
 
-from incline.report.figure_style import GREY, add_panel, blank_figure, drawing_style
+from incline.report.figure_style import GREY, INK, Mark, Plot, add_panel, key, legend, ring
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -36,11 +37,16 @@ class _Profile:
     up: float
 
 
-def waterline_plot(line: Waterline, lpp: float, show: Show, width: float) -> Figure:
+def waterline_plot(line: Waterline, lpp: float, show: Show, width: float) -> Plot:
     """Drafts and fitted waterline above the baseline; below, both less the straight line.
 
-    Both panels state how much their heights are exaggerated.
+    Both panels state how much their heights are exaggerated. In the lower one a stem is a residual.
     """
+    return Plot(width, 262.0, partial(_both, line, lpp, show))
+
+
+def _both(line: Waterline, lpp: float, show: Show, figure: Figure) -> None:
+    width = 72.0 * float(figure.get_size_inches()[0])
     metre, small = show.scale("length"), show.scale("reading")
     shares = [i / 40.0 for i in range(41)]
     bend = tuple((line.deflection or 0.0) * (1.0 - (2.0 * s - 1.0) ** 2) for s in shares)
@@ -54,26 +60,33 @@ def waterline_plot(line: Waterline, lpp: float, show: Show, width: float) -> Fig
     bent = _Profile(
         bend, tuple(_bend_at(line, r.x / lpp) + r.residual for r in line.residuals), metre, small
     )
-    with drawing_style():
-        figure = blank_figure(width, 258.0)
-        size = (width - 48.0, 84.0)
-        upper = add_panel(figure, 40.0, 138.0, *size)
-        lower = add_panel(figure, 40.0, 27.0, size[0], 80.0)
-        tall = _draw(upper, whole, line, lpp, size, [0.0])
-        # At least 4 mm of height, so that rounding alone does not fill the panel.
-        steep = _draw(lower, bent, line, lpp, (size[0], 80.0), [-2e-3, 2e-3])
-        upper.axhline(0.0, color="black", linewidth=0.9)
-        upper.text(lpp / 2.0 / metre, 0.0, "baseline", ha="center", va="bottom", fontsize=6.5)
-        upper.set_title(f"Drafts and fitted waterline; heights {tall:g} times the lengths")
-        upper.set_ylabel(f"above baseline [{show.unit('length')}]")
-        lower.set_title(
-            f"Less the straight line between the perpendiculars, list taken out; "
-            f"heights {steep:g} times the lengths"
-        )
-        lower.set_ylabel(f"deflection [{show.unit('reading')}]")
-        lower.set_xlabel(f"x forward of the after perpendicular [{show.unit('length')}]")
-        figure.legend(*upper.get_legend_handles_labels(), loc="upper left", ncols=4)
-    return figure
+    size = (width - 48.0, 84.0)
+    upper = add_panel(figure, 40.0, 142.0, *size)
+    lower = add_panel(figure, 40.0, 27.0, size[0], 84.0)
+    tall = _draw(upper, whole, line, lpp, size, [0.0])
+    # At least 4 mm of height, so that rounding alone does not fill the panel.
+    steep = _draw(lower, bent, line, lpp, size, [-2e-3, 2e-3])
+    _stems(lower, line, bent, lpp)
+    upper.axhline(0.0, color=INK, linewidth=0.9)
+    upper.text(lpp / 2.0 / metre, 0.0, "baseline", ha="center", va="bottom", fontsize=6.5)
+    upper.set_title(f"Drafts and fitted waterline; heights {tall:g} times the lengths")
+    upper.set_ylabel(f"above baseline [{show.unit('length')}]")
+    what = "Deflection" if line.deflection is not None else "Straight line"
+    lower.set_title(
+        f"{what} and residuals, trim and list taken out; heights {steep:g} times the lengths"
+    )
+    lower.set_ylabel(f"sag +, hog − [{show.unit('reading')}]")
+    lower.set_xlabel(f"x forward of the after perpendicular [{show.unit('length')}]")
+    if any(r.flagged for r in line.residuals):
+        key(upper, Mark("o", INK, (0, ()), "none"), "ringed: flagged", 8.0)
+    legend(figure, *upper.get_legend_handles_labels())
+
+
+def _stems(axes: Axes, line: Waterline, profile: _Profile, lpp: float) -> None:
+    """From the curve to each reading: its residual."""
+    for r, height in _pairs(line, profile):
+        ends = (_bend_at(line, r.x / lpp) / profile.up, height / profile.up)
+        axes.plot([r.x / profile.across] * 2, ends, color=GREY, linewidth=0.6, zorder=1)
 
 
 def _bend_at(line: Waterline, share: float) -> float:
@@ -100,9 +113,7 @@ def _draw(
             (x + 0.005 * lpp) / profile.across, high / profile.up, name, va="top", fontsize=6.5
         )
     along = [lpp * i / 40.0 / profile.across for i in range(41)]
-    axes.plot(
-        along, [c / profile.up for c in profile.curve], color="black", label="fitted waterline"
-    )
+    axes.plot(along, [c / profile.up for c in profile.curve], color=INK, label="fitted waterline")
     for side, (shape, name) in _SIDES.items():
         _dots(
             axes, shape, name, profile, [(r, h) for r, h in _pairs(line, profile) if r.side == side]
@@ -130,15 +141,14 @@ def _dots(
         [h / profile.up for _, h in some],
         linestyle="none",
         marker=shape,
-        color="black",
-        markerfacecolor="white" if name == "port" else "black",
+        color=INK,
+        markerfacecolor="white" if name == "port" else INK,
         markeredgewidth=0.8,
         label=f"mark, {name}",
         clip_on=False,
     )
     odd = [(r.x / profile.across, h / profile.up) for r, h in some if r.flagged]
-    for place in odd:
-        axes.plot(*place, marker="o", markersize=10.0, color="black", markerfacecolor="none")
+    ring(axes, [x for x, _ in odd], [h for _, h in odd])
 
 
 def _limits(heights: Sequence[float], natural: float) -> tuple[float, float, float]:

@@ -140,7 +140,7 @@ def _less(value: float | None, base: float | None) -> float | None:
 
 def _left(sheet: Sheet, base: Sequence[float]) -> list[Any]:
     rest = _plot(sheet, base, ())
-    return [*part("What is left when the findings are taken out", rest.height + 16), rest]
+    return [*part("What is left when the findings are taken out", rest.height + 24.0), rest]
 
 
 def _unseen(sheet: Sheet, unseen: Sequence[Unseen]) -> list[Any]:

@@ -8,9 +8,9 @@ from incline.report.canvas_backend import FigureFlowable
 from incline.report.document import Sheet, note, paragraph, part
 from incline.report.figures_waterline import waterline_plot
 from incline.report.hull import hull_entry
-from incline.report.show import MISSING, NOT_DETERMINED, NOT_RECORDED
+from incline.report.show import NOT_DETERMINED, NOT_RECORDED
 from incline.report.table_rows import table_rows
-from incline.report.tables import Column, facts, grid, steps
+from incline.report.tables import Column, facts, grid
 
 if TYPE_CHECKING:
     from incline.result import DraftResidual
@@ -113,7 +113,7 @@ def _waterline(sheet: Sheet) -> list[Any]:
     flow = FigureFlowable(figure)
     return [
         facts(pairs, sheet.width, abreast=2),
-        *part("Profile of the measured waterline", flow.height + 26),
+        *part("Profile of the measured waterline", flow.height + 30),
         flow,
     ]
 
@@ -213,33 +213,20 @@ def _entry(sheet: Sheet) -> list[Any]:
 
 
 def _displacement(sheet: Sheet) -> list[Any]:
+    """What the calculation finds; its steps stand in a section of their own."""
     trial, show, state = sheet.reduction.trial, sheet.show, sheet.reduction.outcome.as_inclined
-    volume, density = show.number(state.volume, "volume", 3), show.number(state.density, "density")
     offsets = None if state.hull is None else trial.offsets
     allowance = trial.settings.allowance if offsets is None else offsets.allowance
-    if allowance is None:
-        formula, values = "Δ = ∇ ρ   (extreme volume)", f"{volume} × {density}"
-    else:
-        formula = "Δ = ∇ ρ (1 + a)   (moulded volume, shell and appendages a)"
-        values = f"{volume} × {density} × (1 + {show.plain(allowance, 5)})"
-    if show.system.name == "us":
-        values += " / 2240"
-    lcb = "LCB could not be found" if state.lcb is None else "at the trimmed waterline"
-    return [
-        steps(
-            (
-                (formula, values, sheet.full(state.displacement, "mass")),
-                (
-                    "KM = KB + BM",
-                    f"{show.number(state.kb, 'length')} + {show.number(state.bmt, 'length')}",
-                    sheet.full(state.kmt, "length"),
-                ),
-                (
-                    "LCB",
-                    lcb,
-                    MISSING if state.lcb is None else sheet.full(state.lcb, "length"),
-                ),
-            ),
-            sheet.width,
-        )
-    ]
+    extreme = "in the volume"
+    share = extreme if allowance is None else f"{show.plain(100.0 * allowance, 3)} %"
+    lcb = NOT_DETERMINED if state.lcb is None else sheet.full(state.lcb, "length")
+    pairs = (
+        ("Volume", sheet.full(state.volume, "volume", 3)),
+        ("Shell and appendages", share),
+        ("Displacement", sheet.full(state.displacement, "mass")),
+        ("LCB as trimmed", lcb),
+        ("KB", sheet.full(state.kb, "length")),
+        ("BM", sheet.full(state.bmt, "length")),
+        ("KM", sheet.full(state.kmt, "length")),
+    )
+    return [facts(pairs, sheet.width, abreast=2)]

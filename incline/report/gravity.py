@@ -6,7 +6,7 @@ from typing import TYPE_CHECKING, Any
 
 from incline.report.document import Sheet, note, paragraph, part
 from incline.report.show import MISSING, NOT_DETERMINED, NOT_RECORDED
-from incline.report.tables import Column, Row, grid, steps
+from incline.report.tables import Column, Row, facts, grid
 
 if TYPE_CHECKING:
     from collections.abc import Iterable
@@ -17,12 +17,12 @@ __all__ = ["centre_of_gravity"]
 
 
 def centre_of_gravity(sheet: Sheet) -> list[Any]:
-    """Tanks with their free surfaces, then KG, LCG and TCG line by line."""
+    """Tanks with their free surfaces, then KG, LCG and TCG."""
     return [
         *part("Liquids aboard and their free surfaces"),
         *_tanks(sheet),
         *part("Centre of gravity as inclined, test weights aboard at their start", 60.0),
-        steps(_lines(sheet), sheet.width),
+        facts(_found(sheet), sheet.width, abreast=2),
         note(
             "KG is solid: the virtual rise of G by slack liquids is taken out. KB, LCB and KM are "
             "at the waterline of the shifts."
@@ -90,53 +90,18 @@ def _tank(sheet: Sheet, tank: Tank) -> list[str]:
     ]
 
 
-def _lines(sheet: Sheet) -> list[tuple[str, str, str]]:
-    outcome, show = sheet.reduction.outcome, sheet.show
+def _found(sheet: Sheet) -> list[tuple[str, str]]:
+    outcome = sheet.reduction.outcome
     state, heel, free = outcome.as_inclined, outcome.heel, outcome.free_surface
-    weight = show.number(state.displacement, "mass")
-    km, gm, rise = (show.number(v, "length") for v in (state.kmt, heel.gm_fluid, free.correction))
+
+    def known(value: float | None, decimals: int) -> str:
+        return NOT_DETERMINED if value is None else sheet.full(value, "length", decimals)
+
     return [
-        (
-            "free-surface correction = ΣFSM / Δ",
-            f"{show.number(free.moment, 'moment')} / {weight}",
-            sheet.full(free.correction, "length"),
-        ),
-        (
-            "GM solid = GM fluid + correction",
-            f"{gm} + {rise}",
-            sheet.full(heel.gm_fluid + free.correction, "length"),
-        ),
-        (
-            "KG = KM − GM fluid − correction",
-            f"{km} − {gm} − {rise}",
-            sheet.full(state.vcg, "length"),
-        ),
-        _lcg_line(sheet),
-        _tcg_line(sheet),
+        ("GM fluid, as measured", known(heel.gm_fluid, 3)),
+        ("Virtual rise of G, ΣFSM / Δ", known(free.correction, 4)),
+        ("GM solid", known(heel.gm_fluid + free.correction, 3)),
+        ("KG", known(state.vcg, 3)),
+        ("LCG", known(state.lcg, 3)),
+        ("TCG", known(state.tcg, 4)),
     ]
-
-
-def _lcg_line(sheet: Sheet) -> tuple[str, str, str]:
-    state, show = sheet.reduction.outcome.as_inclined, sheet.show
-    formula = "LCG = LCB + τ (KG − KB)"
-    if state.lcg is None or state.lcb is None:
-        return formula, "see the remarks", NOT_DETERMINED
-    tau = state.trim / sheet.reduction.trial.vessel.lpp
-    values = (
-        f"{show.number(state.lcb, 'length')} + ({show.plain(tau, 6)}) × "
-        f"({show.number(state.vcg, 'length')} − {show.number(state.kb, 'length')})"
-    )
-    return formula, values, sheet.full(state.lcg, "length")
-
-
-def _tcg_line(sheet: Sheet) -> tuple[str, str, str]:
-    state, heel, show = (
-        sheet.reduction.outcome.as_inclined,
-        sheet.reduction.outcome.heel,
-        sheet.show,
-    )
-    formula = "TCG = GM fluid × tangent of list"
-    if state.tcg is None:
-        return formula, "see the remarks", NOT_DETERMINED
-    values = f"{show.number(heel.gm_fluid, 'length', 4)} × ({show.plain(state.list_tan, 6)})"
-    return formula, values, sheet.full(state.tcg, "length", 4)

@@ -7,14 +7,16 @@ from typing import TYPE_CHECKING, Any
 
 from incline.report.canvas_backend import FigureFlowable
 from incline.report.document import Sheet, note, part
-from incline.report.figures import common_plot, device_plots, residual_plot
+from incline.report.figure_points import named_by
+from incline.report.figures import common_plot, device_plots
+from incline.report.figures_residuals import residual_plot
 from incline.report.hull import methods
 from incline.report.rolling import rolling_period
 from incline.report.show import MISSING, signed
-from incline.report.tables import Column, grid, steps
+from incline.report.tables import Column, facts, grid
 
 if TYPE_CHECKING:
-    from incline.result import DeviceFit, HeelPoint
+    from incline.result import DeviceFit, HeelFit, HeelPoint
 
 __all__ = ["heel_fit"]
 
@@ -22,11 +24,12 @@ __all__ = ["heel_fit"]
 def heel_fit(sheet: Sheet) -> list[Any]:
     """The fit in numbers, then in plots, then point by point."""
     heel, show, width = sheet.reduction.outcome.heel, sheet.show, sheet.width
-    common = FigureFlowable(common_plot(heel, show, width))
-    rows = [FigureFlowable(f) for f in device_plots(heel, show, width)]
-    residuals = FigureFlowable(residual_plot(heel, show, width))
+    named = named_by(heel, sheet.reduction.diagnosis)
+    common = FigureFlowable(common_plot(heel, show, width, named))
+    rows = [FigureFlowable(f) for f in device_plots(heel, show, width, named)]
+    residuals = FigureFlowable(residual_plot(heel, show, width, named))
     return [
-        *part("Common line through all devices"),
+        *part(_title(heel)),
         _common(sheet),
         note(
             "Regression alone: the plain formula of least squares, which takes the readings as "
@@ -37,16 +40,22 @@ def heel_fit(sheet: Sheet) -> list[Any]:
         *_devices(sheet),
         *methods(sheet),
         *rolling_period(sheet),
-        *part("Tangent against moment", common.height + 16),
+        *part("Tangent against moment", common.height + 24.0),
         common,
-        *part("Tangent against moment, device by device", rows[0].height + 30 if rows else 0.0),
-        note("Solid: the line of the device alone. Dashed grey: the common slope."),
+        *part("Tangent against moment, device by device", rows[0].height + 40 if rows else 0.0),
+        note("Solid: a line through the device alone. Dashed grey: the common slope."),
         *rows,
-        *part("Residuals", residuals.height + 16),
+        *part("Residuals", residuals.height + 24.0),
         residuals,
         *part("Points of the fit"),
         _points(sheet),
     ]
+
+
+def _title(heel: HeelFit) -> str:
+    if heel.method == "straight-line":
+        return "Common line through all devices"
+    return "Common curve through all devices"
 
 
 def _per_moment(sheet: Sheet, slope: float | None) -> str:
@@ -58,38 +67,25 @@ def _per_moment(sheet: Sheet, slope: float | None) -> str:
 
 def _common(sheet: Sheet) -> Any:  # noqa: ANN401 - untyped library
     heel, show = sheet.reduction.outcome.heel, sheet.show
-    weight = sheet.reduction.outcome.as_inclined.displacement
     slope, unit = _per_moment(sheet, heel.slope), show.unit("moment")
     counted = sum(1 for p in heel.points if not p.excluded)
     error = show.full(heel.u_gm_fluid, "length", 4) if heel.u_gm_fluid is not None else MISSING
     spread = MISSING if heel.residual_sd is None else show.plain(heel.residual_sd, 6)
-    lines = (
-        (
-            "b, common slope of tangent on moment",
-            f"{counted} readings, {len(heel.devices)} devices, {heel.dof} degrees of freedom",
-            f"{slope} per {unit}",
-        ),
-        (
-            "standard error of b, regression alone",
-            "",
-            f"{_per_moment(sheet, heel.u_slope)} per {unit}",
-        ),
-        ("1 / b, moment for unit tangent", f"1 / {slope}", show.full(1.0 / heel.slope, "moment")),
-        (
-            "GM fluid = 1 / (b Δ)",
-            f"{show.number(1.0 / heel.slope, 'moment')} / {show.number(weight, 'mass')}",
-            show.full(heel.gm_fluid, "length"),
-        ),
-        ("standard error of GM fluid, regression alone", "from that of b", error),
-        ("standard deviation of the residuals", "in tangents", spread),
-        (
-            "greatest heel",
-            f"to port {show.degrees(heel.max_heel_port)}°, "
-            f"to starboard {show.degrees(heel.max_heel_starboard)}°",
-            "",
-        ),
+    sides = ((heel.max_heel_port, "port"), (heel.max_heel_starboard, "starboard"))
+    line = heel.method == "straight-line"
+    name = "b, common slope of tangent on moment" if line else "b, slope of the curve upright"
+    pairs = (
+        (name, f"{slope} per {unit}"),
+        ("standard error of b, regression alone", f"{_per_moment(sheet, heel.u_slope)} per {unit}"),
+        ("1 / b, moment for unit tangent", show.full(1.0 / heel.slope, "moment")),
+        ("GM fluid = 1 / (b Δ)", show.full(heel.gm_fluid, "length")),
+        ("standard error of GM fluid, regression alone", error),
+        ("readings; devices", f"{counted}; {len(heel.devices)}"),
+        ("degrees of freedom", str(heel.dof)),
+        ("standard deviation of residuals", f"{spread}, as tangents"),
+        ("greatest heel", ", ".join(f"{show.degrees(h)}° to {side}" for h, side in sides)),
     )
-    return steps(lines, sheet.width)
+    return facts(pairs, sheet.width)
 
 
 def _devices(sheet: Sheet) -> list[Any]:

@@ -112,6 +112,7 @@ def methods(sheet: Sheet) -> list[Any]:
         Row((f"{heel.method} (used)", *_kg(sheet, used, used, heel.gm_fluid)), "total"),
         *(Row((m.method, *_kg(sheet, m.vcg, used, m.gm_fluid))) for m in heel.others),
     ]
+    balance = _balance(sheet)
     return [
         *part("Methods compared", plot.height + 90.0),
         grid(columns, rows, sheet.width),
@@ -123,6 +124,50 @@ def methods(sheet: Sheet) -> list[Any]:
             " A KG that is too low errs to the unsafe side."
         ),
         plot,
+        *balance,
+    ]
+
+
+def _balance(sheet: Sheet) -> list[Any]:
+    """The equilibrium of every shift in numbers; nothing for a straight line."""
+    outcome, show = sheet.reduction.outcome, sheet.show
+    heel, ship = outcome.heel, outcome.as_inclined
+    levers = heel.levers
+    if heel.method == "straight-line" or levers is None or ship.tcg is None:
+        return []
+    length = show.unit("length")
+    columns = (
+        Column("shift", 0.10, "left"),
+        Column("t", 0.14),
+        Column(f"N(t) [{length}]", 0.15),
+        Column(f"(KG + H/Δ) t [{length}]", 0.17),
+        Column(f"liquids/Δ [{length}]", 0.14),
+        Column(f"M/Δ [{length}]", 0.14),
+        Column(f"remainder [{show.unit('reading')}]", 0.16),
+    )
+    rows = []
+    for s, t, n, moved in zip(
+        heel.shifts, levers.shifts, levers.balance, levers.liquids, strict=True
+    ):
+        own = (ship.vcg + s.vertical / ship.displacement) * t
+        wet, moment = moved / ship.displacement, s.transverse / ship.displacement
+        left = n - own - ship.tcg - wet - moment
+        parts = [show.number(v, "length", 6) for v in (n, own, wet, moment)]
+        remainder = show.number(left, "reading", 3)
+        rows.append(Row((str(s.shift), show.plain(t, 6), *parts, remainder)))
+    where = (
+        "integrated at the settled waterline" if heel.method == "heeled-hull" else "KM t + BM t³/2"
+    )
+    return [
+        *part("Balance at every shift"),
+        grid(columns, rows, sheet.width),
+        note(
+            f"N(t), {where}, less all that stands beside it and TCG ="
+            f" {show.full(ship.tcg, 'length', 6)}, leaves the remainder: nothing. t is the heel by"
+            f" the fit, KG = {show.full(ship.vcg, 'length', 6)}. A reading is its device's zero"
+            " plus t less the list; KG is the one that leaves the least sum of squares of the"
+            " readings."
+        ),
     ]
 
 

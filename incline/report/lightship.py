@@ -5,106 +5,61 @@ from __future__ import annotations
 from dataclasses import replace
 from typing import TYPE_CHECKING, Any
 
+from incline.report.canvas_backend import FigureFlowable
 from incline.report.document import Sheet, note, paragraph, part
+from incline.report.figures_ledger import waterfall_plot
 from incline.report.show import MISSING, NOT_DETERMINED, Kind, signed
-from incline.report.tables import Column, Row, grid
+from incline.report.steps import calculation_of
+from incline.report.steps_page import board_table
+from incline.report.tables import Column, grid
 
 if TYPE_CHECKING:
     from collections.abc import Iterable
 
-    from incline.report.show import Show
-    from incline.result import LedgerLine, Outcome
+    from incline.report.steps import Board
+    from incline.result import Outcome
 
 __all__ = ["all_counted", "to_lightship"]
 
-_ACTIONS = {
-    "deduct": "Deduct: aboard at the test, no part of lightship",
-    "add": "Add: part of lightship, not yet aboard",
-    "relocate": "Relocate: aboard, but not in its final place",
-}
+_NAMES: dict[str, Kind] = {
+    "mass": "mass", "x": "length", "y": "length", "z": "length",
+    "mass × x": "moment", "mass × y": "moment", "mass × z": "moment",
+}  # fmt: skip
+"""Headings of the ledger after the item, and their kinds."""
 
 
 def to_lightship(sheet: Sheet) -> list[Any]:
     """All lines with masses, centres and moments; totals; self-check."""
-    outcome, show = sheet.reduction.outcome, sheet.show
-    length, moment = sheet.units("length"), sheet.units("moment")
-    columns = (
-        Column("item", 0.28, "left"),
-        Column(f"mass [{sheet.units('mass')}]", 0.11),
-        *(Column(f"{axis} [{length}]", 0.09) for axis in "xyz"),
-        *(Column(f"mass × {axis} [{moment}]", 0.115) for axis in "xyz"),
-    )
-    rows = _rows(outcome, show)
+    found, other = calculation_of(sheet), None
     if sheet.beside is not None:
-        rows = _in_both(rows, _rows(outcome, sheet.beside))
-    return [grid(columns, rows, sheet.width), *_sums(sheet), *_bases(sheet)]
+        also = calculation_of(replace(sheet, show=sheet.beside))
+        other = (also.ledger, also.digits)
+    table = board_table(_headed(sheet, found.ledger), found.digits, sheet.width, other)
+    return [*table, *_sums(sheet), *_waterfall(sheet), *_bases(sheet)]
 
 
-def _rows(outcome: Outcome, show: Show) -> list[Row]:
-    """As inclined, every line by what is done with it, lightship; in one unit system."""
-    state, light = outcome.as_inclined, outcome.lightship
-    rows = [_total(show, "As inclined", state.displacement, (state.lcg, state.tcg, state.vcg))]
-    for action, title in _ACTIONS.items():
-        rows += _group(show, title, [x for x in outcome.ledger.lines if x.action == action])
-    centre = (light.lcg.value, light.tcg.value, light.vcg.value)
-    return [*rows, _total(show, "Lightship", light.displacement.value, centre)]
-
-
-def _in_both(rows: list[Row], others: list[Row]) -> list[Row]:
-    """Each row of numbers with the same in other units below them."""
-    return [
-        replace(own, other=("", *other.cells[1:])) if any(other.cells[1:]) else own
-        for own, other in zip(rows, others, strict=True)
+def _headed(sheet: Sheet, board: Board) -> Board:
+    """The ledger with both units in its headings where both are printed."""
+    heads = [
+        replace(head, markup=f"{name} [{sheet.units(kind)}]")
+        for head, (name, kind) in zip(board.heads[1:], _NAMES.items(), strict=True)
     ]
+    return replace(board, heads=(board.heads[0], *heads))
 
 
-def _total(
-    show: Show,
-    name: str,
-    mass: float | None,
-    centre: tuple[float | None, float | None, float | None],
-) -> Row:
-    places = [show.number(c, "length") for c in centre]
-    moments = [show.mass_by_length(mass, c) for c in centre]
-    return Row((name, show.number(mass, "mass"), *places, *moments), "total")
-
-
-def _group(show: Show, title: str, lines: list[LedgerLine]) -> list[Row]:
-    """The lines of one action under their heading, with the sum of mass and moments."""
-    rows = [Row((title, *[""] * 7), "band")]
-    if not lines:
-        return [*rows, Row(("none", *[""] * 7))]
-    rows += [_line(show, line) for line in lines]
-    sign = -1.0 if lines[0].action == "deduct" else 1.0
-    mass = sign * sum(line.mass for line in lines)
-    text = show.number(mass, "mass")
-    if lines[0].action == "relocate":
-        text = f"({text})"
-    moments = [show.number(sum(_moment(line)[i] for line in lines), "moment") for i in range(3)]
-    return [*rows, Row(("sum", text, "", "", "", *moments), "total")]
-
-
-def _moment(line: LedgerLine) -> tuple[float, float, float]:
-    """What the line adds to the three first moments [t m]."""
-    at = (line.centre.x, line.centre.y, line.centre.z)
-    if line.to is not None:
-        to = (line.to.x, line.to.y, line.to.z)
-        x, y, z = (line.mass * (b - a) for a, b in zip(at, to, strict=True))
-        return x, y, z
-    sign = -1.0 if line.action == "deduct" else 1.0
-    x, y, z = (sign * line.mass * a for a in at)
-    return x, y, z
-
-
-def _line(show: Show, line: LedgerLine) -> Row:
-    mass = show.number(line.mass if line.action != "deduct" else -line.mass, "mass")
-    places = [show.number(c, "length") for c in (line.centre.x, line.centre.y, line.centre.z)]
-    if line.to is not None:
-        mass = f"({mass})"
-        ends = (show.number(c, "length") for c in (line.to.x, line.to.y, line.to.z))
-        places = [f"{a}\n→ {b}" for a, b in zip(places, ends, strict=True)]
-    name = line.name if line.source == "ledger" else f"{line.name} [{line.source}]"
-    return Row((name, mass, *places, *(show.number(m, "moment") for m in _moment(line))))
+def _waterfall(sheet: Sheet) -> list[Any]:
+    outcome = sheet.reduction.outcome
+    if not outcome.ledger.lines:
+        return []
+    picture = FigureFlowable(waterfall_plot(outcome, sheet.show, sheet.width))
+    return [
+        *part("From KG as inclined to KG of the lightship", picture.height + 24.0),
+        picture,
+        note(
+            "What an item changes depends on what has gone before it; small ones stand together. "
+            "−: taken off, +: added, →: moved."
+        ),
+    ]
 
 
 def _sums(sheet: Sheet) -> list[Any]:

@@ -104,7 +104,7 @@ def _shape(sheet: Sheet, run: Simulation) -> list[Any]:
         return []
     most = sheet.reduction.trial.settings.kg_limit
     picture = FigureFlowable(distribution_plot(run, kg, found, most, sheet.show, sheet.width))
-    return [*part("Distribution of KG", picture.height + 16.0), picture]
+    return [*part("Distribution of KG", picture.height + 24.0), picture]
 
 
 def intervals(sheet: Sheet) -> list[Any]:

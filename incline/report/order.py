@@ -22,6 +22,7 @@ from incline.report.monte_carlo import monte_carlo
 from incline.report.particulars import conventions, test, vessel
 from incline.report.readings import devices_and_readings
 from incline.report.rules import rules
+from incline.report.steps_page import calculation
 from incline.report.uncertainty import budget_pages, uncertainty
 from incline.report.unrecorded import unrecorded
 from incline.report.weights import weights_and_moments
@@ -49,6 +50,7 @@ _SECTIONS: _Sections = (
     ("Anomalies and explanations", anomalies),
     ("From GM to the centre of gravity", centre_of_gravity),
     ("From as inclined to lightship", to_lightship),
+    ("Calculation, step by step", calculation),
     ("With the excluded readings counted", all_counted),
     ("Uncertainty", uncertainty),
     ("Cautions, and who decides", cautions),

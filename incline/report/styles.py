@@ -40,6 +40,7 @@ STYLES: dict[str, ParagraphStyle] = {
         _style("body", 8.2, 11.3, spaceAfter=4),
         _style("bullet", 8.2, 11.3, leftIndent=12, bulletIndent=2, spaceAfter=2.5),
         _style("note", 7, 9.2, spaceAfter=5),
+        _style("caption", 7.2, 9.2, BOLD, spaceBefore=3, keepWithNext=1),
         _style("cell_left", 7.2, 8.9, alignment=TA_LEFT),
         _style("cell_right", 7.2, 8.9, alignment=TA_RIGHT),
         _style("beside_left", 6.4, 7.9, alignment=TA_LEFT),

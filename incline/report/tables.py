@@ -15,9 +15,9 @@ from incline.report.text import markup
 if TYPE_CHECKING:
     from collections.abc import Iterable, Sequence
 
-__all__ = ["Column", "Listed", "Row", "facts", "grid", "steps"]
+__all__ = ["SHADE", "Column", "Listed", "Row", "facts", "grid", "steps"]
 
-_SHADE = Color(0.93, 0.93, 0.93)
+SHADE = Color(0.93, 0.93, 0.93)
 _PAD = 1.6
 _PAGE, _ENOUGH = 600.0, 300.0
 """Points of height that every empty page has, and in which a row taller than that may begin."""
@@ -96,12 +96,12 @@ def _looks(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
     commands: list[tuple[Any, ...]] = []
     for i, row in enumerate(rows, start=1):
         if row.look == "band":
-            commands += [("SPAN", (0, i), (-1, i)), ("BACKGROUND", (0, i), (-1, i), _SHADE)]
+            commands += [("SPAN", (0, i), (-1, i)), ("BACKGROUND", (0, i), (-1, i), SHADE)]
             commands.append(("NOSPLIT", (0, i), (-1, min(i + 1, len(rows)))))  # nor a heading
         elif row.look == "span":
             commands.append(("SPAN", (0, i), (-1, i)))
         elif row.look == "stress":
-            commands.append(("BACKGROUND", (0, i), (-1, i), _SHADE))
+            commands.append(("BACKGROUND", (0, i), (-1, i), SHADE))
         elif row.look == "under":
             commands += _under(i, stressed=i > 1 and rows[i - 2].look == "stress")
         elif row.look == "beside":
@@ -115,7 +115,7 @@ def _looks(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
 
 def _under(i: int, *, stressed: bool) -> list[tuple[Any, ...]]:
     """Row ``i`` joined to the one above it: no rule between them, the same shade."""
-    shade = [("BACKGROUND", (0, i), (-1, i), _SHADE)] if stressed else []
+    shade = [("BACKGROUND", (0, i), (-1, i), SHADE)] if stressed else []
     return [
         ("SPAN", (1, i), (-1, i)),
         ("TOPPADDING", (0, i), (-1, i), 0),

@@ -5,6 +5,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING, Any
 
 from incline.report.document import Sheet, note, paragraph, part
+from incline.report.plan import plan
 from incline.report.show import NOT_RECORDED
 from incline.report.tables import Column, grid
 
@@ -25,6 +26,7 @@ def weights_and_moments(sheet: Sheet) -> list[Any]:
     if not trial.weights:
         return [
             paragraph("The trial gives the moments themselves; test weights are not recorded."),
+            *plan(sheet),
             *part("Moments about the start positions"),
             *_moments(sheet),
         ]
@@ -41,6 +43,7 @@ def weights_and_moments(sheet: Sheet) -> list[Any]:
             "moved at a shift. Where a weight also moved along the ship or up, its new x or z "
             "stands below."
         ),
+        *plan(sheet),
         *part("Moments about the start positions"),
         *_moments(sheet),
     ]
