@@ -72,8 +72,9 @@ def _gravity(sheet: Sheet) -> Chapter:
             Lay("KG, solid", kg, km - gm - rise),
         ]
     else:
+        how = "by the balance at every shift, see “Methods compared”"
         steps += [
-            Lay("KG, liquids free to move", fluid, how="by the balance at every shift, see “Methods compared”"),
+            Lay("KG, liquids free to move", fluid, how=how),
             Lay("KG, solid", kg, fluid - rise),
             Lay("GM, liquids free to move, upright", gm, km - fluid),
         ]  # fmt: skip
