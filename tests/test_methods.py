@@ -163,7 +163,9 @@ def _curvature_line(result):
 @pytest.fixture(scope="module")
 def patrol(tmp_path_factory):
     folder = tmp_path_factory.mktemp("patrol")
-    truth = write_hull_trial(folder, PATROL, degrees=(0.0, 1.5, 3.0, 0.0, -1.5, -3.0))
+    truth = write_hull_trial(
+        folder, PATROL, degrees=(0.0, 1.5, 3.0, 0.0, -1.5, -3.0), deflection=0.0
+    )
     return folder, truth, reduce(read_trial(folder))
 
 
@@ -235,19 +237,20 @@ def test_table_in_place_of_the_offsets(patrol, tmp_path):
     assert beside.outcome.lightship.vcg.value == pytest.approx(
         exact.outcome.lightship.vcg.value, abs=1e-12
     )
-    # Neither a list of 0.2 deg nor a deflection of 20 mm is in the table: the latter only as a draft,
-    # though its water lies nearer amidships than the waterplane's own centre.
+    # The table's figures have five decimals; a list of 0.2 deg is not in it, which adds a volume of
+    # BM t^2 / 2 times the flare's tangent: below 1e-4 of it.
     share, km, lcb = beside.outcome.as_inclined.hull.table
-    assert abs(share) < 5e-4
-    assert abs(km) < 2e-3
-    assert abs(lcb) < 1e-2
+    assert abs(share) < 1e-4
+    assert abs(km) < 5e-5
+    assert abs(lcb) < 5e-5
+    assert any("The hydrostatic table is not used" in r for r in beside.remarks)
     toml.write_text(f'{both}use = "table"\n\n{text}', encoding="utf-8")
     entered = reduce(read_trial(there)).outcome
     assert entered.heel.method == "straight-line"
     assert [m.method for m in entered.heel.others] == ["wall-sided"]
     assert entered.as_inclined.hull is None
     line = next(m for m in exact.outcome.heel.others if m.method == "straight-line")
-    assert entered.lightship.vcg.value - km == pytest.approx(line.vcg, abs=5e-4)
+    assert entered.lightship.vcg.value == pytest.approx(line.vcg, abs=2e-4)
 
 
 def noisy(folder, sd):
