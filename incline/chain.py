@@ -247,11 +247,13 @@ def _straight(
     )
 
 
-_ROUNDS = 6
+_ROUNDS = 12
 """Gauss-Newton rounds for KG, each with one Newton step for the heels; the curve is so nearly
-straight that each round gains about three digits."""
+straight that each round gains two or three digits and half as many rounds do."""
 _NEAR = 1e-8
 """Change of KG [m] in all draws below which the next round would change nothing that counts."""
+_FOUND = 1e-5
+"""Last change of KG [m] above which it has not been found, and is NaN."""
 
 
 def _curved(
@@ -266,8 +268,10 @@ def _curved(
 
     N(t) + km_shift t = (KG + H / D) t + TCG + (M + liquids(t)) / D, less the same at the start with
     M = H = 0, gives the heel t of each shift for a KG; KG minimises the residuals of all readings
-    with a zero for each device. Starts from the straight line.
+    with a zero for each device. Starts from the straight line. NaN where no KG is found.
     """
+    import numpy as np
+
     if plan.lever is None:
         return line
     b, fsm = ship.buoyancy, given.fsm
@@ -297,6 +301,7 @@ def _curved(
         heel = heel + by_vcg * step[..., None]
         if not (abs(step) > _NEAR).any():
             break
+    vcg = np.where(abs(step) > _FOUND, np.nan, vcg)
     slope = 1.0 / ((km - vcg) * ship.displacement - fsm.sum(axis=-1))
     regressor = by_vcg / (slope**2 * ship.displacement)[..., None]
     bend = heel - start - slope[..., None] * regressor
