@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from incline.errors import InclineError
-from incline.files import templates_folder, write_whole
+from incline.files import make_folder, templates_folder, write_whole
 
 if TYPE_CHECKING:
     from pathlib import Path
@@ -20,10 +20,7 @@ def start_trial(folder: Path, units: str) -> list[str]:
     if folder.is_dir() and any(folder.iterdir()):
         raise InclineError(f"{folder} is not empty; give the name of a new folder")
     blank = sorted(templates_folder().joinpath(units).iterdir())
-    try:
-        folder.mkdir(parents=True, exist_ok=True)
-    except OSError as error:
-        raise InclineError(f"cannot make {folder}: {error.strerror}") from error
+    make_folder(folder)
     for source in blank:
         write_whole(folder / source.name, source.read_bytes())
     return sorted((source.name for source in blank), key=lambda n: (n != "trial.toml", n))

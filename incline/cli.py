@@ -4,10 +4,11 @@ from __future__ import annotations
 
 import datetime
 import math
+import os
 import sys
 from enum import StrEnum
 from pathlib import Path
-from typing import TYPE_CHECKING, Annotated, TypeAlias
+from typing import TYPE_CHECKING, Annotated, Literal, TypeAlias
 
 import typer
 
@@ -15,6 +16,7 @@ from incline.errors import FieldDataError, InclineError
 
 if TYPE_CHECKING:
     from incline.comparison import Situation
+    from incline.record import Trial
     from incline.units import Quantity
 
 __all__ = ["app", "main"]
@@ -29,7 +31,7 @@ app = typer.Typer(
     context_settings={"help_option_names": ["-h", "--help"]},
 )
 
-Trial = Annotated[Path, typer.Argument(help="Folder with the records of one trial.")]
+Folder = Annotated[Path, typer.Argument(help="Folder with the records of one trial.")]
 Draws: TypeAlias = Annotated[
     int | None,
     typer.Option(
@@ -46,8 +48,25 @@ class Units(StrEnum):
     us = "us"
 
 
+class Shown(StrEnum):
+    """Units of a report."""
+
+    metric = "metric"
+    us = "us"
+    both = "both"
+
+
+class Paper(StrEnum):
+    """Paper of a report or of field sheets."""
+
+    a4 = "a4"
+    letter = "letter"
+
+
 def main() -> None:
     """Run the command line; user errors become lines on standard error and exit status 1."""
+    # The sums are small: threads of the linear algebra wait for one another longer than they work.
+    os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
     for stream in (sys.stdout, sys.stderr):
         if hasattr(stream, "reconfigure"):
             stream.reconfigure(errors="backslashreplace")
@@ -60,12 +79,18 @@ def main() -> None:
 
 
 def _complain(lines: list[str]) -> None:
-    many = len(lines) > 1
-    if many:
-        print(f"incline: {len(lines)} problems", file=sys.stderr)
-    for line in lines:
-        print(_folded(f"  {line}" if many else f"incline: {line}"), file=sys.stderr)
+    if len(lines) > 1:
+        _tell(f"{len(lines)} problems", lines)
+    else:
+        print(_folded(f"incline: {lines[0]}"), file=sys.stderr)
     raise SystemExit(1)
+
+
+def _tell(title: str, lines: list[str]) -> None:
+    """A list on standard error."""
+    print(f"incline: {title}", file=sys.stderr)
+    for line in lines:
+        print(_folded(f"  {line}"), file=sys.stderr)
 
 
 def _folded(line: str) -> str:
@@ -108,7 +133,7 @@ def start(
 
 
 @app.command()
-def check(trial: Trial) -> None:
+def check(trial: Folder) -> None:
     """Read a trial, say all that is wrong with it, and hold it against the published criteria.
 
     Exit status 3 when a criterion is not met. Example: incline check my-vessel
@@ -130,7 +155,7 @@ def check(trial: Trial) -> None:
 
 @app.command()
 def reduce(
-    trial: Trial,
+    trial: Folder,
     json: Annotated[
         str | None,
         typer.Option(metavar="FILE|-", help="Write the result as JSON (- : to the screen)."),
@@ -169,9 +194,20 @@ def reduce(
 
 @app.command()
 def report(
-    trial: Trial,
+    trial: Folder,
     output: Annotated[
         Path | None, typer.Option("--output", "-o", metavar="FILE", help="Name of the PDF.")
+    ] = None,
+    units: Annotated[
+        Shown | None,
+        typer.Option(help="Units, in place of the trial's; both: metric with US beside it."),
+    ] = None,
+    paper: Annotated[
+        Paper | None, typer.Option(help="Paper, in place of the one that goes with the units.")
+    ] = None,
+    tables: Annotated[
+        Path | None,
+        typer.Option(metavar="DIR", help="Also write every table as CSV, and the JSON, there."),
     ] = None,
     draws: Draws = None,
     force: Force = False,
@@ -180,25 +216,48 @@ def report(
 
     Example: incline report my-vessel -o my-vessel.pdf
     """
-    from incline import __version__, read_trial, write_pdf
+    from incline import __version__, read_trial, to_json, write_pdf
     from incline import reduce as work_out
-    from incline.files import file_stem, refuse_existing
+    from incline.files import file_stem, make_folder, refuse_existing, refuse_filled, write_whole
     from incline.progress import Step
 
-    record = read_trial(trial)
+    record = _in_units(read_trial(trial), units)
     stem = file_stem(record.vessel.name, record.occasion.date.isoformat())
     target = output or Path(f"{stem}.pdf")
     refuse_existing(target, force=force)
+    if tables is not None:
+        refuse_filled(tables, force=force)
     with Step("Reducing the trial") as step:
         result = work_out(record, monte_carlo=True, draws=draws, progress=step)
     with Step("Writing the report"):
-        write_pdf(result, target, _report_date(), __version__)
+        from incline.report import Options
+
+        if tables is not None:
+            make_folder(tables)
+            write_whole(tables / "result.json", to_json(result).encode())
+        size: Literal["A4", "Letter"] | None = None
+        if paper is not None:
+            size = "A4" if paper == Paper.a4 else "Letter"
+        options = Options(beside=units == Shown.both, paper=size)
+        written = write_pdf(result, target, _report_date(), __version__, options, tables)
     print(f"Report written to {target}")
+    if tables is not None:
+        print(f"{len(written) - 1} tables and result.json written to {tables}")
+
+
+def _in_units(record: Trial, units: Shown | None) -> Trial:
+    """The trial asked to be shown in other units; with both, metric leads."""
+    from dataclasses import replace
+
+    if units is None:
+        return record
+    name: Literal["metric", "us"] = "us" if units == Shown.us else "metric"
+    return replace(record, settings=replace(record.settings, units=name))
 
 
 @app.command()
 def hydrostatics(
-    trial: Trial,
+    trial: Folder,
     lowest: Annotated[
         str | None, typer.Option("--from", metavar="DRAFT", help='Lowest draft, as "1.20 m".')
     ] = None,
@@ -264,6 +323,71 @@ def hydrostatics(
 
 
 _MOST_HEEL = 90.0
+
+
+@app.command()
+def sheets(
+    trial: Annotated[
+        Path | None, typer.Argument(help="Folder of one trial, complete or not.")
+    ] = None,
+    blank: Annotated[bool, typer.Option("--blank", help="Sheets for any ship.")] = False,
+    output: Annotated[
+        Path | None, typer.Option("--output", "-o", metavar="FILE", help="Name of the PDF.")
+    ] = None,
+    paper: Annotated[Paper | None, typer.Option(help="Paper, if not that of the units.")] = None,
+    units: Annotated[Units, typer.Option(help="Units, where no trial says.")] = Units.metric,
+    devices: Annotated[
+        int, typer.Option(min=1, max=24, help="Devices, where no trial lists them.")
+    ] = 3,
+    shifts: Annotated[
+        int, typer.Option(min=3, max=60, help="Shifts, where no trial lists them.")
+    ] = 9,
+    gm: Annotated[
+        str | None, typer.Option(metavar="LENGTH", help='GM expected, such as "0.95 m".')
+    ] = None,
+    displacement: Annotated[
+        str | None, typer.Option(metavar="MASS", help='Displacement expected: "312 t".')
+    ] = None,
+    force: Force = False,
+) -> None:
+    """Write sheets to fill in by hand, with what a trial already knows, or blank.
+
+    A trial need not be complete. Readings are predicted for the plots when GM and displacement
+    are known: from the options, the trial's gm_before, or the trial's own result.
+
+    Example: incline sheets my-vessel --gm "0.95 m" --displacement "312 t"
+    """
+    from incline import __version__
+    from incline.files import file_stem, refuse_existing, templates_folder
+    from incline.progress import Step
+    from incline.reading.partial import read_partial
+    from incline.units import LENGTH, MASS
+
+    if (trial is None) != blank:
+        raise typer.BadParameter("a folder of a trial, or --blank, one of them")
+    expected = _above_zero(gm, LENGTH, "--gm"), _above_zero(displacement, MASS, "--displacement")
+    partial = read_partial(trial or templates_folder() / units.value)
+    stem = "field"
+    if trial is not None:
+        day = partial.date.isoformat() if partial.date else "undated"
+        stem = file_stem(partial.trial.vessel.name, day)
+    target = output or Path(f"{stem}-sheets.pdf")
+    refuse_existing(target, force=force)
+    with Step("Writing the sheets"):
+        from incline.sheets import Choices, write_sheets
+
+        choices = Choices(
+            paper=None if paper is None else paper.value,
+            units=units.value,
+            devices=devices,
+            shifts=shifts,
+            gm=expected[0],
+            displacement=expected[1],
+        )
+        write_sheets(partial, target, _report_date(), __version__, choices)
+    print(f"Sheets written to {target}")
+    if partial.wrong:
+        _tell("left blank, because it cannot be used", list(map(str, partial.told)))
 
 
 @app.command()
@@ -335,6 +459,16 @@ def _situation(name: str) -> Situation:
         raise typer.BadParameter(str(error), param_hint="--situation") from error
 
 
+def _above_zero(text: str | None, quantity: Quantity, option: str) -> float | None:
+    """What an option gives in inside units; wrong usage when it is not above zero."""
+    if text is None:
+        return None
+    value = _amount(text, quantity, option)
+    if value <= 0.0:
+        raise typer.BadParameter(f"expected a {quantity.name} above zero", param_hint=option)
+    return value
+
+
 def _masses(texts: list[str] | None, situation: Situation | None) -> list[float] | None:
     """Weights added and removed [t]; wrong usage where no limit is set on their sum."""
     from incline.units import MASS
@@ -360,8 +494,6 @@ def _amount(text: str, quantity: Quantity, option: str) -> float:
 
 def _report_date() -> datetime.date:
     """Today, or the day that SOURCE_DATE_EPOCH names for a reproducible report."""
-    import os
-
     epoch = os.environ.get("SOURCE_DATE_EPOCH", "")
     if epoch.isdigit():
         return datetime.datetime.fromtimestamp(int(epoch), tz=datetime.UTC).date()

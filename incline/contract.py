@@ -12,6 +12,7 @@ from typing import TYPE_CHECKING, Any
 
 import incline
 from incline.model import KEYS
+from incline.result import FORMAT
 
 if TYPE_CHECKING:
     from incline.result import (
@@ -27,8 +28,6 @@ if TYPE_CHECKING:
     )
 
 __all__ = ["FORMAT", "to_dict", "to_json"]
-
-FORMAT = 1
 
 
 def to_json(reduction: Reduction) -> str:

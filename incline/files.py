@@ -10,7 +10,10 @@ from pathlib import Path
 
 from incline.errors import InclineError
 
-__all__ = ["file_stem", "refuse_existing", "templates_folder", "write_whole"]
+__all__ = [
+    "file_stem", "make_folder", "refuse_existing", "refuse_filled", "slug", "templates_folder",
+    "write_whole",
+]  # fmt: skip
 
 
 def refuse_existing(path: Path, *, force: bool) -> None:
@@ -46,9 +49,29 @@ def _umask() -> int:
 
 def file_stem(vessel: str, date: str) -> str:
     """A plain file name from vessel and date: ``A&B <i>`` gives ``a-b-i-2026-03-14``."""
-    plain = unicodedata.normalize("NFKD", vessel).encode("ascii", "ignore").decode().lower()
-    words = re.findall(r"[a-z0-9]+", plain)
-    return "-".join([*(words or ["trial"]), date])[:120]
+    return f"{slug(vessel) or 'trial'}-{date}"[:120]
+
+
+def slug(text: str) -> str:
+    """The words of a text in plain small letters, joined by hyphens; empty when it has none."""
+    plain = unicodedata.normalize("NFKD", text).encode("ascii", "ignore").decode().lower()
+    return "-".join(re.findall(r"[a-z0-9]+", plain))
+
+
+def refuse_filled(folder: Path, *, force: bool) -> None:
+    """Raise InclineError when ``folder`` holds anything and ``force`` was not given."""
+    if folder.exists() and not folder.is_dir():
+        raise InclineError(f"{folder} is a file; give the name of a folder")
+    if folder.is_dir() and any(folder.iterdir()) and not force:
+        raise InclineError(f"{folder} is not empty; give another name, or --force to write there")
+
+
+def make_folder(folder: Path) -> None:
+    """Make a folder and those above it; raises InclineError when the disk refuses it."""
+    try:
+        folder.mkdir(parents=True, exist_ok=True)
+    except OSError as error:
+        raise InclineError(f"cannot make {folder}: {error.strerror}") from error
 
 
 def templates_folder() -> Path:

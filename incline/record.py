@@ -12,11 +12,13 @@ from dataclasses import dataclass, field
 from typing import Literal
 
 from incline.errors import Where
+from incline.papers import Papers
 
 __all__ = [
-    "Body", "Change", "Correlation", "Device", "DraftReading", "Environment", "HydrostaticTable",
-    "Item", "Method", "Move", "Occasion", "OffsetPoint", "Offsets", "Override", "Person", "Point",
-    "Reading", "RollCondition", "RollingRun", "Sample", "Settings", "Shift", "Stated", "Statements",
+    "Body", "Change", "Condition", "Correlation", "Device", "DraftReading", "Environment",
+    "HydrostaticTable", "Item", "Method", "Move", "Occasion", "OffsetPoint", "Offsets",
+    "Override", "Person", "Point", "Reading", "RollCondition", "RollingRun", "Sample", "Settings",
+    "Shift", "Stated", "Statements",
     "Station", "Tank", "Trial", "Vessel", "Weight",
 ]  # fmt: skip
 
@@ -67,6 +69,8 @@ class Vessel:
     kind: str = ""
     flag: str = ""
     builder: str = ""
+    yard_number: str = ""
+    port: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -97,6 +101,10 @@ class Occasion:
     notes: str = ""
     notice_date: datetime.date | None = None
     gm_before: float | None = None
+    started: str = ""
+    ended: str = ""
+    tide: str = ""
+    witness: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -109,6 +117,22 @@ class Environment:
     wind: str = ""
     current: str = ""
     wind_speed: float | None = None
+
+
+@dataclass(frozen=True, slots=True, kw_only=True)
+class Condition:
+    """The ship's own condition in words. Empty text: not recorded.
+
+    ``state``: completeness and what was going on aboard; ``tanks``: how empty and full ones were
+    shown to be so; ``drafts``: what was aboard, and when, as the drafts were read.
+    """
+
+    state: str = ""
+    decks: str = ""
+    bilges: str = ""
+    tanks: str = ""
+    secured: str = ""
+    drafts: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -125,6 +149,7 @@ class Override:
     limit: str
     reason: str
     where: Where
+    allowed_by: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -142,6 +167,8 @@ class Device:
     where: Where
     resolution: float | None = None
     stated: Statements = field(default_factory=dict)
+    damping: str = ""
+    read_by: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -180,6 +207,8 @@ class Shift:
     moment: float | None
     where: Where
     stated: Statements = field(default_factory=dict)
+    weather: str = ""
+    tide: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -232,7 +261,8 @@ class Tank:
 
     ``level`` of the liquid and ``depth`` of the tank are above its bottom; ``length`` and
     ``breadth`` are those of the free surface [m]. ``type`` is empty when not recorded. ``box`` says
-    that the tank is a box of that length, breadth and depth.
+    that the tank is a box of that length, breadth and depth. ``sounding`` is what was read at the
+    tank, in words.
     """
 
     name: str
@@ -252,6 +282,7 @@ class Tank:
     type: Literal["", "deep", "double bottom"] = ""
     box: bool = False
     stated: Statements = field(default_factory=dict)
+    sounding: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -403,6 +434,7 @@ class Settings:
     correlations: tuple[Correlation, ...] = ()
     roll_condition: RollCondition | None = None
     overrides: tuple[Override, ...] = ()
+    rule_edition: str = ""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -433,5 +465,7 @@ class Trial:
     rolls: tuple[RollingRun, ...] = ()
     environment: Environment = field(default_factory=Environment)
     hydrometer: tuple[float, float] | None = None
+    condition: Condition = field(default_factory=Condition)
+    papers: Papers = field(default_factory=Papers)
     remarks: tuple[str, ...] = ()
     """Assumptions made while reading that a reviewer should see, one sentence each."""

@@ -9,12 +9,15 @@ from incline.record import Method, Point, Statements, Trial
 from incline.units import Quantity
 
 __all__ = [
-    "AsInclined", "Budget", "BudgetLine", "Check", "DeviceFit", "Diagnosis", "DraftResidual",
-    "Estimate", "Finding", "FreeSurface", "HeelFit", "HeelPoint", "HullEntry", "Influence",
-    "Ledger", "LedgerLine", "LeverCurve", "Lightship", "MethodResult", "Outcome", "ReducedReading",
-    "Reduction", "Rolling", "ShiftMoment", "Simulated", "Simulation", "SlopeUncertainty",
-    "TableEntry", "Unseen", "Waterline",
+    "FORMAT", "AsInclined", "Budget", "BudgetLine", "Check", "DeviceFit", "Diagnosis",
+    "DraftResidual", "Estimate", "Finding", "FreeSurface", "HeelFit", "HeelPoint", "HullEntry",
+    "Influence", "Ledger", "LedgerLine", "LeverCurve", "Lightship", "MethodResult", "Outcome",
+    "ReducedReading", "Reduction", "Rolling", "ShiftMoment", "Simulated", "Simulation",
+    "SlopeUncertainty", "TableEntry", "Unseen", "Waterline",
 ]  # fmt: skip
+
+FORMAT = 1
+"""Of a result written as JSON: raised when a key changes its meaning."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)

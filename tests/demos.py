@@ -116,6 +116,68 @@ PELICAN_HEAD = {
     "place": "Pier 3, Halloran Creek", "berth": "head to the ebb, all lines slack",
     "weather": "clear, wind 3 knots astern", "water_depth": str(22.0 * FOOT), "rules": "US",
     "P1": "engine room trunk", "P2": "forward hold", "U1": "main deck, athwartships",
+    "more": """
+[report]
+status = "issued"
+number = 2
+author = "E. Marchetti"
+submitted_to = "the flag administration, through the organisation it recognises"
+
+[[revisions]]
+number = 1
+date = 2026-05-08
+description = "first issue"
+by = "E. Marchetti"
+
+[[revisions]]
+number = 2
+date = 2026-05-20
+description = "drawing numbers added; figures unchanged"
+by = "E. Marchetti"
+
+[[documents]]
+title = "Lines plan and hydrostatics"
+number = "7705-101"
+revision = "B"
+date = "March 2024"
+use = "hydrostatic table"
+
+[[documents]]
+title = "General arrangement"
+number = "7705-003"
+revision = "D"
+use = "centres of the items"
+
+[[deviations]]
+what = "none"
+
+[[signatures]]
+part = "tested"
+name = "E. Marchetti"
+
+[condition]
+state = "complete but for rafts and galley gear; nobody working aboard"
+decks = "dry, swept"
+bilges = "pumped dry, voids opened and looked into"
+tanks = "empty ones opened; the fore peak filled until it ran from the air pipe"
+secured = "cargo gear lashed, doors shut"
+drafts = "read at 08:15 from a boat, the test party aboard"
+
+[predicted]
+gm = "5.00 ft"
+heel = "2.7 deg"
+freeboard = "5.5 ft"
+by = "E. Marchetti"
+
+[[compare]]
+kind = "earlier"
+name = "inclining test of 2019"
+situation = "alteration"
+displacement = "731.5 LT"
+kg = "14.71 ft"
+lcg = "58.60 ft"
+x_origin = "after perpendicular"
+""",
 }  # fmt: skip
 
 PELICAN_STYLE = Style(

@@ -22,7 +22,9 @@ def incline(
     )  # fmt: skip
 
 
-@pytest.mark.parametrize("command", [[], ["start"], ["check"], ["reduce"], ["report"], ["compare"]])
+@pytest.mark.parametrize(
+    "command", [[], ["start"], ["check"], ["reduce"], ["report"], ["sheets"], ["compare"]]
+)
 def test_help_carries_an_example(command):
     run = incline(*command, "--help")
     assert run.returncode == 0

@@ -7,7 +7,7 @@ import made_judged as judged
 import made_reduction as made
 import pytest
 from conftest import DEMO_TRIALS
-from read_report import pages, printed, texts
+from read_report import body, pages, printed, section, texts
 
 from incline import read_trial, reduce
 from incline.report.figures_findings import finding_plot
@@ -19,17 +19,12 @@ from incline.units import SYSTEMS
 FOOT, INCH = 0.3048, 0.0254  # exact by definition
 
 
-def _section(text, title, after):
-    whole = re.split(rf"\d+ {title} ", text, maxsplit=1)[1]
-    return re.split(rf"\d+ {after} ", whole, maxsplit=1)[0]
-
-
 def criteria(kind):
-    return _section(" ".join(pages(kind)), "Criteria", "Remarks")
+    return section(body(kind), "Rules and criteria").split(" Criteria ", 1)[1]
 
 
 def residuals(kind):
-    return _section(" ".join(pages(kind)), "What the residuals say", "From GM to")
+    return section(body(kind), "What the residuals say")
 
 
 # --- criteria -----------------------------------------------------------------------------------
@@ -74,11 +69,11 @@ def test_overrides_show_their_reason_as_typed():
 
 
 def test_what_was_not_recorded_is_listed():
-    lacking = criteria("metric").split("Not recorded by the field book")[1]
-    assert lacking.split("•")[1].startswith(
-        " Range of the hydrometer: the range of the hydrometer."
+    lacking = section(body("metric"), "Not recorded by the trial").split("Asked for by criteria")[1]
+    assert "Range of the hydrometer the range of the hydrometer." in lacking
+    assert "What 1 of them ask for is listed under “Not recorded by the trial”." in criteria(
+        "metric"
     )
-    assert lacking.count("•") == 1
 
 
 def test_us_report_gives_lengths_found_in_both_units():
@@ -87,10 +82,10 @@ def test_us_report_gives_lengths_found_in_both_units():
     assert f"1.050 m ({1.05 / FOOT:.3f} ft) at least 0.2 m" in text
 
 
-def test_without_checks_there_is_no_section_and_no_line():
-    text = " ".join(pages("bare"))
+def test_without_checks_there_are_no_criteria_and_no_line():
+    text = body("bare")
     assert "Criteria" not in text
-    assert "Not recorded by the field book" not in text
+    assert "Asked for by criteria" not in text
 
 
 def test_a_note_taller_than_a_page_is_cut_short_and_the_rest_printed():

@@ -8,7 +8,7 @@ import made_reduction as made
 import made_uncertainty as unsure
 import pytest
 from made_trial import KG_LIMIT
-from read_report import pages, printed, texts
+from read_report import body, pages, printed, section, texts
 
 from incline.defaults import LABEL
 from incline.report.amounts import Unit, percent, significant, unit_of
@@ -26,10 +26,11 @@ def _minus(text):
 
 
 def _section(kind):
-    """Text of the uncertainty section alone."""
-    text = " ".join(pages(kind))
-    whole = re.split(r"\d+ Uncertainty ", text, maxsplit=1)[1]
-    return re.split(r"\d+ (?:Criteria|Remarks) ", whole, maxsplit=1)[0]
+    """Text of the section in words and of both appendices."""
+    text = body(kind)
+    return " ".join(
+        section(text, title) for title in ("Uncertainty", "Uncertainty budgets", "Monte Carlo run")
+    )
 
 
 def _kg(units="metric"):
@@ -104,7 +105,7 @@ def test_printed_rows_and_the_rest_make_the_whole():
     assert least + sum(abs(x.share) for x in rest) > 0.01
     assert list(shown) == sorted(shown, key=lambda x: -x.share)
     left = 100.0 * sum(x.share for x in rest)
-    assert f"{len(rest)} further inputs – {left:.1f} disturbances" in _section("metric")
+    assert f"{len(rest)} further inputs – {left:.1f} " in _section("metric")
 
 
 def test_no_more_rows_than_asked_for():
@@ -147,8 +148,8 @@ def test_front_page_names_the_share_that_nobody_measured():
     assert "defaults of this program" not in texts(data)[0]
 
 
-def test_front_page_sets_the_simulated_interval_beside_the_first_order_one():
-    front, run = pages("metric")[0], made.made_reduction().simulation
+def test_the_simulated_interval_stands_beside_the_first_order_one():
+    front, run = section(body("metric"), "Uncertainty"), made.made_reduction().simulation
     kg, low_high = _kg().estimate, run.results[1].symmetric
     first = f"{kg.value - kg.U:.4f} to {kg.value + kg.U:.4f}"
     assert f"KG [m] {first} {low_high[0]:.4f} to {low_high[1]:.4f} validated" in front

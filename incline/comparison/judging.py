@@ -13,7 +13,7 @@ if TYPE_CHECKING:
     from collections.abc import Sequence
 
     from incline.comparison.figures import Figures
-    from incline.comparison.situations import Limit, Situation
+    from incline.situations import Limit, Situation
 
 __all__ = ["GIVEN", "Comparison", "Difference", "Judgement", "compare"]
 

@@ -8,17 +8,19 @@ from typing import TYPE_CHECKING, Any
 
 import incline
 from incline.comparison.judging import GIVEN
-from incline.comparison.situations import situations
+from incline.situations import situations
 from incline.units import LENGTH, MASS, SYSTEMS
 
 if TYPE_CHECKING:
     from incline.comparison.figures import Figures
     from incline.comparison.judging import Comparison, Difference, Judgement
-    from incline.comparison.situations import Limit, Situation
     from incline.result import Estimate
+    from incline.situations import Limit, Situation
     from incline.units import UnitSystem
 
-__all__ = ["FORMAT", "list_situations", "recommendation", "show_comparison", "to_json"]
+__all__ = [
+    "FORMAT", "credit", "list_situations", "recommendation", "show_comparison", "to_json",
+]  # fmt: skip
 
 FORMAT = 1
 _NAMES = {
@@ -37,7 +39,7 @@ def list_situations() -> str:
     for s in situations():
         lines += ["", f"{s.id} ({s.rule_set})", f"  {s.title}"]
         for x in s.limits:
-            said = f"{_NAMES[x.quantity]} {_in_words(x)}, else {x.follows} [{_credit(x)}]"
+            said = f"{_NAMES[x.quantity]} {_in_words(x)}, else {x.follows} [{credit(x)}]"
             lines += _wrapped(said, "  - ")
         lines += [f"  {s.note}"] if s.note else []
     return "\n".join(lines)
@@ -52,7 +54,7 @@ def _in_words(limit: Limit) -> str:
     return f"within {' to '.join(ends)} of length, straight between{of}"
 
 
-def _credit(limit: Limit) -> str:
+def credit(limit: Limit) -> str:
     """Source, edition and evidence of a limit."""
     known = limit.evidence if limit.evidence == "read" else f"{limit.evidence}: {_VERIFY}"
     return f"{limit.source}; {limit.edition}; {known}"
@@ -128,7 +130,7 @@ def _judgement(j: Judgement, system: UnitSystem) -> list[str]:
         lines.append(f"    {j.why}")
     if j.open:
         lines.append("    the limit lies within the uncertainty (95 %) of the difference")
-    return [*lines, *_wrapped(_credit(j.limit), "    ")]
+    return [*lines, *_wrapped(credit(j.limit), "    ")]
 
 
 def _verdict(c: Comparison) -> list[str]:

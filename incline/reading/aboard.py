@@ -50,6 +50,8 @@ def read_device(section: Section) -> Device:
             length=stated[0] if stated else None,
             scale=_scale(section) if kind == "inclinometer" or not known else None,
         ),
+        damping=section.text("damping"),
+        read_by=section.text("read_by"),
     )
     section.close()
     return device

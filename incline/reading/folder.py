@@ -53,7 +53,7 @@ if TYPE_CHECKING:
         Weight,
     )
 
-__all__ = ["read_trial"]
+__all__ = ["read_records", "read_trial"]
 
 _ABSENT = {
     "tanks.csv": "No tanks.csv: no liquid is deducted and no free surface is taken.",
@@ -71,25 +71,35 @@ def read_trial(folder: str | os.PathLike[str]) -> Trial:
 
     Raises FieldDataError with every defect of every file.
     """
-    path = Path(folder)
     collector = Collector()
-    files = read_files(path, (FILE, *TABLES), collector)
-    remarks = strangers(path, files, collector)
-    trial = _Reader(files, collector).trial(str(path), remarks)
+    trial = read_records(folder, collector)
     if collector.defects:
         raise FieldDataError(folded(collector.defects))
     return trial
 
 
+def read_records(folder: str | os.PathLike[str], collector: Collector) -> Trial:
+    """The records of a test as far as they can be read; what is wrong goes to ``collector``.
+
+    With defects collected the trial is not fit to be reduced: BAD stands for a number, and an
+    empty text or the first of the words allowed for a word, that is missing or cannot be read.
+    Raises FieldDataError when there is no such folder.
+    """
+    path = Path(folder)
+    files = read_files(path, (FILE, *TABLES), collector)
+    remarks = strangers(path, files, collector)
+    return _Reader(files, collector, path).trial(str(path), remarks)
+
+
 class _Reader:
     """Reads the tables of one trial, each with what it needs of the others."""
 
-    def __init__(self, files: dict[str, bytes], collector: Collector) -> None:
+    def __init__(self, files: dict[str, bytes], collector: Collector, path: Path) -> None:
         self.files = files
         self.collector = collector
         self.tables = Tables(files, collector)
         self.sheets = self.tables.sheets
-        self.head: Head = read_head(files.get(FILE), self.tables.hull, collector)
+        self.head: Head = read_head(files.get(FILE), self.tables.hull, collector, path)
 
     def trial(self, folder: str, remarks: list[str]) -> Trial:
         """Read everything; of no use once a defect has been collected."""
@@ -121,6 +131,8 @@ class _Reader:
             rolls=self._rolls(),
             environment=head.environment,
             hydrometer=head.hydrometer,
+            condition=head.condition,
+            papers=head.papers,
             remarks=(
                 *remarks,
                 *by_moment,

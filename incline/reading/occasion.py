@@ -8,22 +8,22 @@ from typing import TYPE_CHECKING
 
 from incline.reading.collect import Sign, quoted
 from incline.reading.tomlfile import shown
-from incline.record import Environment, Occasion
+from incline.record import Condition, Environment, Occasion
 from incline.units import LENGTH, SPEED
 
 if TYPE_CHECKING:
     from incline.reading.tomlfile import Section
 
-__all__ = ["read_environment", "read_hydrometer", "read_occasion"]
+__all__ = [
+    "read_condition", "read_date", "read_environment", "read_hydrometer", "read_occasion",
+]  # fmt: skip
 
 _RANGE = re.compile(r"([0-9]*\.?[0-9]+)\s*(?:to|-|–)\s*([0-9]*\.?[0-9]+)")
 
 
 def read_occasion(section: Section) -> Occasion:
     """The section ``[test]``."""
-    date = _date(section, "date")
-    if date is None and "date" not in section.failed:
-        section.missing("date", _DATE)
+    date = read_date(section, "date", required=True)
     occasion = Occasion(
         date=date or datetime.date.min,
         place=section.text("place", required=True),
@@ -33,6 +33,10 @@ def read_occasion(section: Section) -> Occasion:
         notes=section.text("notes"),
         notice_date=_notice(section, date),
         gm_before=section.maybe("gm_before", LENGTH),
+        started=section.text("started"),
+        ended=section.text("ended"),
+        tide=section.text("tide"),
+        witness=section.text("witness"),
     )
     section.close()
     return occasion
@@ -41,9 +45,11 @@ def read_occasion(section: Section) -> Occasion:
 _DATE = "a date written year-month-day, such as 2026-03-14"
 
 
-def _date(section: Section, key: str) -> datetime.date | None:
+def read_date(section: Section, key: str, *, required: bool = False) -> datetime.date | None:
     """A date; None when absent, and after a defect."""
     found = section.value(key)
+    if found is None and required:
+        section.missing(key, _DATE)
     if found is None or type(found) is datetime.date:  # one with a time of day is a subclass
         return found
     text, expected = found.strip() if isinstance(found, str) else "", _DATE
@@ -58,7 +64,7 @@ def _date(section: Section, key: str) -> datetime.date | None:
 
 def _notice(section: Section, held: datetime.date | None) -> datetime.date | None:
     """The day on which the procedure was sent, not after the test."""
-    sent = _date(section, "notice_date")
+    sent = read_date(section, "notice_date")
     if sent is not None and held is not None and sent > held:
         expected = f"a day not after the test of {held.isoformat()}"
         section.fault("notice_date", "value-wrong", quoted(sent.isoformat()), expected)
@@ -75,6 +81,14 @@ def read_environment(section: Section) -> Environment:
         current=section.text("current"),
         wind_speed=section.maybe("wind_speed", SPEED, Sign.NOT_NEGATIVE),
     )
+    section.close()
+    return found
+
+
+def read_condition(section: Section) -> Condition:
+    """The section ``[condition]``; every key is optional."""
+    keys = ("state", "decks", "bilges", "tanks", "secured", "drafts")
+    found = Condition(**{key: section.text(key) for key in keys})
     section.close()
     return found
 

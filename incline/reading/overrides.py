@@ -44,6 +44,7 @@ def read_overrides(sections: Iterable[Section]) -> tuple[Override, ...]:
             limit=words,
             reason=section.text("reason", required=True),
             where=section.where("check"),
+            allowed_by=section.text("allowed_by"),
         )
         section.close()
         if criterion and any(o.check == criterion.id for o in found):

@@ -11,19 +11,36 @@ from incline.reading.assumptions import read_assumed, read_correlations
 from incline.reading.bodies import HullPlan, read_plan
 from incline.reading.collect import BAD, Sign, quoted
 from incline.reading.hull_choices import read_layers, read_method, read_use
-from incline.reading.occasion import read_environment, read_hydrometer, read_occasion
+from incline.reading.occasion import (
+    read_condition,
+    read_environment,
+    read_hydrometer,
+    read_occasion,
+)
 from incline.reading.overrides import read_overrides
+from incline.reading.papers import SECTIONS as PAPERS
+from incline.reading.papers import read_papers
 from incline.reading.plausible import WATER, Hull, check, check_vessel, hull_of
-from incline.reading.rolls import read_condition
+from incline.reading.rolls import read_condition as read_roll_condition
 from incline.reading.tomlfile import FILE, Document
 from incline.reading.volume import read_allowance, read_stated
-from incline.record import Device, Environment, Occasion, Person, Settings, Vessel
+from incline.record import (
+    Condition,
+    Device,
+    Environment,
+    Occasion,
+    Person,
+    Settings,
+    Vessel,
+)
 from incline.units import DENSITY, LENGTH
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
+    from pathlib import Path
     from typing import Literal
 
+    from incline.papers import Papers
     from incline.reading.collect import Collector
     from incline.reading.hull_choices import HullFiles
     from incline.reading.tomlfile import Section
@@ -38,7 +55,7 @@ _BASE, _KEEL = "baseline", "underside of keel"
 _SECTIONS = (
     "vessel", "test", "axes", "output", "rules", "method", "drafts", "hydrostatics", "density",
     "devices", "people", "limits", "uncertainty", "correlations", "rolling", "evidence",
-    "environment", "instruments", "overrides", "offsets", "bodies",
+    "environment", "instruments", "overrides", "offsets", "bodies", "condition", *PAPERS,
 )  # fmt: skip
 
 
@@ -78,14 +95,16 @@ class Head:
     people: tuple[Person, ...]
     environment: Environment
     hydrometer: tuple[float, float] | None
+    condition: Condition
+    papers: Papers
     frame: Frame
     plan: HullPlan
     use_said: bool
     complete: bool
 
 
-def read_head(data: bytes | None, files: HullFiles, collector: Collector) -> Head:
-    """Read ``trial.toml``; ``None`` when there is no such file, which is the caller's defect."""
+def read_head(data: bytes | None, files: HullFiles, collector: Collector, folder: Path) -> Head:
+    """Read ``trial.toml`` in ``folder``; ``None`` when there is none, which the caller tells."""
     document = Document(data, collector)
     vessel, sound = read_vessel(document.section("vessel"))
     settings, frame = _choices(document, vessel, files, sound=sound)
@@ -101,6 +120,8 @@ def read_head(data: bytes | None, files: HullFiles, collector: Collector) -> Hea
         occasion=read_occasion(document.section("test")),
         environment=read_environment(document.section("environment")),
         hydrometer=read_hydrometer(document.section("instruments")),
+        condition=read_condition(document.section("condition")),
+        papers=read_papers(document, folder, vessel.lpp),
         settings=settings,
         devices=devices,
         people=people,
@@ -141,6 +162,8 @@ def read_vessel(section: Section) -> tuple[Vessel, bool]:
         kind=section.text("kind"),
         flag=section.text("flag"),
         builder=section.text("builder"),
+        yard_number=section.text("yard_number"),
+        port=section.text("port"),
     )
     section.close()
     return vessel, check_vessel(section, vessel)
@@ -178,6 +201,7 @@ def _choices(
         x_origin=x_origin,
         units=read_units(document.section("output")),
         rule_set=rules.text("set"),
+        rule_edition=rules.text("edition"),
         method=read_method(method, from_offsets=from_offsets),
         allowance=read_allowance(table, needed=files.table),
         keel_thickness=keel if marks_from == _KEEL else 0.0,
@@ -187,7 +211,7 @@ def _choices(
         kg_limit=limits.maybe("kg", LENGTH, Sign.POSITIVE),
         assumed=read_assumed(document.section("uncertainty")),
         correlations=read_correlations(document.sections("correlations")),
-        roll_condition=read_condition(rolling),
+        roll_condition=read_roll_condition(rolling),
         overrides=read_overrides(document.sections("overrides")),
         evidence={key: evidence.text(key) for key in ("liquids", "lines", "weather", "drift")},
     )

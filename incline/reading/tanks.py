@@ -37,6 +37,7 @@ TANK_COLUMNS = (
     Column("shape"),
     Column("depth", LENGTH, sign=Sign.POSITIVE),
     Column("type"),
+    Column("sounding"),
 )
 _NO_DEPTH = (
     "The tank {} is a box without its depth: its free surface counts as a fixed moment, and whether"
@@ -84,6 +85,7 @@ def read_tanks(sheet: Sheet, frame: Frame) -> tuple[tuple[Tank, ...], list[str]]
                 breadth=row.maybe("breadth"),
                 type=row.choice("type", types, "") or "",
                 box=box and bool(row.raw("depth")),
+                sounding=row.text("sounding"),
                 stated=_stated(row, name, state, {"mass": mass, "fsm": fsm}, remarks),
             )
         )

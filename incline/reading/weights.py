@@ -22,8 +22,8 @@ if TYPE_CHECKING:
     from incline.reading.settings import Frame
 
 __all__ = [
-    "SHIFT_COLUMNS", "WEIGHT_COLUMNS", "ShiftTable", "check_moments", "check_moves", "read_shifts",
-    "read_weights", "shift_number",
+    "SHIFT_COLUMNS", "WEIGHT_COLUMNS", "ShiftTable", "check_moments", "check_moves",
+    "moments_by_shift", "read_shifts", "read_weights", "shift_number",
 ]  # fmt: skip
 
 WEIGHT_COLUMNS = (
@@ -42,6 +42,8 @@ SHIFT_COLUMNS = (
     Column("x", LENGTH, stated=True),
     Column("z", LENGTH, stated=True),
     Column("moment", MOMENT, transverse=True, stated=True),
+    Column("weather"),
+    Column("tide"),
 )
 _NEAR = 1e-9
 """Moments closer than this share of the largest are one moment: rounding of the arithmetic."""
@@ -121,6 +123,8 @@ def read_shifts(sheet: Sheet, frame: Frame) -> ShiftTable:
                 moment=rows[0].need("moment") if table.by_moment else None,
                 where=rows[0].where(),
                 stated=of_row(rows[0], "moment") if table.by_moment else {},
+                weather=_words(rows, "weather"),
+                tide=_words(rows, "tide"),
             )
         )
     return table
@@ -165,6 +169,11 @@ def _time(rows: list[Row], *, timed: bool) -> str:
         elif timed and row is rows[0]:
             row.missing("time", expected)
     return times[0] if times else ""
+
+
+def _words(rows: list[Row], column: str) -> str:
+    """What the rows of a shift say in a column of text, each thing once."""
+    return "; ".join(dict.fromkeys(filter(None, (row.text(column) for row in rows))))
 
 
 def _moves(rows: list[Row], frame: Frame) -> tuple[Move, ...]:
@@ -221,7 +230,7 @@ def check_moves(sheet: Sheet, weights: Sequence[Weight], shifts: Sequence[Shift]
 
 def check_moments(sheet: Sheet, weights: Sequence[Weight], shifts: Sequence[Shift]) -> None:
     """A line needs three distinct moments at least; nothing is said while a moment is unknown."""
-    moments = _moments(weights, shifts)
+    moments = moments_by_shift(weights, shifts)
     if not moments or any(math.isnan(m) for m in moments):
         return
     near = _NEAR * max(abs(m) for m in moments)
@@ -236,7 +245,7 @@ def check_moments(sheet: Sheet, weights: Sequence[Weight], shifts: Sequence[Shif
         sheet.collector.add(Where(sheet.file, 0, column), "moments-too-few", found, expected)
 
 
-def _moments(weights: Sequence[Weight], shifts: Sequence[Shift]) -> list[float]:
+def moments_by_shift(weights: Sequence[Weight], shifts: Sequence[Shift]) -> list[float]:
     """Moments about the start [t m] to starboard; BAD where a weight or its start is not known."""
     mass = {w.id: w.mass for w in weights}
     start = {move.weight: move.y for shift in shifts[:1] for move in shift.moves}

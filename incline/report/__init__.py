@@ -2,76 +2,43 @@
 
 from __future__ import annotations
 
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING
 
 from incline.files import write_whole
-from incline.report.closing import cautions, remarks, signatures
-from incline.report.criteria import criteria
-from incline.report.document import Sheet, heading, render
-from incline.report.findings import residuals
-from incline.report.floating import as_inclined
-from incline.report.front import result, title_block
-from incline.report.gravity import centre_of_gravity
-from incline.report.heel import heel_fit
-from incline.report.lightship import all_counted, to_lightship
-from incline.report.particulars import conventions, vessel_and_test
-from incline.report.readings import devices_and_readings
+from incline.report.document import Options, Sheet, render
+from incline.report.export import tables_of
+from incline.report.fonts import register_fonts
+from incline.report.order import story
 from incline.report.show import Show
-from incline.report.uncertainty import uncertainty
-from incline.report.weights import weights_and_moments
 
 if TYPE_CHECKING:
     import datetime
-    from collections.abc import Callable
     from pathlib import Path
 
     from incline.result import Reduction
 
-__all__ = ["write_pdf"]
-
-_SECTIONS: tuple[tuple[str, Callable[[Sheet], list[Any]]], ...] = (
-    ("Result", result),
-    ("Vessel and test", vessel_and_test),
-    ("Axes, signs, units and method", conventions),
-    ("Condition as inclined", as_inclined),
-    ("Test weights and moments", weights_and_moments),
-    ("Devices and readings", devices_and_readings),
-    ("Heel against moment", heel_fit),
-    ("What the residuals say", residuals),
-    ("From GM to the centre of gravity", centre_of_gravity),
-    ("From as inclined to lightship", to_lightship),
-    ("Uncertainty", uncertainty),
-    ("With the excluded readings counted", all_counted),
-    ("Criteria", criteria),
-    ("Remarks", remarks),
-    ("Cautions, and who decides", cautions),
-    ("Signatures", signatures),
-)
+__all__ = ["Options", "write_pdf"]
 
 
-_TEXT_FIRST = (conventions, residuals, uncertainty, criteria, remarks)
-_ROOM, _ROOM_FOR_TEXT = 136.0, 80.0
-"""Points below a section's heading without which it starts a new page; less where text follows."""
+def write_pdf(
+    reduction: Reduction,
+    path: Path,
+    report_date: datetime.date,
+    version: str,
+    options: Options | None = None,
+    tables: Path | None = None,
+) -> list[Path]:
+    """Write the report to ``path``, and every table of it as CSV into the folder ``tables``.
 
-
-def write_pdf(reduction: Reduction, path: Path, report_date: datetime.date, version: str) -> None:
-    """Write the report to ``path``, replacing what is there; whether to is the caller's question.
-
-    The same arguments give the same bytes. The file appears whole or not at all; raises
+    What stands there is replaced; whether to is the caller's question. Gives the files written.
+    The same arguments give the same bytes. A file appears whole or not at all; raises
     InclineError when the disk refuses it.
     """
-    sheet = Sheet(reduction, Show.of(reduction), report_date, version)
-    write_whole(path, render(sheet, _story))
-
-
-def _story(sheet: Sheet) -> list[Any]:
-    """All flowables in order, sections numbered; a section without content is left out."""
-    flow = title_block(sheet)
-    number = 0
-    for title, section in _SECTIONS:
-        body = section(sheet)
-        if body:
-            number += 1
-            need = _ROOM_FOR_TEXT if section in _TEXT_FIRST else _ROOM
-            flow += [*heading(number, title, need), *body]
-    return flow
+    register_fonts()
+    sheet = Sheet(reduction, Show.of(reduction), report_date, version, options or Options())
+    flow = story(sheet)
+    files = {} if tables is None else {tables / n: data for n, data in tables_of(flow).items()}
+    files = {path: render(sheet, flow), **files}
+    for place, data in files.items():
+        write_whole(place, data)
+    return list(files)

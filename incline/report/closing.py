@@ -2,16 +2,22 @@
 
 from __future__ import annotations
 
-from typing import Any
+from typing import TYPE_CHECKING, Any
 
-from reportlab.platypus import CondPageBreak, Paragraph, Table
+from reportlab.platypus import Paragraph, Table
 
 from incline.report.document import Sheet, bullet, paragraph, part
 from incline.report.fonts import REGULAR
+from incline.report.headings import Whole
+from incline.report.show import NOT_RECORDED
 from incline.report.styles import INK, STYLES
 from incline.report.text import markup
 
-__all__ = ["cautions", "remarks", "signatures"]
+if TYPE_CHECKING:
+    from incline.papers import Papers
+    from incline.result import Reduction
+
+__all__ = ["BEFORE", "STOP", "cautions", "remarks", "remarks_of", "signatures"]
 
 _DECIDES = (
     "This report is a calculation. It is meant to help the person who answers for the test to "
@@ -23,7 +29,7 @@ _DECIDES = (
     "show that the ship is unsafe. A value inside every limit does not show that she is safe.",
 )
 
-_BEFORE = (
+BEFORE = (
     "Before any weight is lifted, predict GM, heel and remaining freeboard for the largest "
     "moment, and do not begin with too little stability to carry it.",
     "A weight that hangs from the ship's own crane or derrick acts at the point it hangs "
@@ -33,7 +39,7 @@ _BEFORE = (
     "Mooring lines are slack while readings are taken, and someone stands by each of them.",
 )
 
-_STOP = (
+STOP = (
     "the heel passes 4 degrees, or a quarter more than predicted;",
     "the heel goes on growing after the weight has been set down;",
     "the ship lolls from one side to the other, or GM comes out at zero or below. Never try to "
@@ -43,12 +49,15 @@ _STOP = (
 )
 
 
-def remarks(sheet: Sheet) -> list[Any]:
+def remarks_of(reduction: Reduction) -> list[str]:
     """Assumptions and refusals, each once, in the order in which they were made."""
-    said = dict.fromkeys((*sheet.reduction.trial.remarks, *sheet.reduction.remarks))
-    if not said:
-        return [paragraph("None.")]
-    return [bullet(text) for text in said]
+    return list(dict.fromkeys((*reduction.trial.remarks, *reduction.remarks)))
+
+
+def remarks(sheet: Sheet) -> list[Any]:
+    """What was assumed and what could not be found."""
+    said = remarks_of(sheet.reduction)
+    return [bullet(text) for text in said] if said else [paragraph("None.")]
 
 
 def cautions(_sheet: Sheet) -> list[Any]:
@@ -57,9 +66,9 @@ def cautions(_sheet: Sheet) -> list[Any]:
         *part("Standing of this report"),
         *(bullet(text) for text in _DECIDES),
         *part("Before and during a test"),
-        *(bullet(text) for text in _BEFORE),
+        *(bullet(text) for text in BEFORE),
         *part("Stop the test when"),
-        *(bullet(text) for text in _STOP),
+        *(bullet(text) for text in STOP),
         paragraph(
             "The reasons to stop are common practice and this program's own choice of figures; "
             "they are not quoted from a standard. Check them against the procedure "
@@ -68,28 +77,73 @@ def cautions(_sheet: Sheet) -> list[Any]:
     ]
 
 
+_PARTS = {
+    "tested": "Tested by",
+    "calculated": "Calculated by",
+    "checked": "Checked by",
+    "witnessed": "Witnessed by",
+}
+_SIGN = (0.14, 0.25, 0.25, 0.13, 0.23)
+_HEADS = ("", "name", "organisation", "date", "signature")
+
+
 def signatures(sheet: Sheet) -> list[Any]:
-    """Three places to sign, kept together."""
-    heads = ("", "name", "organisation", "date", "signature")
-    rows = ("Tested by", "Calculated by", "Witnessed by")
-    cells = [[Paragraph(markup(h), STYLES["head_left"]) for h in heads]]
-    cells += [[Paragraph(r, STYLES["head_left"]), "", "", "", ""] for r in rows]
-    shares = (0.14, 0.25, 0.25, 0.13, 0.23)
-    table = Table(
-        cells,
-        colWidths=[sheet.width * s for s in shares],
-        rowHeights=[14, 34, 34, 34],
-        style=[
-            ("VALIGN", (0, 0), (-1, -1), "BOTTOM"),
-            ("FONT", (0, 0), (-1, -1), REGULAR, 7),
-            ("GRID", (0, 0), (-1, -1), 0.4, INK),
-            ("VALIGN", (0, 1), (0, -1), "MIDDLE"),
-            ("LEFTPADDING", (0, 0), (-1, -1), 2.5),
-        ],
-        hAlign="LEFT",
+    """Who accepts, and places to sign: for the parts of the test, and for the acceptance."""
+    papers = sheet.reduction.trial.papers
+    to = papers.submitted_to
+    authority = (
+        f"This report is submitted to {to}. "
+        if to
+        else f"To whom this report is submitted is {NOT_RECORDED}. "
     )
-    said = paragraph(
+    rows = [row for key, title in _PARTS.items() for row in _rows_of(papers, key, title)]
+    accepted = _rows_of(papers, "accepted", "Accepted by")
+    vouch = paragraph(
         "The signatures vouch for the part named in each line. They do not take the place of the "
         "administration's acceptance."
     )
-    return [CondPageBreak(150), said, table]
+    decided = paragraph(
+        f"{authority}The test and its lightship count as accepted when the flag administration, or "
+        "the organisation that it has recognised for the purpose, says so in writing, here or "
+        "elsewhere; the program, its author and the signatures above cannot."
+    )
+    return [
+        Whole([vouch, _lines_to_sign(sheet, rows)]),
+        *part("Acceptance"),
+        Whole([decided, _lines_to_sign(sheet, accepted)]),
+    ]
+
+
+def _rows_of(papers: Papers, part_of: str, title: str) -> list[tuple[str, str, str]]:
+    """A row for each one who signs for a part; an empty one where the trial names nobody."""
+    named = [(title, s.name, s.organisation) for s in papers.signatures if s.part == part_of]
+    return named or [(title, "", "")]
+
+
+def _lines_to_sign(sheet: Sheet, rows: list[tuple[str, str, str]]) -> Table:
+    cells = [[Paragraph(markup(h), STYLES["head_left"]) for h in _HEADS]]
+    cells += [
+        [
+            Paragraph(markup(title), STYLES["head_left"]),
+            Paragraph(markup(name), STYLES["cell_left"]),
+            Paragraph(markup(organisation), STYLES["cell_left"]),
+            "",
+            "",
+        ]
+        for title, name, organisation in rows
+    ]
+    return Table(
+        cells,
+        colWidths=[sheet.width * s for s in _SIGN],
+        minRowHeights=[14, *[34] * len(rows)],
+        repeatRows=1,
+        style=[
+            ("VALIGN", (0, 0), (-1, -1), "MIDDLE"),
+            ("FONT", (0, 0), (-1, -1), REGULAR, 7),
+            ("GRID", (0, 0), (-1, -1), 0.4, INK),
+            ("LEFTPADDING", (0, 0), (-1, -1), 2.5),
+        ],
+        hAlign="LEFT",
+        spaceBefore=3,
+        spaceAfter=7,
+    )

@@ -1,4 +1,4 @@
-"""Published criteria held against the trial, and what the field book does not record."""
+"""Published criteria held against the trial."""
 
 from __future__ import annotations
 
@@ -35,7 +35,7 @@ _LENGTHS: dict[str, Kind] = {"cm": "reading", "m": "length"}
 
 
 def criteria(sheet: Sheet) -> list[Any]:
-    """What fails, the table in its order, and what was not recorded; nothing without checks."""
+    """What fails, and the table in its order; nothing without checks."""
     checks = sheet.reduction.checks
     if not checks:
         return []
@@ -71,10 +71,10 @@ def criteria_line(sheet: Sheet) -> str:
 def _sums(checks: tuple[Check, ...]) -> list[Any]:
     failed = [c for c in checks if c.status == "fail"]
     rest = sum(c.status == "not applicable" for c in checks)
-    flow: list[Any] = [paragraph(f"{tally(checks)}, {rest} not applicable.")]
+    flow: list[Any] = [*part("Criteria"), paragraph(f"{tally(checks)}, {rest} not applicable.")]
     if failed:
         flow += [
-            *part("Not met", 50.0),
+            *part("Not met"),
             *(
                 bullet(f"{c.title}: found {signed(found_text(c))}; limit {limit_text(c)}.")
                 for c in failed
@@ -129,15 +129,9 @@ def _under(check: Check) -> str:
 
 
 def _silent(checks: tuple[Check, ...]) -> list[Any]:
-    silent = [c for c in checks if c.status == "not recorded"]
+    silent = sum(c.status == "not recorded" for c in checks)
     if not silent:
         return []
     return [
-        *part("Not recorded by the field book", 60.0),
-        *(bullet(f"{c.title}: {_lacking(c)}") for c in silent),
+        paragraph(f"What {silent} of them ask for is listed under “Not recorded by the trial”.")
     ]
-
-
-def _lacking(check: Check) -> str:
-    said = check.note.partition("Not recorded: ")[2]
-    return said or "not recorded."

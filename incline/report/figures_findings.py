@@ -23,6 +23,8 @@ __all__ = ["finding_plot"]
 _THOUSANDTHS = 1000.0
 _PATTERN = "0.6"
 """Grey of the pattern, drawn thick under the readings."""
+_ABREAST = 4
+"""Keys on a line."""
 _LETTER = 3.9
 """Width of a letter of an axis [pt], on average."""
 
@@ -56,7 +58,8 @@ def finding_plot(
     limit = 1.25 * max((abs(h) for h in (*heights, *curve)), default=0.0) or 1.0
     when = {s.shift: t for s, t in zip(heel.shifts, times, strict=True)}
     with drawing_style():
-        figure = blank_figure(width, 152.0)
+        rows = -(-(len(heel.devices) + bool(curve)) // _ABREAST)
+        figure = blank_figure(width, 142.0 + 10.0 * rows)  # the keys stand above the panels
         each = (width - 30.0) / 3.0
         panels = [add_panel(figure, 40.0 + i * each, 27.0, each - 16.0, 96.0) for i in range(3)]
         unit, names = show.scale("moment"), [d.id for d in heel.devices]
@@ -163,4 +166,4 @@ def _keys(figure: Figure, names: Sequence[str], *, pattern: bool) -> None:
     ]  # fmt: skip
     if pattern:
         keys.append(Line2D([], [], color=_PATTERN, linewidth=3.0, label="as the finding has it"))
-    figure.legend(handles=keys, loc="upper left", ncols=5, columnspacing=1.4)
+    figure.legend(handles=keys, loc="upper left", ncols=_ABREAST, columnspacing=1.4)

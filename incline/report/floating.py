@@ -102,10 +102,10 @@ def _waterline(sheet: Sheet) -> list[Any]:
         bend = show.full(line.deflection, "reading")
         bend += " (sag)" if line.deflection > 0.0 else " (hog)" if line.deflection < 0.0 else ""
     pairs = (
-        ("Draft at AP", show.full(line.draft_ap, "length")),
-        ("Draft amidships", show.full(line.draft_mid, "length")),
-        ("Draft at FP", show.full(line.draft_fp, "length")),
-        ("Trim, + by the stern", show.full(line.trim, "length")),
+        ("Draft at AP", sheet.full(line.draft_ap, "length")),
+        ("Draft amidships", sheet.full(line.draft_mid, "length")),
+        ("Draft at FP", sheet.full(line.draft_fp, "length")),
+        ("Trim, + by the stern", sheet.full(line.trim, "length")),
         ("Deflection", bend),
         ("List from the drafts", lean),
     )
@@ -228,16 +228,16 @@ def _displacement(sheet: Sheet) -> list[Any]:
     return [
         steps(
             (
-                (formula, values, show.full(state.displacement, "mass")),
+                (formula, values, sheet.full(state.displacement, "mass")),
                 (
                     "KM = KB + BM",
                     f"{show.number(state.kb, 'length')} + {show.number(state.bmt, 'length')}",
-                    show.full(state.kmt, "length"),
+                    sheet.full(state.kmt, "length"),
                 ),
                 (
                     "LCB",
                     lcb,
-                    MISSING if state.lcb is None else show.full(state.lcb, "length"),
+                    MISSING if state.lcb is None else sheet.full(state.lcb, "length"),
                 ),
             ),
             sheet.width,

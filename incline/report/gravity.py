@@ -9,6 +9,8 @@ from incline.report.show import MISSING, NOT_DETERMINED, NOT_RECORDED
 from incline.report.tables import Column, Row, grid, steps
 
 if TYPE_CHECKING:
+    from collections.abc import Iterable
+
     from incline.record import Tank
 
 __all__ = ["centre_of_gravity"]
@@ -43,7 +45,11 @@ def _tanks(sheet: Sheet) -> list[Any]:
         *(Column(f"{axis} [{length}]", 0.08) for axis in "xyz"),
         Column(f"FSM [{show.unit('moment')}]", 0.10),
     )
-    rows = [Row(tuple(_tank(sheet, t))) for t in trial.tanks]
+    rows: list[Row] = []
+    for tank in trial.tanks:
+        rows.append(Row(tuple(_tank(sheet, tank))))
+        if tank.sounding:
+            rows.append(Row(("", f"Sounding: {tank.sounding}"), "under"))
     free = sheet.reduction.outcome.free_surface
     mass = show.number(sum(t.mass for t in trial.tanks), "mass")
     rows.append(
@@ -51,11 +57,20 @@ def _tanks(sheet: Sheet) -> list[Any]:
             ("total", "", "", "", "", mass, "", "", "", show.number(free.moment, "moment")), "total"
         )
     )
-    bases = [f"{t.name}: {t.fsm_basis}." for t in trial.tanks if t.fsm_basis and t.fsm]
+    bases = [f"{basis}: {', '.join(names)}." for basis, names in _bases(trial.tanks).items()]
     flow: list[Any] = [grid(columns, rows, sheet.width)]
     if bases:
         flow.append(note("Free-surface moments. " + " ".join(bases)))
     return flow
+
+
+def _bases(tanks: Iterable[Tank]) -> dict[str, list[str]]:
+    """How free-surface moments were found, with the tanks of each way."""
+    found: dict[str, list[str]] = {}
+    for tank in tanks:
+        if tank.fsm_basis and tank.fsm:
+            found.setdefault(tank.fsm_basis, []).append(tank.name)
+    return found
 
 
 def _tank(sheet: Sheet, tank: Tank) -> list[str]:
@@ -84,17 +99,17 @@ def _lines(sheet: Sheet) -> list[tuple[str, str, str]]:
         (
             "free-surface correction = ΣFSM / Δ",
             f"{show.number(free.moment, 'moment')} / {weight}",
-            show.full(free.correction, "length"),
+            sheet.full(free.correction, "length"),
         ),
         (
             "GM solid = GM fluid + correction",
             f"{gm} + {rise}",
-            show.full(heel.gm_fluid + free.correction, "length"),
+            sheet.full(heel.gm_fluid + free.correction, "length"),
         ),
         (
             "KG = KM − GM fluid − correction",
             f"{km} − {gm} − {rise}",
-            show.full(state.vcg, "length"),
+            sheet.full(state.vcg, "length"),
         ),
         _lcg_line(sheet),
         _tcg_line(sheet),
@@ -111,7 +126,7 @@ def _lcg_line(sheet: Sheet) -> tuple[str, str, str]:
         f"{show.number(state.lcb, 'length')} + ({show.plain(tau, 6)}) × "
         f"({show.number(state.vcg, 'length')} − {show.number(state.kb, 'length')})"
     )
-    return formula, values, show.full(state.lcg, "length")
+    return formula, values, sheet.full(state.lcg, "length")
 
 
 def _tcg_line(sheet: Sheet) -> tuple[str, str, str]:
@@ -124,4 +139,4 @@ def _tcg_line(sheet: Sheet) -> tuple[str, str, str]:
     if state.tcg is None:
         return formula, "see the remarks", NOT_DETERMINED
     values = f"{show.number(heel.gm_fluid, 'length', 4)} × ({show.plain(state.list_tan, 6)})"
-    return formula, values, show.full(state.tcg, "length", 4)
+    return formula, values, sheet.full(state.tcg, "length", 4)

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from typing import TYPE_CHECKING, Any
 
 from incline.report.document import Sheet, note, paragraph, part
@@ -11,6 +12,7 @@ from incline.report.tables import Column, Row, grid
 if TYPE_CHECKING:
     from collections.abc import Iterable
 
+    from incline.report.show import Show
     from incline.result import LedgerLine, Outcome
 
 __all__ = ["all_counted", "to_lightship"]
@@ -25,52 +27,54 @@ _ACTIONS = {
 def to_lightship(sheet: Sheet) -> list[Any]:
     """All lines with masses, centres and moments; totals; self-check."""
     outcome, show = sheet.reduction.outcome, sheet.show
-    length, moment = show.unit("length"), show.unit("moment")
+    length, moment = sheet.units("length"), sheet.units("moment")
     columns = (
         Column("item", 0.28, "left"),
-        Column(f"mass [{show.unit('mass')}]", 0.11),
+        Column(f"mass [{sheet.units('mass')}]", 0.11),
         *(Column(f"{axis} [{length}]", 0.09) for axis in "xyz"),
         *(Column(f"mass × {axis} [{moment}]", 0.115) for axis in "xyz"),
     )
-    state = outcome.as_inclined
-    rows = [
-        _total(sheet, "As inclined", state.displacement, (state.lcg, state.tcg, state.vcg)),
-    ]
-    for action, title in _ACTIONS.items():
-        rows += _group(
-            sheet, title, [line for line in outcome.ledger.lines if line.action == action]
-        )
-    light = outcome.lightship
-    rows.append(
-        _total(
-            sheet,
-            "Lightship",
-            light.displacement.value,
-            (light.lcg.value, light.tcg.value, light.vcg.value),
-        )
-    )
+    rows = _rows(outcome, show)
+    if sheet.beside is not None:
+        rows = _in_both(rows, _rows(outcome, sheet.beside))
     return [grid(columns, rows, sheet.width), *_sums(sheet), *_bases(sheet)]
 
 
+def _rows(outcome: Outcome, show: Show) -> list[Row]:
+    """As inclined, every line by what is done with it, lightship; in one unit system."""
+    state, light = outcome.as_inclined, outcome.lightship
+    rows = [_total(show, "As inclined", state.displacement, (state.lcg, state.tcg, state.vcg))]
+    for action, title in _ACTIONS.items():
+        rows += _group(show, title, [x for x in outcome.ledger.lines if x.action == action])
+    centre = (light.lcg.value, light.tcg.value, light.vcg.value)
+    return [*rows, _total(show, "Lightship", light.displacement.value, centre)]
+
+
+def _in_both(rows: list[Row], others: list[Row]) -> list[Row]:
+    """Each row of numbers with the same in other units below them."""
+    return [
+        replace(own, other=("", *other.cells[1:])) if any(other.cells[1:]) else own
+        for own, other in zip(rows, others, strict=True)
+    ]
+
+
 def _total(
-    sheet: Sheet,
+    show: Show,
     name: str,
     mass: float | None,
     centre: tuple[float | None, float | None, float | None],
 ) -> Row:
-    show = sheet.show
     places = [show.number(c, "length") for c in centre]
     moments = [show.mass_by_length(mass, c) for c in centre]
     return Row((name, show.number(mass, "mass"), *places, *moments), "total")
 
 
-def _group(sheet: Sheet, title: str, lines: list[LedgerLine]) -> list[Row]:
+def _group(show: Show, title: str, lines: list[LedgerLine]) -> list[Row]:
     """The lines of one action under their heading, with the sum of mass and moments."""
     rows = [Row((title, *[""] * 7), "band")]
     if not lines:
         return [*rows, Row(("none", *[""] * 7))]
-    rows += [_line(sheet, line) for line in lines]
-    show = sheet.show
+    rows += [_line(show, line) for line in lines]
     sign = -1.0 if lines[0].action == "deduct" else 1.0
     mass = sign * sum(line.mass for line in lines)
     text = show.number(mass, "mass")
@@ -92,8 +96,7 @@ def _moment(line: LedgerLine) -> tuple[float, float, float]:
     return x, y, z
 
 
-def _line(sheet: Sheet, line: LedgerLine) -> Row:
-    show = sheet.show
+def _line(show: Show, line: LedgerLine) -> Row:
     mass = show.number(line.mass if line.action != "deduct" else -line.mass, "mass")
     places = [show.number(c, "length") for c in (line.centre.x, line.centre.y, line.centre.z)]
     if line.to is not None:

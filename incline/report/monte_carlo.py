@@ -36,14 +36,12 @@ def monte_carlo(sheet: Sheet) -> list[Any]:
     run = sheet.reduction.simulation
     if run is None:
         return [
-            *part("Monte Carlo", 50.0),
             paragraph(
                 "No Monte Carlo run was made; the intervals are first order and not checked "
                 "by simulation."
             ),
         ]
     return [
-        *part("Monte Carlo", 170.0),
         paragraph(_told(run)),
         _table(sheet, run),
         note(

@@ -1,55 +1,88 @@
-"""Vessel, test and people; axes, signs, units and method."""
+"""Vessel, drawings, test and people; axes, signs, units and method."""
 
 from __future__ import annotations
 
 from typing import TYPE_CHECKING, Any
 
-from incline.report.document import Sheet, bullet, paragraph, part
+from incline.report.document import Sheet, bullet, note, paragraph, part
+from incline.report.recorded import (
+    about_environment,
+    about_ship,
+    about_test,
+    about_vessel,
+    pairs_of,
+)
 from incline.report.show import MISSING, NOT_RECORDED
 from incline.report.tables import Column, facts, grid
 
 if TYPE_CHECKING:
     from incline.record import Person
 
-__all__ = ["conventions", "vessel_and_test"]
+__all__ = ["conventions", "test", "vessel"]
 
 
-def vessel_and_test(sheet: Sheet) -> list[Any]:
-    """Particulars of the vessel and of the occasion, and who was there."""
-    trial, show = sheet.reduction.trial, sheet.show
-    vessel, occasion = trial.vessel, trial.occasion
-    ship = (
-        ("Name", vessel.name),
-        ("Identity number", vessel.number),
-        ("Kind", vessel.kind),
-        ("Flag", vessel.flag),
-        ("Builder", vessel.builder),
-        ("Length, AP to FP", show.full(vessel.lpp, "length")),
-        ("Beam", show.full(vessel.beam, "length")),
-        ("Depth", show.full(vessel.depth, "length")),
-    )
-    test = (
-        ("Date", occasion.date.isoformat()),
-        ("Place", occasion.place),
-        ("Berth and mooring", occasion.berth),
-        ("Weather", occasion.weather),
-        ("Depth of water", show.full(occasion.water_depth, "length")),
-        ("Notes", occasion.notes),
-    )
+def vessel(sheet: Sheet) -> list[Any]:
+    """Particulars of the vessel, and the drawings and documents that were used."""
     return [
-        *part("Vessel"),
-        facts([(k, v or NOT_RECORDED) for k, v in ship], sheet.width, abreast=2),
-        *part("Test"),
-        facts([(k, v or NOT_RECORDED) for k, v in test], sheet.width),
+        facts(pairs_of(about_vessel(sheet)), sheet.width, abreast=2),
+        *part("Drawings and documents used"),
+        *_documents(sheet),
+    ]
+
+
+def _documents(sheet: Sheet) -> list[Any]:
+    found = sheet.reduction.trial.papers.documents
+    if not found:
+        return [paragraph(f"Drawings and documents: {NOT_RECORDED}.")]
+    columns = (
+        Column("title", 0.36, "left"),
+        Column("number", 0.17, "left"),
+        Column("revision", 0.11, "left"),
+        Column("date", 0.12, "left"),
+        Column("used for", 0.24, "left"),
+    )
+    rows = [
+        [d.title, *(t or NOT_RECORDED for t in (d.number, d.revision, d.date, d.use))]
+        for d in found
+    ]
+    return [grid(columns, rows, sheet.width)]
+
+
+def test(sheet: Sheet) -> list[Any]:
+    """The occasion, its surroundings by shift, the ship's own condition, and who was there."""
+    return [
+        facts(pairs_of(about_test(sheet)), sheet.width),
+        *part("Surroundings"),
+        facts(pairs_of(about_environment(sheet)), sheet.width, abreast=2),
+        *part("Weather and tide by shift"),
+        *_by_shift(sheet),
+        *part("Condition of the ship"),
+        facts(pairs_of(about_ship(sheet)), sheet.width),
         *part("People"),
         *_people(sheet),
     ]
 
 
+def _by_shift(sheet: Sheet) -> list[Any]:
+    shifts = sheet.reduction.trial.shifts
+    if not any(s.weather or s.tide for s in shifts):
+        return [paragraph(f"Weather and tide by shift: {NOT_RECORDED}.")]
+    columns = (
+        Column("shift", 0.08, "left"),
+        Column("time", 0.12, "left"),
+        Column("weather", 0.50, "left"),
+        Column("tide", 0.30, "left"),
+    )
+    rows = [
+        [str(s.number), *(t or NOT_RECORDED for t in (s.time, s.weather, s.tide))] for s in shifts
+    ]
+    return [grid(columns, rows, sheet.width)]
+
+
 def _people(sheet: Sheet) -> list[Any]:
     people = sheet.reduction.trial.people
     if not people:
-        return [paragraph("People at the test: not recorded.")]
+        return [paragraph(f"People at the test: {NOT_RECORDED}.")]
     show = sheet.show
     length = show.unit("length")
     columns = (
@@ -58,7 +91,9 @@ def _people(sheet: Sheet) -> list[Any]:
         Column(f"mass aboard [{show.unit('mass')}]", 0.13),
         *(Column(f"{axis} [{length}]", 0.09) for axis in "xyz"),
     )
-    return [grid(columns, [_person(sheet, p) for p in people], sheet.width)]
+    aboard = [p.mass for p in people if p.mass is not None]
+    said = f"Aboard during the shifts: {len(aboard)}, together {show.full(sum(aboard), 'mass')}."
+    return [grid(columns, [_person(sheet, p) for p in people], sheet.width), note(said)]
 
 
 def _person(sheet: Sheet, person: Person) -> list[str]:

@@ -16,6 +16,10 @@ if TYPE_CHECKING:
 __all__ = ["devices_and_readings"]
 
 
+_LONG = 24
+"""Characters of a device's name from which its column is wider."""
+
+
 def devices_and_readings(sheet: Sheet) -> list[Any]:
     """Table of devices, table of readings, and the exclusions with their reasons."""
     return [
@@ -30,11 +34,13 @@ def devices_and_readings(sheet: Sheet) -> list[Any]:
 
 def _devices(sheet: Sheet) -> Any:  # noqa: ANN401 - untyped library
     columns = (
-        Column("device", 0.24, "left"),
-        Column("kind", 0.15, "left"),
-        Column(f"length or span [{sheet.show.unit('length')}]", 0.15),
-        Column("place", 0.22, "left"),
-        Column("calibration", 0.24, "left"),
+        Column("device", 0.17, "left"),
+        Column("kind", 0.12, "left"),
+        Column(f"length or span [{sheet.show.unit('length')}]", 0.11),
+        Column("place", 0.16, "left"),
+        Column("calibration", 0.15, "left"),
+        Column("damping", 0.15, "left"),
+        Column("read by", 0.14, "left"),
     )
     return grid(columns, [_device(sheet, d) for d in sheet.reduction.trial.devices], sheet.width)
 
@@ -44,22 +50,23 @@ def _device(sheet: Sheet, device: Device) -> list[str]:
         device.id,
         device.kind,
         sheet.show.number(device.length, "length"),
-        device.place or NOT_RECORDED,
-        device.calibration or NOT_RECORDED,
+        *(t or NOT_RECORDED for t in (device.place, device.calibration)),
+        *(t or NOT_RECORDED for t in (device.damping, device.read_by)),
     ]
 
 
 def _readings(sheet: Sheet) -> list[Any]:
     trial = sheet.reduction.trial
+    more = 0.12 if any(len(d.id) > _LONG for d in trial.devices) else 0.0
     columns = (
         Column("shift", 0.05, "left"),
-        Column("device", 0.12, "left"),
-        Column("as recorded", 0.25, "left"),
+        Column("device", 0.12 + more, "left"),
+        Column("as recorded", 0.25 - more / 2.0, "left"),
         Column("reduced", 0.09),
         Column("u", 0.06),
         Column("unit", 0.06, "left"),
         Column("tangent", 0.09),
-        Column("how reduced; note", 0.28, "left"),
+        Column("how reduced; note", 0.28 - more / 2.0, "left"),
     )
     decimals = sheet.show.raw_decimals(trial.readings)
     points = {(p.shift, p.device): p for p in sheet.reduction.outcome.heel.points}

@@ -33,7 +33,8 @@ STYLES: dict[str, ParagraphStyle] = {
     s.name: s
     for s in (
         _style("title", 17, 21, BOLD, spaceAfter=1),
-        _style("subtitle", 10.5, 14, spaceAfter=6),
+        _style("subtitle", 10.5, 14, spaceAfter=2),
+        _style("issue", 9, 12, BOLD, spaceAfter=5),
         _style("section", 11.5, 15, BOLD, spaceBefore=9, spaceAfter=4),
         _style("part", 8.8, 12, BOLD, spaceBefore=6, spaceAfter=2),
         _style("body", 8.2, 11.3, spaceAfter=4),
@@ -41,6 +42,8 @@ STYLES: dict[str, ParagraphStyle] = {
         _style("note", 7, 9.2, spaceAfter=5),
         _style("cell_left", 7.2, 8.9, alignment=TA_LEFT),
         _style("cell_right", 7.2, 8.9, alignment=TA_RIGHT),
+        _style("beside_left", 6.4, 7.9, alignment=TA_LEFT),
+        _style("beside_right", 6.4, 7.9, alignment=TA_RIGHT),
         _style("head_left", 7.2, 8.9, BOLD, alignment=TA_LEFT),
         _style("head_right", 7.2, 8.9, BOLD, alignment=TA_RIGHT),
         _style("result_left", 9.2, 12, alignment=TA_LEFT),

@@ -15,10 +15,12 @@ from incline.report.text import markup
 if TYPE_CHECKING:
     from collections.abc import Iterable, Sequence
 
-__all__ = ["Column", "Row", "facts", "grid", "steps"]
+__all__ = ["Column", "Listed", "Row", "facts", "grid", "steps"]
 
 _SHADE = Color(0.93, 0.93, 0.93)
 _PAD = 1.6
+_PAGE, _ENOUGH = 600.0, 300.0
+"""Points of height that every empty page has, and in which a row taller than that may begin."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -35,11 +37,34 @@ class Row:
     """Cells of a row; ``look`` sets off totals, and headings and remarks that span the table.
 
     A ``stress`` row is shaded and bold. An ``under`` row belongs to the one above it: its second
-    cell spans all columns but the first.
+    cell spans all columns but the first. A ``beside`` row belongs to the one above it too, and says
+    the same in other units; ``other`` are cells that say so within the row itself.
     """
 
     cells: tuple[str, ...]
-    look: Literal["plain", "total", "band", "span", "stress", "under"] = "plain"
+    look: Literal["plain", "total", "band", "span", "stress", "under", "beside"] = "plain"
+    other: tuple[str, ...] = ()
+
+
+class Listed(Table):  # type: ignore[misc]
+    """A table that still knows its words: ``titles`` of the columns, and ``texts`` of the rows."""
+
+    titles: tuple[str, ...] = ()
+    texts: tuple[tuple[str, ...], ...] = ()
+    splitInRow: int  # noqa: N815 - the name of the library
+
+    def split(self, width: float, height: float) -> list[Table]:
+        """Parts for this page and the next; a row splits only when no page could hold it."""
+        allowed, self.splitInRow = self.splitInRow, 0
+        parts: list[Table] = super().split(width, height)
+        if not parts and allowed and height > _ENOUGH:
+            first = self._rowHeights[: self.repeatRows + 1]
+            self.splitInRow = int(sum(first) > _PAGE)
+            parts = super().split(width, height)
+        self.splitInRow = allowed
+        for part in parts:
+            part.splitInRow = allowed
+        return parts
 
 
 def _cell(text: str, align: str, *, bold: bool) -> Paragraph:
@@ -54,8 +79,17 @@ def _row_cells(columns: Sequence[Column], row: Row) -> list[Any]:
         return [_cell(row.cells[0], "left", bold=heading), *("" for _ in aligns[1:])]
     if row.look == "under":
         return [*(_cell(t, "left", bold=False) for t in row.cells), *("" for _ in aligns[2:])]
+    if row.look == "beside":
+        return [
+            Paragraph(markup(t), STYLES[f"beside_{a}"])
+            for t, a in zip(row.cells, aligns, strict=True)
+        ]
     bold = row.look in ("total", "stress")
-    return [_cell(t, a, bold=bold) for t, a in zip(row.cells, aligns, strict=True)]
+    cells = [_cell(t, a, bold=bold) for t, a in zip(row.cells, aligns, strict=True)]
+    if not row.other:
+        return cells
+    others = zip(cells, row.other, aligns, strict=True)
+    return [[c, Paragraph(markup(t), STYLES[f"beside_{a}"])] if t else c for c, t, a in others]
 
 
 def _looks(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
@@ -63,12 +97,15 @@ def _looks(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
     for i, row in enumerate(rows, start=1):
         if row.look == "band":
             commands += [("SPAN", (0, i), (-1, i)), ("BACKGROUND", (0, i), (-1, i), _SHADE)]
+            commands.append(("NOSPLIT", (0, i), (-1, min(i + 1, len(rows)))))  # nor a heading
         elif row.look == "span":
             commands.append(("SPAN", (0, i), (-1, i)))
         elif row.look == "stress":
             commands.append(("BACKGROUND", (0, i), (-1, i), _SHADE))
         elif row.look == "under":
             commands += _under(i, stressed=i > 1 and rows[i - 2].look == "stress")
+        elif row.look == "beside":
+            commands += [("TOPPADDING", (0, i), (-1, i), 0), ("NOSPLIT", (0, i - 1), (-1, i))]
         elif row.look == "total":
             commands.append(("LINEABOVE", (0, i), (-1, i), 0.6, INK))
             if i > 1:
@@ -92,7 +129,7 @@ def _rules(rows: Sequence[Row]) -> list[tuple[Any, ...]]:
     return [
         ("LINEBELOW", (0, i), (-1, i), 0.25, RULE)
         for i, below in enumerate(rows[1:], start=1)
-        if below.look != "under"
+        if below.look not in ("under", "beside")
     ]
 
 
@@ -111,7 +148,7 @@ def grid(
     width: float,
     *,
     whole: bool = False,
-) -> Table:
+) -> Listed:
     """A table of ``width`` points under one header row; a cell taller than a page splits.
 
     With ``whole`` no row splits, nor leaves its ``under`` row; cells must be short of a page.
@@ -134,7 +171,7 @@ def grid(
         *_looks(listed),
         *_gaps(columns),
     ]
-    return Table(
+    table = Listed(
         [head, *(_row_cells(columns, r) for r in listed)],
         colWidths=[width * c.share / total for c in columns],
         repeatRows=1,
@@ -144,9 +181,12 @@ def grid(
         spaceBefore=3,
         spaceAfter=7,
     )
+    table.titles = tuple(c.title for c in columns)
+    table.texts = tuple(t for r in listed for t in (r.cells, r.other) if t)
+    return table
 
 
-def facts(pairs: Sequence[tuple[str, str]], width: float, *, abreast: int = 1) -> Table:
+def facts(pairs: Sequence[tuple[str, str]], width: float, *, abreast: int = 1) -> Listed:
     """Label and value; ``abreast`` pairs on a line, read down the first column first."""
     high = -(-len(pairs) // abreast)
     rows: list[list[Any]] = [
@@ -159,7 +199,7 @@ def facts(pairs: Sequence[tuple[str, str]], width: float, *, abreast: int = 1) -
     ]
     label = 0.26 if abreast == 1 else 0.40
     shares = [label / abreast, (1.0 - label) / abreast] * abreast
-    return Table(
+    table = Listed(
         rows,
         colWidths=[width * s for s in shares],
         splitInRow=1,
@@ -175,6 +215,8 @@ def facts(pairs: Sequence[tuple[str, str]], width: float, *, abreast: int = 1) -
         spaceBefore=2,
         spaceAfter=7,
     )
+    table.titles, table.texts = ("what", "value"), tuple(pairs)
+    return table
 
 
 def _pair(pairs: Sequence[tuple[str, str]], index: int) -> tuple[tuple[bool, str], ...]:
@@ -182,7 +224,7 @@ def _pair(pairs: Sequence[tuple[str, str]], index: int) -> tuple[tuple[bool, str
     return (True, label), (False, value)
 
 
-def steps(lines: Iterable[tuple[str, str, str]], width: float) -> Table:
+def steps(lines: Iterable[tuple[str, str, str]], width: float) -> Listed:
     """Lines of a calculation: formula, the values put in, the result."""
     columns = (
         Column("formula", 0.40, "left"),

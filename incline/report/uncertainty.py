@@ -1,32 +1,49 @@
-"""The uncertainty section: how sure the result is, and what makes it unsure."""
+"""How sure the result is, in words; and the appendix that says what makes it unsure."""
 
 from __future__ import annotations
 
 import math
 from typing import TYPE_CHECKING, Any
 
-from incline.report.amounts import RESULTS, simulated_of, unit_of
+from incline.report.amounts import RESULTS, budget_of, simulated_of, unit_of
 from incline.report.budgets import budgets
 from incline.report.document import Sheet, note, paragraph, part
-from incline.report.monte_carlo import monte_carlo
+from incline.report.monte_carlo import intervals
 from incline.report.show import MISSING, signed
 from incline.report.tables import Column, Row, grid
 
 if TYPE_CHECKING:
     from incline.result import SlopeUncertainty
 
-__all__ = ["in_plain_words", "uncertainty"]
+__all__ = ["budget_pages", "in_plain_words", "uncertainty"]
+
+
+_LEADING = 4
+"""Sources of KG's uncertainty named in the sentence on it."""
 
 
 def uncertainty(sheet: Sheet) -> list[Any]:
-    """KG in plain words, the scatter in three, budgets, covariance, Monte Carlo."""
+    """KG in plain words, what it comes from, and the intervals; the sums are in an appendix."""
     return [
-        *(paragraph(text) for text in in_plain_words(sheet)),
-        *_scatter(sheet),
-        *budgets(sheet),
-        *_together(sheet),
-        *monte_carlo(sheet),
+        *(paragraph(text) for text in (*in_plain_words(sheet), *_sources(sheet))),
+        *intervals(sheet),
+        note("Budgets of every result, and the Monte Carlo run, stand in the appendices."),
     ]
+
+
+def budget_pages(sheet: Sheet) -> list[Any]:
+    """The scatter in three, budgets, covariance."""
+    return [*_scatter(sheet), *budgets(sheet), *_together(sheet)]
+
+
+def _sources(sheet: Sheet) -> list[str]:
+    """Where most of the uncertainty of KG comes from."""
+    budget = budget_of(sheet.reduction.outcome, "vcg")
+    if budget is None or not budget.lines or budget.estimate.u is None:
+        return []
+    first = sorted(budget.lines, key=lambda x: -abs(x.share))[:_LEADING]
+    said = "; ".join(f"{x.name} ({sheet.show.plain(100.0 * x.share, 0)} %)" for x in first)
+    return [f"Most of it comes from: {said}. In parentheses: share of the variance of KG."]
 
 
 def in_plain_words(sheet: Sheet) -> list[str]:

@@ -8,6 +8,7 @@ import resource
 import statistics
 import subprocess
 import sys
+import tempfile
 import time
 from pathlib import Path
 
@@ -21,6 +22,12 @@ IMPORTS = (
 )
 REDUCE = (
     f"import sys; sys.argv = ['incline', 'reduce', {DEMO!r}]; from incline.cli import main; main()"
+)
+
+DRAWING = "import matplotlib.figure, reportlab.platypus, reportlab.pdfbase.ttfonts"
+REPORT = (
+    f"import sys; sys.argv = ['incline', 'report', {DEMO!r}, '-o', sys.argv[1], '--force'];"
+    "from incline.cli import main; main()"
 )
 
 DRAWS = f"""
@@ -71,10 +78,11 @@ print((time.process_time() - began) / 200)
 """
 
 
-def cpu(code: str) -> float:
+def cpu(code: str, *arguments: str) -> float:
     """CPU seconds of a process of its own that runs ``code``."""
     before = resource.getrusage(resource.RUSAGE_CHILDREN)
-    subprocess.run([sys.executable, "-c", code], check=True, stdout=subprocess.DEVNULL, cwd=ROOT)
+    command = [sys.executable, "-c", code, *arguments]
+    subprocess.run(command, check=True, stdout=subprocess.DEVNULL, cwd=ROOT)
     after = resource.getrusage(resource.RUSAGE_CHILDREN)
     return after.ru_utime + after.ru_stime - before.ru_utime - before.ru_stime
 
@@ -93,6 +101,12 @@ def main() -> None:
     imports, reduce = (statistics.median(p[i] for p in pairs) for i in (0, 1))
     ratio = statistics.median(r / i for i, r in pairs)
     print(f"reduce {reduce:.2f} s, its imports alone {imports:.2f} s: {ratio:.2f} times")
+    with tempfile.TemporaryDirectory() as folder:
+        name = str(Path(folder) / "report.pdf")
+        pairs = [(cpu(f"{IMPORTS};{DRAWING}"), cpu(REPORT, name)) for _ in range(5)]
+    imports, report = (statistics.median(p[i] for p in pairs) for i in (0, 1))
+    ratio = statistics.median(r / i for i, r in pairs)
+    print(f"report {report:.2f} s, its imports alone {imports:.2f} s: {ratio:.2f} times")
     drawing, whole, peak = said(DRAWS)
     print(
         f"a million draws {whole:.2f} s, drawing the numbers alone {drawing:.2f} s:"
