@@ -179,9 +179,7 @@ def _by(
     defects = balance_defects(trial, found)
     if defects and method == "heeled-hull":
         raise FieldDataError(defects)
-    result = MethodResult(
-        method=method, vcg=float(found.light_vcg), gm_fluid=float(found.gm_fluid)
-    )
+    result = MethodResult(method=method, vcg=float(found.light_vcg), gm_fluid=float(found.gm_fluid))
     return [] if defects else [result]
 
 

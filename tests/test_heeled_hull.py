@@ -26,7 +26,6 @@ from incline.hull import pose_of
 from incline.hull.spacing import spacing_misses
 from incline.setup import hull_of
 
-
 BAR = 1e-4
 """m of KG: a tenth of the millimetre to which KG is printed."""
 SMALL = (0.0, 1.0, 2.0, 3.0, 0.0, -1.0, -2.0, -3.0, 0.0)

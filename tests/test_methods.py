@@ -192,7 +192,10 @@ def test_every_method_is_told(patrol):
     assert not any("leaves out" in n for n in names)
     off = 1000.0 * (other["straight-line"]["vcg_m"] - truth.vcg)
     (remark,) = (r for r in result.remarks if "straight-line KG" in r)
-    assert f"straight-line KG {abs(off):.1f} mm {'low, on the unsafe side' if off < 0 else 'high'}" in remark
+    assert (
+        f"straight-line KG {abs(off):.1f} mm {'low, on the unsafe side' if off < 0 else 'high'}"
+        in remark
+    )
     wall_sided = 1000.0 * (other["wall-sided"]["vcg_m"] - result.outcome.lightship.vcg.value)
     assert f"wall-sided formula {wall_sided:.1f} mm off" in remark
     assert " ".join(remark.split()) in " ".join(show(result).split())
@@ -205,7 +208,7 @@ def test_another_method_with_offsets(method, patrol, tmp_path):
     result = reduce(read_trial(chosen(copied(folder, tmp_path / "other"), method)))
     outcome = result.outcome
     assert outcome.heel.method == method
-    assert [m.method for m in outcome.heel.others][0] == "heeled-hull"
+    assert outcome.heel.others[0].method == "heeled-hull"
     assert outcome.as_inclined.hull is not None
     for key in ("volume", "displacement", "kb", "bmt", "lcb"):
         value = getattr(exact.outcome.as_inclined, key)
