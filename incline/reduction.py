@@ -118,7 +118,7 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
         found = run(plan, given)
         refuse(trial, plan, seen, found)
         method, *others = methods_of(trial, hull)
-        aside = [r for m in others for r in _by(m, trial, plan, given, hull)]
+        aside = [r for m in others for r in _by(m, trial, seen, plan, given, hull)]
     heel = describe_heel(trial, seen, found, method, aside)
     heel = dataclasses.replace(heel, levers=lever_curve(found, hull))
     waterline = describe_waterline(plan.waterline, trial.drafts, trial.vessel.lpp)
@@ -168,7 +168,12 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
 
 
 def _by(
-    method: Method, trial: Trial, plan: Plan, given: Inputs, hull: Hull | None
+    method: Method,
+    trial: Trial,
+    seen: Observations,
+    plan: Plan,
+    given: Inputs,
+    hull: Hull | None,
 ) -> list[MethodResult]:
     """The result by another method, nothing where it has none.
 
@@ -176,7 +181,7 @@ def _by(
     """
     lever = lever_of(method, hull, plan.placing.trimming)
     found = run(dataclasses.replace(plan, lever=lever), given)
-    defects = balance_defects(trial, found)
+    defects = [] if lever is None else balance_defects(trial, seen, found)
     if defects and method == "heeled-hull":
         raise FieldDataError(defects)
     result = MethodResult(method=method, vcg=float(found.light_vcg), gm_fluid=float(found.gm_fluid))

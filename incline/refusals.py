@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from typing import TYPE_CHECKING
 
+from incline.diagnosis import search
 from incline.entry import shift_freeboards
 from incline.errors import Defect, FieldDataError, Where
 from incline.hull import Integrated, pose_of
@@ -56,25 +57,24 @@ _STEEP = 15.0
 """Degrees of heel beyond which readings or lengths must be wrong: tests stay below 4."""
 
 
-def refuse_absurd(trial: Trial, found: Yield, search: Search | None) -> None:
-    """Raise FieldDataError for a height that no ship can have.
+def refuse_absurd(trial: Trial, found: Yield, looked: Search | None) -> None:
+    """Raise FieldDataError for a height or a GM that no ship of a test can have.
 
     Something was written in a wrong unit or place; where the residuals point at it, that is said.
     """
     vcg, highest = float(found.light_vcg), 3.0 * trial.vessel.depth
-    if 0.0 < vcg < highest:
+    gm = float(found.gm_fluid)
+    if gm > 0.0 and 0.0 < vcg < highest:
         return
     hint = "check the masses of the test weights, the lengths, and the units of all tables"
-    if search is not None and search.signs:
-        hint = f"the residuals point to this: {_pointer(search.signs[0])}"
     raise FieldDataError(
         [
             Defect(
                 Where("trial"),
                 "kg-absurd",
-                f"a lightship KG of {vcg:.3f} m",
-                f"a KG between the baseline and three depths ({highest:.2f} m)",
-                hint,
+                f"a lightship KG of {vcg:.3f} m, GM {gm:.3f} m",
+                f"a KG between the baseline and three depths ({highest:.2f} m), GM above zero",
+                _pointer(looked) or hint,
             )
         ]
     )
@@ -98,11 +98,16 @@ def _steep_defects(seen: Observations, found: Yield) -> list[Defect]:
     return defects
 
 
-def _pointer(sign: Sign) -> str:
-    """A finding in one line."""
+def _pointer(looked: Search | None) -> str:
+    """The first finding in one line, empty where there is none."""
+    signs = () if looked is None else looked.signs
+    return _said(signs[0]) if signs else ""
+
+
+def _said(sign: Sign) -> str:
     at = "" if sign.shift is None else f", shift {sign.shift}"
     by = "" if sign.device is None else f", device {sign.device}"
-    return f"{sign.cause}{at}{by}: {sign.size}"
+    return f"the residuals point to this: {sign.cause}{at}{by}: {sign.size}"
 
 
 def _line_defects(seen: Observations, found: Yield) -> list[Defect]:
@@ -223,7 +228,8 @@ def _shift_defects(trial: Trial, plan: Plan, seen: Observations, found: Yield) -
 
     Where the ship cannot, its deck edge is looked at by the heels of the straight line.
     """
-    unsteady = balance_defects(trial, found)
+    # a line that falls is left to `refuse_absurd`, which knows more of the residuals
+    unsteady = [] if plan.lever is None else balance_defects(trial, seen, found)
     if not isinstance(plan.afloat, Integrated):
         return unsteady
     if unsteady:
@@ -241,8 +247,11 @@ def _shift_defects(trial: Trial, plan: Plan, seen: Observations, found: Yield) -
     return immersed or unsteady
 
 
-def balance_defects(trial: Trial, found: Yield) -> list[Defect]:
-    """A ship that would not stand as it was read, by the method of ``found``."""
+def balance_defects(trial: Trial, seen: Observations, found: Yield) -> list[Defect]:
+    """A ship that would not stand as it was read, by the method of ``found``.
+
+    Where residuals about a straight line point at a cause, that is said.
+    """
     import numpy as np
 
     heeling = found.heeling
@@ -257,15 +266,19 @@ def balance_defects(trial: Trial, found: Yield) -> list[Defect]:
         what = f"no stable equilibrium at shift {', '.join(shifts)}: no righting lever there"
     else:
         return []
+    looked = search(trial, seen, found.transverse)
+    # what all devices show together is the hull's own curve here, and no disturbance
+    alone = [s for s in looked.signs if s.where != "ship"] if looked is not None else []
+    check = "check the drafts, the masses of the weights and the readings"
     return [
         Defect(
             Where("readings.csv"),
             "equilibrium-none",
             what,
             "a ship with positive GM over the heels of the test",
-            "check the drafts, the masses of the weights and the readings; if they are right the"
-            " ship is unstable: stop the test, land no more weight high up, and do not correct a"
-            " loll by moving weight to the high side",
+            f"{_said(alone[0]) if alone else check}; if the records are right the ship is unstable:"
+            " stop the test, land no more weight high up, and do not correct a loll by moving"
+            " weight to the high side",
         )
     ]
 
