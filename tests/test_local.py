@@ -5,6 +5,7 @@ import json
 import numpy as np
 import pytest
 from hull_chain import worked
+from hull_edits import column
 from hull_ships import BOX, CATAMARAN, CURVED_VEE, HIGH_CHINE, PATROL, ROUND_BILGE, SWIM_BARGE
 from hull_trial import write_hull_trial
 from simulate import SlackTank
@@ -46,7 +47,7 @@ def stages(tmp_path_factory):
 def test_at_the_estimates_both_give_the_same(name, stages):
     stage, exact = stages[name]
     nothing = np.zeros((len(exact.sources), 1))
-    # A micron is what the first leaves of KG where Newton's method stops (1e-8 m).
+    # Newton's method stops when KG has moved by less than 1e-8 m.
     assert stage.model(nothing) == pytest.approx(exact(nothing), abs=2e-8, rel=1e-10)
 
 
@@ -106,7 +107,9 @@ def test_sensitivities_of_the_box_are_those_of_its_closed_form(stages):
 
 
 def test_json_carries_the_miss_and_monte_carlo_repeats_itself(tmp_path):
-    write_hull_trial(tmp_path, HIGH_CHINE, degrees=(0.0, 1.0, 2.0, -1.0, -2.0))
+    write_hull_trial(tmp_path, HIGH_CHINE, degrees=(0.0, 1.0, 2.0, 3.0, 0.0, -1.0, -2.0, -3.0))
+    rng = np.random.default_rng(5)
+    column(tmp_path, "readings.csv", r"reading \[mm\]", lambda r: r + float(rng.normal()))
     trial = read_trial(tmp_path)
     first, second = (to_json(reduce(trial, draws=20_000)) for _ in range(2))
     assert first == second

@@ -9,6 +9,7 @@ import statsmodels.api as sm
 from conftest import DEMO_TRIALS
 from demos import DEMOS, demo_files
 from hull_chain import worked
+from hull_edits import column, with_keys
 from hull_forms import afloat
 from hull_ships import BOX, HIGH_CHINE, LOW_CHINE, PATROL, VEE
 from hull_trial import write_hull_trial
@@ -25,9 +26,7 @@ LEVEL = {"tau": 0.0, "list_tan": 0.0, "deflection": 0.0}
 
 def chosen(folder, method):
     """The trial with a method asked for."""
-    file = folder / "trial.toml"
-    text = file.read_text(encoding="utf-8")
-    file.write_text(f'[method]\nheel = "{method}"\n\n{text}', encoding="utf-8")
+    with_keys(folder, f'[method]\nheel = "{method}"')
     return folder
 
 
@@ -257,16 +256,11 @@ def test_table_in_place_of_the_offsets(patrol, tmp_path):
 
 
 def noisy(folder, sd):
-    """The trial's readings with noise."""
-    file = folder / "readings.csv"
-    head, *rows = file.read_text(encoding="utf-8").splitlines()
-    at, rng = head.split(",").index("reading [mm]"), np.random.default_rng(4)
-    lines = [head]
-    for row in rows:
-        cells = row.split(",")
-        cells[at] = repr(float(cells[at]) + 1000.0 * sd * float(rng.normal()))
-        lines.append(",".join(cells))
-    file.write_text("\n".join(lines) + "\n", encoding="utf-8")
+    """The trial's readings with noise [m]."""
+    rng = np.random.default_rng(4)
+    column(
+        folder, "readings.csv", r"reading \[mm\]", lambda r: r + 1000.0 * sd * float(rng.normal())
+    )
 
 
 @pytest.mark.parametrize("ship", [VEE, HIGH_CHINE], ids=lambda s: s.name)
