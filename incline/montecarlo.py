@@ -29,8 +29,10 @@ BLOCK = 10_000
 """Draws in a block: the least that JCGM 101, 7.9.4, allows for 95 % intervals."""
 MOST = 1_000_000
 _DIGITS = 1
-"""Significant digits of u that count as meaningful (JCGM 101, 7.9.2). The run itself is carried to
-a fifth of that tolerance, so that the comparison of clause 8 is not decided by chance (8.2)."""
+"""Significant digits of u that count as meaningful (JCGM 101, 7.9.2)."""
+_FINER, _FINER_GM = 5.0, 2.0
+"""The run itself is carried to a fifth of that tolerance, so that the comparison of clause 8 is not
+decided by chance (8.2); to half of it for GM, which is no result of the lightship."""
 
 
 def seed_of(digest: str) -> int:
@@ -119,7 +121,10 @@ class _Settling:
     def __init__(self, budgets: Sequence[Budget], *, heavy: bool) -> None:
         self.first = 2 if heavy else 0
         self.tolerance = [
-            None if b.estimate.u is None else numerical_tolerance(b.estimate.u, _DIGITS) / 5.0
+            None
+            if b.estimate.u is None
+            else numerical_tolerance(b.estimate.u, _DIGITS)
+            / (_FINER_GM if b.key == "gm_fluid" else _FINER)
             for b in budgets
         ]
         self.seen: list[list[tuple[float, float, float, float]]] = []

@@ -167,8 +167,8 @@ def test_words_by_shift_and_by_tank(tmp_path: Path) -> None:
     shifts = SMALL["shifts.csv"].replace("z [m]\n", "z [m],weather,tide\n")
     shifts = shifts.replace("0,9:00,A,4.00 P,,", "0,9:00,A,4.00 P,,,calm,ebb")
     shifts = shifts.replace("0,,B,4.00 S,,", "0,,B,4.00 S,,,fog,ebb")
-    tanks = SMALL["tanks.csv"].replace("breadth [m],shape", "breadth [m],shape,sounding")
-    tanks = tanks.replace(",4,3,box", ",4,3,box,0.50 m at the pipe")
+    tanks = SMALL["tanks.csv"].replace("shape,depth [m]", "shape,depth [m],sounding")
+    tanks = tanks.replace(",4,3,box,1.2", ",4,3,box,1.2,0.50 m at the pipe")
     trial = read_trial(write(tmp_path, {**SMALL, "shifts.csv": shifts, "tanks.csv": tanks}))
     assert [(s.weather, s.tide) for s in trial.shifts] == [("calm; fog", "ebb"), *[("", "")] * 3]
     assert [t.sounding for t in trial.tanks] == ["0.50 m at the pipe", "", "", ""]
