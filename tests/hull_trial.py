@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
+from functools import cache
 from pathlib import Path
 
 import numpy as np
@@ -139,6 +140,19 @@ def truth_of(scene: HullScene) -> Truth:
     )  # fmt: skip
 
 
+@cache
+def _written(
+    ship: Ship, style: Style | None, more: str, scene: tuple[tuple[str, object], ...]
+) -> tuple[dict[str, str], Truth]:
+    """The files and the truth of a trial; the equilibria of one are found once."""
+    made = hull_scene(ship, **dict(scene))  # type: ignore[arg-type]
+    style = style or Style()
+    head = {**HEAD, "name": f"Test {ship.name}", "depth": str(ship.depth), "more": more}
+    places = tuple(ship.lpp * s for s in (0.08, 0.5, 0.9))
+    files = {"trial.toml": trial_toml(made, style, head), **trial_tables(made, style, places)}
+    return files, truth_of(made)
+
+
 def write_hull_trial(
     folder: Path, ship: Ship, *, style: Style | None = None, more: str = "", **scene: object
 ) -> Truth:
@@ -147,12 +161,8 @@ def write_hull_trial(
     ``scene`` as in `hull_scene`; ``more`` is added to trial.toml before the devices. Drafts are read
     at six marks, and figures are written in full unless the ``style`` rounds them.
     """
-    made = hull_scene(ship, **scene)  # type: ignore[arg-type]
-    style = style or Style()
-    head = {**HEAD, "name": f"Test {ship.name}", "depth": str(ship.depth), "more": more}
-    places = tuple(ship.lpp * s for s in (0.08, 0.5, 0.9))
-    files = {"trial.toml": trial_toml(made, style, head), **trial_tables(made, style, places)}
+    files, truth = _written(ship, style, more, tuple(sorted(scene.items())))
     folder.mkdir(parents=True, exist_ok=True)
     for file, text in files.items():
         (folder / file).write_text(text, encoding="utf-8", newline="\n")
-    return truth_of(made)
+    return truth

@@ -75,17 +75,19 @@ TANK = SlackTank("day tank", "gas oil", "slack", 0.85, 0.16, 9.0, 0.8, 1.1, 0.4,
 POCKET = SlackTank("double bottom", "water", "slack", 1.0, 1.2, 10.0, 0.0, 0.6, 4.0, 3.0, 1.0)
 
 
+BOTH = {"rise": -0.6, "travel": -3.0, "allowance": 0.006}
+
+
 @pytest.mark.parametrize(
-    "more",
+    "ship, more",
     [
-        {"rise": 1.0},
-        {"travel": 4.0},
-        {"rise": -0.6, "travel": -3.0, "allowance": 0.006},
-        {"tanks": (POCKET,)},
+        (HIGH_CHINE, {"rise": 1.0}),
+        (HIGH_CHINE, {"travel": 4.0}),
+        (HIGH_CHINE, {"tanks": (POCKET,)}),
+        (PATROL, {**BOTH, "tanks": (POCKET,)}),
     ],
-    ids=["rise", "travel", "both", "pocketing tank"],
+    ids=["rise", "travel", "pocketing tank", "all"],
 )
-@pytest.mark.parametrize("ship", [HIGH_CHINE, PATROL], ids=lambda s: s.name)
 def test_weights_that_rise_or_travel_and_liquid_that_meets_the_bottom(ship, more, tmp_path):
     truth = write_hull_trial(tmp_path, ship, degrees=FEW, **more)
     found = worked(tmp_path).found

@@ -10,11 +10,11 @@ import numpy as np
 import pypdf
 import pytest
 from conftest import DEMO_TRIALS
+from demos import demo_files
 from hull_chain import worked
 from hull_edits import column, kept, misread, rewritten
-from hull_ships import BOX, CATAMARAN, HIGH_CHINE, PATROL
+from hull_ships import BOX, HIGH_CHINE, PATROL
 from hull_trial import write_hull_trial
-from write_trial import Style
 
 from incline import read_trial, reduce
 from incline.cli import main
@@ -34,10 +34,15 @@ def true(truth):
 
 
 def test_us_units(tmp_path):
+    """The demo's records, unrounded, with all its tables and the hull in US units."""
     for units in ("metric", "us"):
-        write_hull_trial(tmp_path / units, PATROL, degrees=FEW, style=Style(units=units))
-    # twelve digits are left of sixteen after the conversions and Newton's method; TCG is 0.01 m
+        folder = tmp_path / units
+        folder.mkdir()
+        for file, text in demo_files("chine-metric", rounded=False, units=units).items():
+            (folder / file).write_text(text, encoding="utf-8")
+    # Twelve digits are left of sixteen after conversions and Newton's method; TCG is 4 mm.
     assert light(tmp_path / "us") == pytest.approx(light(tmp_path / "metric"), rel=1e-9, abs=1e-10)
+    assert "[ft]" in (tmp_path / "us" / "offsets.csv").read_text(encoding="utf-8")
 
 
 def test_x_from_amidships(tmp_path):
@@ -111,7 +116,7 @@ def test_moments_given_directly(tmp_path):
     assert light(tmp_path) == pytest.approx(true(truth), rel=1e-5, abs=1e-5)
 
 
-@pytest.mark.parametrize("ship", [BOX, CATAMARAN, PATROL], ids=lambda s: s.name)
+@pytest.mark.parametrize("ship", [BOX, PATROL], ids=lambda s: s.name)
 def test_marks_on_one_side_do_not_tell_the_list(ship, tmp_path):
     """Nor do those of a hull whose marks stand at several breadths; upright is taken and said."""
     truth = write_hull_trial(tmp_path, ship, degrees=FEW, list_tan=0.0)
@@ -214,16 +219,3 @@ def test_demo_from_end_to_end(command, tmp_path, monkeypatch):
     assert kg is not None
     assert kg[1] == kg[2] == f"{told['lightship']['vcg_m']['value']:.3f}"
     assert float(kg[3]) == 0.0
-
-
-def test_every_figure_of_the_metric_demo_in_feet_and_long_tons(tmp_path):
-    """The demo's own records rewritten; the hull's sizes and all tables in US units."""
-    from demos import demo_files
-
-    for units in ("metric", "us"):
-        folder = tmp_path / units
-        folder.mkdir()
-        for file, text in demo_files("chine-metric", rounded=False, units=units).items():
-            (folder / file).write_text(text, encoding="utf-8")
-    assert light(tmp_path / "us") == pytest.approx(light(tmp_path / "metric"), rel=1e-9, abs=1e-10)
-    assert "[ft]" in (tmp_path / "us" / "offsets.csv").read_text(encoding="utf-8")

@@ -79,7 +79,7 @@ SLIPS = {
 def test_refused_by_every_method(slip, method, tmp_path):
     """A hull that cannot stand so gives no figure, whatever method is asked for."""
     ship, change, code, file, words = SLIPS[slip]
-    write_hull_trial(tmp_path, ship, degrees=FEW)
+    write_hull_trial(tmp_path, ship, degrees=FEW, stations=9)
     change(tmp_path)
     with_keys(tmp_path, f'[method]\nheel = "{method}"')
     found = told(tmp_path)
@@ -92,7 +92,7 @@ def test_refused_by_every_method(slip, method, tmp_path):
 @pytest.mark.parametrize("command", ["reduce", "check"])
 def test_exit_status_and_no_figure(slip, command, tmp_path, monkeypatch, capsys):
     ship, change, _, file, words = SLIPS[slip]
-    write_hull_trial(tmp_path, ship, degrees=FEW)
+    write_hull_trial(tmp_path, ship, degrees=FEW, stations=9)
     change(tmp_path)
     status, out, err = on_screen(tmp_path, monkeypatch, capsys, command)
     assert status == 1
@@ -152,7 +152,7 @@ def test_either_a_figure_or_a_refusal(ship, method, tmp_path):
         for k in factors
     ):
         folder = tmp_path / str(n)
-        write_hull_trial(folder, ship, degrees=FEW, stations=7)
+        write_hull_trial(folder, ship, degrees=FEW, stations=9)
         column(folder, file, what, lambda v, k=factor: k * v)
         with_keys(folder, f'[method]\nheel = "{method}"')
         try:

@@ -6,7 +6,7 @@ import numpy as np
 import pytest
 from hull_chain import worked
 from hull_edits import column
-from hull_ships import BOX, CATAMARAN, CURVED_VEE, HIGH_CHINE, PATROL, ROUND_BILGE, SWIM_BARGE
+from hull_ships import BOX, CURVED_VEE, HIGH_CHINE, PATROL, ROUND_BILGE, SWIM_BARGE
 from hull_trial import write_hull_trial
 from simulate import SlackTank
 
@@ -21,12 +21,11 @@ SHIPS = {
     "box": (BOX, {"tanks": (POCKET,)}),
     "curved vee": (CURVED_VEE, {"rise": 0.5}),
     "high chine": (HIGH_CHINE, {}),
-    "round bilge": (ROUND_BILGE, {"arc_points": 12, "stations": 21}),
-    "catamaran": (CATAMARAN, {}),
+    "round bilge": (ROUND_BILGE, {"arc_points": 10, "stations": 15}),
     "swim-ended barge": (SWIM_BARGE, {}),
     "patrol vessel": (PATROL, {"travel": 1.0}),
 }
-SMOOTH = ("box", "curved vee", "round bilge", "catamaran")
+SMOOTH = ("box", "curved vee", "round bilge")
 """Those without a knuckle or a chine near the waterline."""
 
 
@@ -111,14 +110,14 @@ def test_json_carries_the_miss_and_monte_carlo_repeats_itself(tmp_path):
     rng = np.random.default_rng(5)
     column(tmp_path, "readings.csv", r"reading \[mm\]", lambda r: r + float(rng.normal()))
     trial = read_trial(tmp_path)
-    first, second = (to_json(reduce(trial, draws=20_000)) for _ in range(2))
+    first, second = (to_json(reduce(trial, draws=5000)) for _ in range(2))
     assert first == second
     told = json.loads(first)
     error = told["as_inclined"]["hull"]["response_surface_error"]
     assert set(error) == set(KEYS)
     assert all(v >= 0.0 for v in error.values())
     kg = told["monte_carlo"]["results"]["vcg"]
-    # 20 000 draws give a standard deviation to 0.5 % (one sigma); curvature adds little here.
+    # 5000 draws give a standard deviation to 1 % (one sigma); curvature adds little here.
     assert kg["u"] == pytest.approx(told["lightship"]["vcg_m"]["u"], rel=0.03)
     assert kg["mean"] == pytest.approx(
         told["lightship"]["vcg_m"]["value"], abs=0.1 * told["lightship"]["vcg_m"]["u"]
@@ -126,10 +125,10 @@ def test_json_carries_the_miss_and_monte_carlo_repeats_itself(tmp_path):
 
 
 def test_monte_carlo_by_the_surface_is_that_of_the_hull(stages):
-    """The same 400 draws through both: standard deviations and means."""
+    """The same 150 draws through both: standard deviations and means."""
     stage, exact = stages["patrol vessel"]
     u = np.array([s.u for s in exact.sources])[:, None]
-    away = u * np.random.default_rng(7).standard_normal((len(u), 400))
+    away = u * np.random.default_rng(7).standard_normal((len(u), 150))
     near, far = stage.model(away)[:4], exact(away)[:4]
     assert near.std(axis=1) == pytest.approx(far.std(axis=1), rel=0.01)
     assert np.all(abs(near.mean(axis=1) - far.mean(axis=1)) < 0.02 * far.std(axis=1))

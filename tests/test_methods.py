@@ -2,6 +2,7 @@
 
 import json
 import math
+from functools import cache
 
 import numpy as np
 import pytest
@@ -286,12 +287,13 @@ def test_linearised_fit_is_the_fit(ship, tmp_path):
 @pytest.mark.parametrize("ship", [VEE, HIGH_CHINE], ids=lambda s: s.name)
 def test_general_least_squares_on_the_true_hull_finds_the_same_kg(ship, tmp_path):
     """KG and the zeros by scipy's trust region, heels by root finding on the closed form."""
-    truth = write_hull_trial(tmp_path, ship, degrees=(0.0, 3.0, 7.0, -3.0, -7.0))
+    truth = write_hull_trial(tmp_path, ship, degrees=(0.0, 3.0, 7.0, -6.0))
     noisy(tmp_path, 0.002)
     _, found, seen, *_ = worked(tmp_path)
     b, mass = truth.buoyancy, truth.inclined.mass
     guesses = [(truth.mean, truth.tau, t) for t in truth.tangents]
 
+    @cache
     def heels(vcg):
         # G on the line through B at the waterline of the drafts; moments shift it from there.
         x = b.x + truth.tau * (vcg - b.z)
@@ -305,13 +307,13 @@ def test_general_least_squares_on_the_true_hull_finds_the_same_kg(ship, tmp_path
         return np.array(every)
 
     def misses(unknown):
-        return seen.tangents - unknown[1 + seen.device] - heels(unknown[0])[seen.shift]
+        return seen.tangents - unknown[1 + seen.device] - heels(float(unknown[0]))[seen.shift]
 
     best = least_squares(
         misses, [ship.vcg + 0.01, 0.11, 0.17], x_scale=[1.0, 0.1, 0.1], xtol=1e-12, ftol=1e-14,
         gtol=1e-14,
     )  # fmt: skip
-    assert abs(best.x[0] - truth.inclined.z) > 2e-4  # the noise shows
+    assert abs(best.x[0] - truth.inclined.z) > 5e-5  # the noise shows
     assert float(found.vcg) == pytest.approx(best.x[0], abs=1e-6)
 
 

@@ -27,7 +27,7 @@ UNITS: dict[str, dict[str, tuple[str, float]]] = {
 }  # fmt: skip
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Style:
     """How a person wrote the trial: units, separator, rounding (decimals by quantity), noise."""
 
