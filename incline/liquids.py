@@ -63,26 +63,30 @@ def box_shift(tank: BoxTank, tangent: Floats) -> tuple[Floats, Floats]:
 
     b, h, depth = tank.breadth, tank.level, tank.depth
     t = np.maximum(np.abs(tangent), 1e-12)
-    bare, full = t * b > 2.0 * h, t * b > 2.0 * (depth - h)
+    # The nearer of bottom and top is met first; the triangle then grows until it meets the other.
+    least = min(h, depth - h)
+    met, both = t * b > 2.0 * least, 2.0 * b * least * t > depth * depth
+    low = h <= depth - h
+    bare, full = (met & ~both, False) if low else (False, met & ~both)
     # Clear of both: a trapezium.
     across, up = b * b * t / (12.0 * h), b * b * t * t / (24.0 * h)
     # Off the bottom: a triangle of liquid with base w.
     w = np.sqrt(2.0 * b * h / t)
-    across = np.where(bare & ~full, b / 2.0 - w / 3.0, across)
-    up = np.where(bare & ~full, w * t / 3.0 - h / 2.0, up)
+    across = np.where(bare, b / 2.0 - w / 3.0, across)
+    up = np.where(bare, w * t / 3.0 - h / 2.0, up)
     # At the top: a triangle of air with base v.
     air = b * (depth - h)
     v = np.sqrt(2.0 * air / t)
-    across = np.where(full & ~bare, air * (b / 2.0 - v / 3.0) / (b * h), across)
+    across = np.where(full, air * (b / 2.0 - v / 3.0) / (b * h), across)
     top = (b * depth * depth / 2.0 - air * (depth - v * t / 3.0)) / (b * h)
-    up = np.where(full & ~bare, top - h / 2.0, up)
+    up = np.where(full, top - h / 2.0, up)
     # Both: width falls from wide at the bottom to narrow at the top.
     wide, narrow = b * h / depth + depth / (2.0 * t), b * h / depth - depth / (2.0 * t)
     square = (wide * wide + wide * narrow + narrow * narrow) / 6.0
     middle = b / 2.0 - square * depth / (b * h)
     height = depth * depth * (wide + 2.0 * narrow) / (6.0 * b * h)
-    across = np.where(bare & full, middle, across)
-    up = np.where(bare & full, height - h / 2.0, up)
+    across = np.where(both, middle, across)
+    up = np.where(both, height - h / 2.0, up)
     return np.sign(tangent) * across, up
 
 

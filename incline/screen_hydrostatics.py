@@ -37,10 +37,10 @@ def show_hydrostatics(hull: HullRecord, table: Tabulation, density: float) -> st
     for trim in trims:
         shown = system.show(trim, LENGTH, system.length, 3)
         lines += ["", f"Trim {shown} {system.length} (positive by the stern)"]
-        lines.append("".join(f"{name:>{width}}" for name, _, width, _ in columns))
-        lines.append("".join(f"{unit:>{width}}" for _, unit, width, _ in columns))
+        lines.append(" ".join(f"{name:>{width}}" for name, _, width, _ in columns))
+        lines.append(" ".join(f"{unit:>{width}}" for _, unit, width, _ in columns))
         lines += [
-            "".join(f"{value(row):>{width}}" for _, _, width, value in columns)
+            " ".join(f"{value(row):>{width}}" for _, _, width, value in columns)
             for row in table.rows
             if row.trim == trim
         ]
@@ -90,21 +90,21 @@ def _columns(
         return name, unit, width, text
 
     found = [
-        column("draft", LENGTH, length, 7, 3),
-        column("volume", VOLUME, system.volume, 10, 2 if system.name == "metric" else 1),
-        column("displ.", MASS, system.mass, 10, 2),
-        column("LCB", LENGTH, length, 8, 3),
-        column("KB", LENGTH, length, 7, 3),
-        column("BM", LENGTH, length, 8, 3),
-        column("KM", LENGTH, length, 8, 3),
+        column("draft", LENGTH, length, 6, 3),
+        column("volume", VOLUME, system.volume, 9, 2 if system.name == "metric" else 1),
+        column("displ.", MASS, system.mass, 8, 2),
+        column("LCB", LENGTH, length, 7, 3),
+        column("KB", LENGTH, length, 6, 3),
+        column("BM", LENGTH, length, 7, 3),
+        column("KM", LENGTH, length, 7, 3),
     ]
     if heeled:
-        return [*found, column("TCB", LENGTH, length, 8, 3), column("KN", LENGTH, length, 8, 4)]
+        return [*found, column("TCB", LENGTH, length, 7, 3), column("KN", LENGTH, length, 8, 4)]
     return [
         *found,
-        column("LCF", LENGTH, length, 8, 3),
-        column("TPC" if system.name == "metric" else "TPI", MASS_PER_LENGTH, units["tpc"], 7, 3),
-        column("MCT", MOMENT_PER_LENGTH, units["mct"], 9, 3),
+        column("LCF", LENGTH, length, 7, 3),
+        column("TPC" if system.name == "metric" else "TPI", MASS_PER_LENGTH, units["tpc"], 6, 3),
+        column("MCT", MOMENT_PER_LENGTH, units["mct"], 8, 3),
     ]
 
 
@@ -137,7 +137,7 @@ def _open(table: Tabulation, system: UnitSystem) -> list[str]:
 
     return [
         f"Every second station left out would change: {told(table.by_stations)}; the error left in"
-        " the table is a third of that at most where the lines are smooth.",
+        " the table is usually less than a third of that where the lines are smooth.",
         f"Points joined by arcs instead of straight lines would change: {told(table.by_points)}.",
         "MCT is displacement x BM_L over length, the usual approximation of GM_L by BM_L.",
     ]

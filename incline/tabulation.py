@@ -66,12 +66,31 @@ class Tabulation:
     by_points: Miss
 
 
-def drafts_for(offsets: Offsets, lpp: float) -> tuple[float, ...]:
-    """Eleven or so round drafts from near the keel to near the lowest deck edge [m]."""
+def drafts_for(
+    offsets: Offsets,
+    lpp: float,
+    trims: Sequence[float] = (0.0,),
+    *,
+    heel: float = 0.0,
+    deflection: float = 0.0,
+) -> tuple[float, ...]:
+    """A dozen or two of round drafts [m], from near the keel to where the deck edge is still dry.
+
+    Where that leaves hardly any at the trims [m], heel [rad] and deflection [m], those of the
+    upright ship.
+    """
+    import numpy as np
+
     hull = Hull(offsets, lpp)
-    low, _ = hull.reach
-    top = hull.lowest_deck
-    step = (top - low) / 12.0
+    hulls = (body for body in offsets.bodies if body.kind == "hull")
+    low = min(p.z for body in hulls for s in body.stations for p in (*s.starboard, *s.port))
+    level = 0.0 * np.asarray(trims)
+    bent = Pose(level, np.asarray(trims) / lpp, level + deflection, level + math.tan(heel))
+    upright = float(hull.freeboard(Pose(*(np.zeros(()),) * 4)))
+    top = float(hull.freeboard(bent).min())
+    if top - low < 0.2 * (upright - low):
+        top = upright
+    step = (top - low) / 24.0
     nice = 10.0 ** math.floor(math.log10(step))
     step = next(nice * m for m in (1.0, 2.0, 2.5, 5.0, 10.0) if nice * m >= step)
     first, last = math.ceil((low + step) / step - 1e-9), math.floor(top / step + 1e-9)

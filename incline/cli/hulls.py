@@ -63,19 +63,17 @@ def hydrostatics(
         None if text is None else amount(text, LENGTH, name)
         for text, name in ((lowest, "--from"), (highest, "--to"), (step, "--step"))
     ]
+    trims = sorted({amount(t, LENGTH, "--trim") for t in trim or ["0 m"]})
+    bend = 0.0 if deflection is None else amount(deflection, LENGTH, "--deflection")
     hull = read_offsets(trial)
-    drafts = drafts_for(hull.offsets, hull.vessel.lpp)
+    shape, lpp, lean = hull.offsets, hull.vessel.lpp, math.radians(heel)
+    drafts = drafts_for(shape, lpp, trims, heel=lean, deflection=bend)
     if any(e is not None for e in ends):
         try:
             drafts = drafts_between(drafts, *ends)
         except ValueError as error:
             raise typer.BadParameter(str(error), param_hint="--from, --to, --step") from error
-    table = tabulate(
-        hull.offsets, hull.vessel.lpp, drafts,
-        sorted({amount(t, LENGTH, "--trim") for t in trim or ["0 m"]}),
-        heel=math.radians(heel),
-        deflection=0.0 if deflection is None else amount(deflection, LENGTH, "--deflection"),
-    )  # fmt: skip
+    table = tabulate(shape, lpp, drafts, trims, heel=lean, deflection=bend)
     print(show_hydrostatics(hull, table, water))
     if csv is not None:
         write_whole(csv, hydrostatics_csv(hull, table).encode())

@@ -23,7 +23,7 @@ class _Rates:
     """Derivatives of the integrals by mean draft, tau and t: moments of the waterplane.
 
     Water of one density is taken, with a plane waterline: the deflection is left out, which costs
-    Newton's method nothing and a slope of levers less than a millionth.
+    Newton's method nothing and a slope of levers less than a hundred-thousandth.
     """
 
     def __init__(self, pose: Pose, w: Displaced, lpp: float, vcg: Floats) -> None:

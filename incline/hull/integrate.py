@@ -34,7 +34,8 @@ _CELLS, _FINE_CELLS, _FEW_CORNERS = 2, 4, 16
 """Cells in an interval of stations: more of them for sections of few corners, where each long edge
 that the waterline meets at a small angle leaves a kink along the hull."""
 _END_NODES = 8
-_SECANTS = 8
+_LOOKS = 17
+"""Points in a cell between which the waterline's end is looked for."""
 _AT_ONCE = 60_000
 """Corners worked on at once: what fits in a processor's cache."""
 
@@ -112,19 +113,24 @@ class Displaced:
 
 @dataclass(frozen=True, slots=True, eq=False)
 class _Laid:
-    """A run with its sections at the Gauss nodes, and at the ends of the cells.
+    """The sections of all runs at the Gauss nodes and at the ends of cells, corners made as many.
 
-    ``x``, ``weight`` (S,), ``y``, ``z`` (S, P); ``edge_x`` (C + 1,), ``edge_y``, ``edge_z``.
+    ``x`` (S + E,) and corners ``y``, ``z`` (S + E, P): S nodes, three a cell in the order of the
+    cells, then E cell ends. ``weight`` (S,). Each cell (C,) has its ``run``, and its ends ``aft``
+    and ``fore`` as indices of cell ends. ``deck_x`` (D,), ``deck_y``, ``deck_z`` (D, 2) are the
+    deck edges of hulls.
     """
 
-    run: Run
     x: Floats
-    weight: Floats
     y: Floats
     z: Floats
-    edge_x: Floats
-    edge_y: Floats
-    edge_z: Floats
+    weight: Floats
+    run: NDArray[np.intp]
+    aft: NDArray[np.intp]
+    fore: NDArray[np.intp]
+    deck_x: Floats
+    deck_y: Floats
+    deck_z: Floats
 
 
 class Hull:
@@ -142,131 +148,121 @@ class Hull:
     ) -> None:
         self.lpp = lpp
         self.layers = tuple(layers)
-        self._laid = [_lay(run) for body in offsets.bodies for run in runs_of(body)]
+        self._runs = [run for body in offsets.bodies for run in runs_of(body)]
+        self._laid = _lay(self._runs)
 
     @property
     def reach(self) -> tuple[float, float]:
         """Lowest and highest point of the hull [m]."""
-        low = min(float(r.edge_z.min()) for r in self._laid)
-        return low, max(float(r.edge_z.max()) for r in self._laid)
-
-    @property
-    def lowest_deck(self) -> float:
-        """Height of the lowest point of a deck edge [m], appendages left out."""
-        return min(float(r.edge_z[:, [0, -1]].min()) for r in self._laid if not r.run.closed)
+        return float(self._laid.z.min()), float(self._laid.z.max())
 
     def displaced(self, pose: Pose) -> Displaced:
         """Integrals below the waterline, for poses of any shape."""
         import numpy as np
 
-        flat = [np.ravel(a) for a in np.broadcast_arrays(*dataclasses.astuple(pose))]
+        mean = np.asarray(pose.mean)
+        if mean.size == 1:
+            flat = [np.reshape(a, 1) for a in _parts(pose)]
+        else:
+            flat = [np.ravel(a) for a in np.broadcast_arrays(*_parts(pose))]
         count = len(flat[0])
         total = np.zeros((10, count))
-        for run in self._laid:
-            step = max(1, _AT_ONCE // run.y.size)
-            for first in range(0, count, step):
-                some = slice(first, first + step)
-                part = Pose(*(a[some] for a in flat))
-                for depth, share in self.layers:
-                    total[:, some] += share * self._of_run(run, part, depth)
-        return Displaced(*(row.reshape(np.shape(pose.mean)) for row in total))
+        step = max(1, _AT_ONCE // self._laid.y.size)
+        for first in range(0, count, step):
+            some = slice(first, first + step)
+            part = Pose(*(a[some] for a in flat))
+            for depth, share in self.layers:
+                total[:, some] += share * self._below(part, depth)
+        return Displaced(*(row.reshape(mean.shape) for row in total))
 
     def freeboard(self, pose: Pose) -> Floats:
         """Least height of a deck edge above the waterline [m], appendages left out."""
-        import numpy as np
-
-        least = np.full(np.shape(pose.mean), np.inf)
-        for run in self._laid:
-            if run.run.closed:
-                continue
-            y, z = run.edge_y[:, [0, -1]], run.edge_z[:, [0, -1]]
-            level = self._level(run.edge_x, pose)[..., None] + pose.tangent[..., None, None] * y
-            least = np.minimum(least, (z - level).min(axis=(-1, -2)))
+        laid = self._laid
+        level = self._level(laid.deck_x, pose)[..., None]
+        level = level + pose.tangent[..., None, None] * laid.deck_y
+        least: Floats = (laid.deck_z - level).min(axis=(-1, -2))
         return least
 
     def _level(self, x: Floats, pose: Pose) -> Floats:
         """Height of the waterline on the centreline, (..., x)."""
-        half = self.lpp / 2.0
-        bend = 1.0 - (x / half - 1.0) ** 2
+        ahead = x - self.lpp / 2.0
+        bend = 1.0 - (ahead / (self.lpp / 2.0)) ** 2
         level: Floats = (
-            pose.mean[..., None]
-            - pose.tau[..., None] * (x - half)
-            + pose.deflection[..., None] * bend
+            pose.mean[..., None] - pose.tau[..., None] * ahead + pose.deflection[..., None] * bend
         )
         return level
 
-    def _of_run(self, run: _Laid, pose: Pose, depth: float) -> Floats:
-        """The ten integrals (10, draws) of one run."""
+    def _below(self, pose: Pose, depth: float) -> Floats:
+        """The ten integrals (10, draws) below a depth under the waterline."""
         import numpy as np
 
+        laid, nodes = self._laid, len(self._laid.weight)
         if depth:
             # Depth is measured along gravity, u along z.
             down = depth * np.sqrt(1.0 + pose.tangent**2 + pose.tau**2)
             pose = pose.moved(pose.mean - down, pose.tau)
         tangent = pose.tangent[:, None]
-        weight = np.broadcast_to(run.weight, (len(pose.mean), len(run.weight)))
-        edge = self._level(run.edge_x, pose)
-        above = (run.edge_z - edge[..., None] - tangent[..., None] * run.edge_y).min(axis=-1)
-        wet = above < 0.0
-        which, cell = np.nonzero(wet[:, 1:] != wet[:, :-1])
+        level = self._level(laid.x, pose)
+        u = laid.z - level[..., None] - tangent[..., None] * laid.y
+        least = u[:, nodes:].min(axis=-1)
+        wet = least < 0.0
+        which, cell = np.nonzero(wet[:, laid.fore] != wet[:, laid.aft])
+        weight = laid.weight
         if len(which):
-            weight = weight.copy()
-            for node in range(_NODES):
-                weight[which, cell * _NODES + node] = 0.0
-        level = self._level(run.x, pose)
-        u = run.z - level[..., None] - tangent[..., None] * run.y
-        total = _integrals(run.x, weight, level, tangent, run.y, u)
-        if len(which):
-            ends = self._of_ends(run, pose, which, cell, above)
-            for k in range(len(which)):  # a pose may have several
-                total[:, which[k]] += ends[:, k]
+            weight = np.repeat(weight[None], len(pose.mean), axis=0)
+            weight.reshape(len(pose.mean), -1, _NODES)[which, cell] = 0.0
+        total = _integrals(
+            laid.x[:nodes], weight, level[:, :nodes], tangent, laid.y[:nodes], u[:, :nodes]
+        )
+        for r in {int(r) for r in laid.run[cell]}:
+            mine = laid.run[cell] == r
+            draws, some = which[mine], cell[mine]
+            ends = (laid.x[nodes + laid.aft[some]], laid.x[nodes + laid.fore[some]])
+            dry_aft = ~wet[draws, laid.aft[some]]
+            part = Pose(*(a[draws] for a in _parts(pose)))
+            found = self._of_ends(self._runs[r], part, *ends, dry_aft)
+            np.add.at(total.T, draws, found.T)
         return total
 
     def _of_ends(
-        self,
-        run: _Laid,
-        pose: Pose,
-        which: NDArray[np.intp],
-        cell: NDArray[np.intp],
-        least: Floats,
+        self, run: Run, pose: Pose, aft: Floats, fore: Floats, dry_aft: NDArray[np.bool_]
     ) -> Floats:
         """Integrals over the wet part of cells inside which the waterline leaves the hull.
 
-        ``least`` (draws, C + 1) is the height of each cell end's lowest point above the waterline.
+        One cell a pose, between ``aft`` and ``fore``. Where the lowest point of the section passes
+        the waterline is found between points close together, as on a straight line.
         """
         import numpy as np
 
-        some = Pose(*(a[which] for a in dataclasses.astuple(pose)))
-        tangent = some.tangent[:, None]
-        half = self.lpp / 2.0
+        tangent = pose.tangent[:, None]
 
-        def sections(x: Floats) -> tuple[Floats, Floats, Floats]:
-            y, z = run.run.at(x)
+        def above(x: Floats) -> tuple[Floats, Floats, Floats]:
+            y, z = run.at(x)
+            ahead = x - self.lpp / 2.0
             level = (
-                some.mean[:, None]
-                - some.tau[:, None] * (x - half)
-                + some.deflection[:, None] * (1.0 - (x / half - 1.0) ** 2)
+                pose.mean[:, None]
+                - pose.tau[:, None] * ahead
+                + pose.deflection[:, None] * (1.0 - (ahead / (self.lpp / 2.0)) ** 2)
             )
             return y, z - level[..., None] - tangent[..., None] * y, level
 
-        aft, fore = least[which, cell], least[which, cell + 1]
-        aft_wet = aft < 0.0
-        start = np.where(aft_wet, run.edge_x[cell], run.edge_x[cell + 1])
-        inside, low = start, np.where(aft_wet, aft, fore)
-        outside = np.where(aft_wet, run.edge_x[cell + 1], run.edge_x[cell])
-        high = np.where(aft_wet, fore, aft)
-        for _ in range(_SECANTS):  # false position, the end that stays counted half (Illinois)
-            x = inside + (outside - inside) * low / (low - high)
-            _, u, _ = sections(x[:, None])
-            now = u.min(axis=(-1, -2))
-            under = now < 0.0
-            low, high = np.where(under, now, 0.5 * low), np.where(under, 0.5 * high, now)
-            inside, outside = np.where(under, x, inside), np.where(under, outside, x)
+        dry, start = np.where(dry_aft, aft, fore), np.where(dry_aft, fore, aft)
+        share = np.linspace(0.0, 1.0, _LOOKS)
+        x = start[:, None] + (dry - start)[:, None] * share
+        least = above(x)[1].min(axis=-1)
+        last = (least[:, 1:] >= 0.0).argmax(axis=-1)  # the last point still wet
+        rows = np.arange(len(last))
+        low, high = least[rows, last], least[rows, last + 1]
+        end = x[rows, last] + (x[rows, last + 1] - x[rows, last]) * low / (low - high)
         nodes, weights = _gauss(_END_NODES)
-        wide = 0.5 * (inside - start)
-        x = (0.5 * (inside + start))[:, None] + wide[:, None] * nodes
-        y, u, level = sections(x)
+        wide = 0.5 * (end - start)
+        x = (0.5 * (end + start))[:, None] + wide[:, None] * nodes
+        y, u, level = above(x)
         return _integrals(x, np.abs(wide)[:, None] * weights, level, tangent, y, u)
+
+
+def _parts(pose: Pose) -> tuple[Floats, Floats, Floats, Floats]:
+    return pose.mean, pose.tau, pose.deflection, pose.tangent
 
 
 @cache
@@ -293,16 +289,60 @@ def _integrals(
     return np.stack([(weight * row).sum(axis=-1) for row in rows])
 
 
-def _lay(run: Run) -> _Laid:
+def _lay(runs: Sequence[Run]) -> _Laid:
     import numpy as np
 
+    most = max(len(run.side) for run in runs)
     nodes, weights = _gauss(_NODES)
+    columns: list[list[Floats]] = [[] for _ in range(7)]
+    cells: list[tuple[NDArray[np.intp], ...]] = []
+    decks: list[tuple[Floats, Floats, Floats]] = []
+    ends = 0
+    for r, run in enumerate(runs):
+        edge = _edges(run)
+        half = 0.5 * np.diff(edge)
+        x = (0.5 * (edge[1:] + edge[:-1])[:, None] + half[:, None] * nodes).ravel()
+        inner, outer = _padded(run, x, most), _padded(run, edge, most)
+        found = (x, *inner, (half[:, None] * weights).ravel(), edge, *outer)
+        for column, values in zip(columns, found, strict=True):
+            column.append(values)
+        count = np.arange(len(half))
+        cells.append((np.full(len(half), r), ends + count, ends + count + 1))
+        ends += len(edge)
+        if not run.closed:
+            y, z = run.at(edge)
+            decks.append((edge, y[:, [0, -1]], z[:, [0, -1]]))
+    x, y, z, weight, edge_x, edge_y, edge_z = (np.concatenate(c) for c in columns)
+    run_of, aft, fore = (np.concatenate(c) for c in zip(*cells, strict=True))
+    deck_x, deck_y, deck_z = (np.concatenate(c) for c in zip(*decks, strict=True))
+    return _Laid(
+        x=np.concatenate([x, edge_x]),
+        y=np.concatenate([y, edge_y]),
+        z=np.concatenate([z, edge_z]),
+        weight=weight,
+        run=run_of,
+        aft=aft,
+        fore=fore,
+        deck_x=deck_x,
+        deck_y=deck_y,
+        deck_z=deck_z,
+    )
+
+
+def _edges(run: Run) -> Floats:
+    """Ends of the cells of a run."""
+    import numpy as np
+
     cells = _FINE_CELLS if len(run.side) <= _FEW_CORNERS else _CELLS
     steps = np.linspace(0.0, 1.0, cells, endpoint=False)
     starts, gaps = run.stations[:-1], np.diff(run.stations)
-    edge = np.append((starts[:, None] + gaps[:, None] * steps).ravel(), run.stations[-1])
-    half = 0.5 * np.diff(edge)
-    x = (0.5 * (edge[1:] + edge[:-1])[:, None] + half[:, None] * nodes).ravel()
+    return np.append((starts[:, None] + gaps[:, None] * steps).ravel(), run.stations[-1])
+
+
+def _padded(run: Run, x: Floats, corners: int) -> tuple[Floats, Floats]:
+    """Sections of a run with the last corner repeated: edges of no length add nothing."""
+    import numpy as np
+
     y, z = run.at(x)
-    edge_y, edge_z = run.at(edge)
-    return _Laid(run, x, (half[:, None] * weights).ravel(), y, z, edge, edge_y, edge_z)
+    more = [(0, 0), (0, corners - y.shape[1])]
+    return np.pad(y, more, mode="edge"), np.pad(z, more, mode="edge")
