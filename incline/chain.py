@@ -247,11 +247,13 @@ def _straight(
     )
 
 
-_ROUNDS = 6
+_ROUNDS = 12
 """Gauss-Newton rounds for KG, each with one Newton step for the heels; the curve is so nearly
-straight that each round gains about three digits."""
+straight that each round gains two or three digits, and three rounds do unless GM is small."""
 _NEAR = 1e-8
 """Change of KG [m] in all draws below which the next round would change nothing that counts."""
+_FOUND = 1e-5
+"""Last change of KG [m] above which it has not been found, and is NaN."""
 
 
 def _curved(
@@ -266,8 +268,11 @@ def _curved(
 
     N(t) + km_shift t = (KG + H / D) t + TCG + (M + liquids(t)) / D, less the same at the start with
     M = H = 0, gives the heel t of each shift for a KG; KG minimises the residuals of all readings
-    with a zero for each device. Starts from the straight line.
+    with a zero for each device. Starts from the heels of the straight line and the KG that goes
+    best with them. NaN where no KG is found.
     """
+    import numpy as np
+
     if plan.lever is None:
         return line
     b, fsm = ship.buoyancy, given.fsm
@@ -282,14 +287,21 @@ def _curved(
     rise = vertical / displacement
     heel = start + slope[..., None] * line.moments
     pulled = (plan.line.pull / given.lengths[..., None, :]).sum(axis=-1)
-    for _ in range(_ROUNDS):
+
+    def unheld(heel: Floats, vcg: Floats) -> tuple[Floats, Floats]:
+        """What KG times the heel from the start must equal [m], and its slope."""
         lever, stiff = curve(heel, vcg)
         moving, moving_slope = plan.liquids.at(heel, fsm)
-        away = heel - start
-        miss = lever - moving / displacement - at_start + shift * away - vcg[..., None] * away
-        miss = miss - rise * heel - transverse / displacement
-        stiff = stiff - moving_slope / displacement + shift - vcg[..., None] - rise
-        heel = heel - miss / stiff
+        left = lever - at_start + shift * (heel - start) - rise * heel
+        left = left - (moving + transverse) / displacement
+        return left, stiff - moving_slope / displacement + shift - rise
+
+    away = heel - start
+    vcg = (unheld(heel, vcg)[0] * away).sum(axis=-1) / (away * away).sum(axis=-1)
+    for _ in range(_ROUNDS):
+        left, stiff = unheld(heel, vcg)
+        stiff = stiff - vcg[..., None]
+        heel = heel - (left - vcg[..., None] * (heel - start)) / stiff
         by_vcg = (heel - start) / stiff
         pull = ((pulled - heel @ plan.line.spread) * by_vcg).sum(axis=-1)
         step = pull / ((by_vcg @ plan.line.spread) * by_vcg).sum(axis=-1)
@@ -297,6 +309,7 @@ def _curved(
         heel = heel + by_vcg * step[..., None]
         if not (abs(step) > _NEAR).any():
             break
+    vcg = np.where(abs(step) > _FOUND, np.nan, vcg)
     slope = 1.0 / ((km - vcg) * ship.displacement - fsm.sum(axis=-1))
     regressor = by_vcg / (slope**2 * ship.displacement)[..., None]
     bend = heel - start - slope[..., None] * regressor

@@ -70,7 +70,7 @@ def plan_waterline(drafts: Sequence[DraftReading], lpp: float) -> WaterlineFit:
         )
     design = np.column_stack([np.ones(len(x)), lpp / 2.0 - x, 1.0 - (2.0 * x / lpp - 1.0) ** 2, y])
     use = [True, True, False, False]
-    for column, wanted in ((3, float(np.ptp(y)) > 0.0), (2, places >= 3)):
+    for column, wanted in ((3, bool(y.min() < 0.0 < y.max())), (2, places >= 3)):
         trial = [*use]
         trial[column] = wanted
         enough = sum(trial) <= len(x) and np.linalg.matrix_rank(design[:, trial]) == sum(trial)

@@ -98,12 +98,12 @@ def describe_heel(
 def _left_out(
     method: Method, aside: Sequence[MethodResult], heels: list[float], found: Yield
 ) -> float:
-    """What KG may be off by [m] for curvature that the method leaves out."""
+    """What KG as inclined may be off by [m] for curvature that the method leaves out."""
     if method == "heeled-hull":
         return 0.0
     exact = [m for m in aside if m.method == "heeled-hull"]
-    if exact:
-        return exact[0].vcg - float(found.light_vcg)
+    if exact:  # KM and free surfaces are the same by every method, so that KG goes with GM
+        return float(found.gm_fluid) - exact[0].gm_fluid
     return _curvature(heels, float(found.condition.buoyancy.bmt))
 
 

@@ -13,7 +13,7 @@ from incline.correlation import blocks_of
 from incline.criteria import judge
 from incline.diagnosis import search
 from incline.entry import hull_entry, lever_curve, table_entry
-from incline.errors import InclineError
+from incline.errors import FieldDataError, InclineError
 from incline.findings import diagnosis_of
 from incline.flotation import describe_waterline
 from incline.heel import describe_heel
@@ -22,7 +22,7 @@ from incline.local import localised
 from incline.model import KEYS, TrialModel, draft_spread, results_of, surface_miss
 from incline.montecarlo import seed_of, simulate
 from incline.observations import observe
-from incline.refusals import refuse, refuse_absurd
+from incline.refusals import balance_defects, refuse, refuse_absurd
 from incline.remarks import remarks_on, remarks_on_simulation
 from incline.result import (
     AsInclined,
@@ -118,14 +118,14 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
         found = run(plan, given)
         refuse(trial, plan, seen, found)
         method, *others = methods_of(trial, hull)
-        aside = [_by(m, plan, given, hull) for m in others]
+        aside = [r for m in others for r in _by(m, trial, seen, plan, given, hull)]
     heel = describe_heel(trial, seen, found, method, aside)
     heel = dataclasses.replace(heel, levers=lever_curve(plan, given, found, hull))
     waterline = describe_waterline(plan.waterline, trial.drafts, trial.vessel.lpp)
     straight, line = seen.straightened(found.heeling.bend), found.heeling.regressor
     slope = slope_uncertainty(straight, line[seen.shift])
     looked = search(trial, straight, line)
-    refuse_absurd(trial, seen, found, looked)
+    refuse_absurd(trial, found, looked)
     hidden = () if looked is None else looked.hidden
     entry = None if hull is None else hull_entry(trial, plan, found)
     sources = list_sources(trial, plan, given, found, seen, waterline, heel, slope, entry, hidden)
@@ -167,11 +167,25 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
     return Stage(outcome, model, blocks, looked, bend)
 
 
-def _by(method: Method, plan: Plan, given: Inputs, hull: Hull | None) -> MethodResult:
-    """The result by another method."""
+def _by(
+    method: Method,
+    trial: Trial,
+    seen: Observations,
+    plan: Plan,
+    given: Inputs,
+    hull: Hull | None,
+) -> list[MethodResult]:
+    """The result by another method, nothing where it has none.
+
+    Raises FieldDataError when the hull itself would not stand as it was read.
+    """
     lever = lever_of(method, hull, plan.placing.trimming)
     found = run(dataclasses.replace(plan, lever=lever), given)
-    return MethodResult(method=method, vcg=float(found.light_vcg), gm_fluid=float(found.gm_fluid))
+    defects = [] if lever is None else balance_defects(trial, seen, found)
+    if defects and method == "heeled-hull":
+        raise FieldDataError(defects)
+    result = MethodResult(method=method, vcg=float(found.light_vcg), gm_fluid=float(found.gm_fluid))
+    return [] if defects else [result]
 
 
 def _as_inclined(

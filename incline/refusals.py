@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from typing import TYPE_CHECKING
 
+from incline.diagnosis import search
 from incline.entry import shift_freeboards
 from incline.errors import Defect, FieldDataError, Where
 from incline.hull import Integrated, pose_of
@@ -22,7 +23,7 @@ if TYPE_CHECKING:
 
     Floats = NDArray[np.float64]
 
-__all__ = ["refuse", "refuse_absurd"]
+__all__ = ["balance_defects", "refuse", "refuse_absurd"]
 
 _FLAT = 1e-6
 """A line that rises by less than this tangent over the whole range of moments is flat."""
@@ -31,7 +32,10 @@ _FLAT = 1e-6
 def refuse(trial: Trial, plan: Plan, seen: Observations, found: Yield) -> None:
     """Raise FieldDataError with every reason why the trial gives no result."""
     defects = [*_line_defects(seen, found), *_table_defects(trial, plan, found)]
-    defects += _hull_defects(trial, plan, found, steady=not defects)
+    steady = not defects
+    defects += _draft_defects(plan, found)
+    if steady and not defects:  # only then do the heels mean anything
+        defects = _steep_defects(seen, found) or _shift_defects(trial, plan, seen, found)
     light = float(found.light_displacement)
     if not light > 0.0 and not any(d.code in _WRONG_WATERLINE for d in defects):
         defects.append(
@@ -53,11 +57,31 @@ _STEEP = 15.0
 """Degrees of heel beyond which readings or lengths must be wrong: tests stay below 4."""
 
 
-def refuse_absurd(trial: Trial, seen: Observations, found: Yield, search: Search | None) -> None:
-    """Raise FieldDataError for heels and heights that no test and no ship can have.
+def refuse_absurd(trial: Trial, found: Yield, looked: Search | None) -> None:
+    """Raise FieldDataError for a height or a GM that no ship of a test can have.
 
     Something was written in a wrong unit or place; where the residuals point at it, that is said.
     """
+    vcg, highest = float(found.light_vcg), 3.0 * trial.vessel.depth
+    gm = float(found.gm_fluid)
+    if gm > 0.0 and 0.0 < vcg < highest:
+        return
+    hint = "check the masses of the test weights, the lengths, and the units of all tables"
+    raise FieldDataError(
+        [
+            Defect(
+                Where("trial"),
+                "kg-absurd",
+                f"a lightship KG of {vcg:.3f} m, GM {gm:.3f} m",
+                f"a KG between the baseline and three depths ({highest:.2f} m), GM above zero",
+                _pointer(looked) or hint,
+            )
+        ]
+    )
+
+
+def _steep_defects(seen: Observations, found: Yield) -> list[Defect]:
+    """Heels that no test has."""
     defects = []
     for j, device in enumerate(seen.devices):
         mine = seen.device == j
@@ -71,29 +95,19 @@ def refuse_absurd(trial: Trial, seen: Observations, found: Yield, search: Search
             defects.append(
                 _defect("heel-absurd", device.id, what, f"less than {_STEEP:.0f} deg", hint)
             )
-    vcg, highest = float(found.light_vcg), 3.0 * trial.vessel.depth
-    if not defects and not 0.0 < vcg < highest:
-        hint = "check the masses of the test weights, the lengths, and the units of all tables"
-        if search is not None and search.signs:
-            hint = f"the residuals point to this: {_pointer(search.signs[0])}"
-        defects.append(
-            Defect(
-                Where("trial"),
-                "kg-absurd",
-                f"a lightship KG of {vcg:.3f} m",
-                f"a KG between the baseline and three depths ({highest:.2f} m)",
-                hint,
-            )
-        )
-    if defects:
-        raise FieldDataError(defects)
+    return defects
 
 
-def _pointer(sign: Sign) -> str:
-    """A finding in one line."""
+def _pointer(looked: Search | None) -> str:
+    """The first finding in one line, empty where there is none."""
+    signs = () if looked is None else looked.signs
+    return _said(signs[0]) if signs else ""
+
+
+def _said(sign: Sign) -> str:
     at = "" if sign.shift is None else f", shift {sign.shift}"
     by = "" if sign.device is None else f", device {sign.device}"
-    return f"{sign.cause}{at}{by}: {sign.size}"
+    return f"the residuals point to this: {sign.cause}{at}{by}: {sign.size}"
 
 
 def _line_defects(seen: Observations, found: Yield) -> list[Defect]:
@@ -185,13 +199,8 @@ def _table_defects(trial: Trial, plan: Plan, found: Yield) -> list[Defect]:
     return defects
 
 
-def _hull_defects(trial: Trial, plan: Plan, found: Yield, *, steady: bool) -> list[Defect]:
-    """Waterlines below the hull or above its deck edge, and a ship that does not stand upright.
-
-    Without a ``steady`` line through the readings the shifts are not looked at.
-    """
-    import numpy as np
-
+def _draft_defects(plan: Plan, found: Yield) -> list[Defect]:
+    """A waterline of the drafts below the hull or above its deck edge."""
     if not isinstance(plan.afloat, Integrated):
         return []
     hull, ship = plan.afloat.hull, found.as_read
@@ -211,26 +220,66 @@ def _hull_defects(trial: Trial, plan: Plan, found: Yield, *, steady: bool) -> li
     dry = float(hull.freeboard(pose))
     if dry < 0.0:
         return [_deck_defect("drafts.csv", 0, f"at the draft readings ({drafts})", dry)]
-    if not steady:
-        return []
-    heel, stiff = found.heeling.heel, found.heeling.restoring
-    unstable = [s for s, k in zip(trial.shifts, stiff, strict=True) if not float(k) > 0.0]
-    if unstable or not np.all(np.isfinite(heel)):
-        shifts = ", ".join(str(s.number) for s in unstable) or "every"
-        return [
-            Defect(
-                Where("readings.csv"),
-                "equilibrium-none",
-                f"no stable equilibrium at shift {shifts}: the hull has no righting lever there",
-                "a ship with positive GM over the heels of the test",
-                "if the records are right the ship is unstable: stop the test, land no more weight"
-                " high up, and do not correct a loll by moving weight to the high side",
-            )
-        ]
-    return [
+    return []
+
+
+def _shift_defects(trial: Trial, plan: Plan, seen: Observations, found: Yield) -> list[Defect]:
+    """Deck edges under water at a shift, and a ship that cannot stand as it was read.
+
+    Where the ship cannot, its deck edge is looked at by the heels of the straight line.
+    """
+    # a line that falls is left to `refuse_absurd`, which knows more of the residuals
+    unsteady = [] if plan.lever is None else balance_defects(trial, seen, found)
+    if not isinstance(plan.afloat, Integrated):
+        return unsteady
+    if unsteady:
+        ship, line = found.condition, plan.line.slope(found.transverse, seen.lengths)
+        heel = ship.start + line * found.transverse
+        pose = pose_of(ship.mean + 0.0 * heel, ship.tau + 0.0 * heel, ship.deflection, heel)
+        freeboards = plan.afloat.hull.freeboard(pose)
+    else:
+        freeboards = shift_freeboards(plan, found)
+    immersed = [
         _deck_defect("shifts.csv", s.where.row, f"at shift {s.number}", float(f))
-        for s, f in zip(trial.shifts, shift_freeboards(plan, found), strict=True)
+        for s, f in zip(trial.shifts, freeboards, strict=True)
         if float(f) < 0.0
+    ]
+    return immersed or unsteady
+
+
+def balance_defects(trial: Trial, seen: Observations, found: Yield) -> list[Defect]:
+    """A ship that would not stand as it was read, by the method of ``found``.
+
+    Where residuals about a straight line point at a cause, that is said.
+    """
+    import numpy as np
+
+    heeling = found.heeling
+    shifts = [
+        str(s.number)
+        for s, k in zip(trial.shifts, heeling.restoring, strict=True)
+        if float(k) <= 0.0
+    ]
+    if not np.isfinite(float(found.vcg)) or not np.all(np.isfinite(heeling.heel)):
+        what = "no KG at which the hull would stand at the heels that were read"
+    elif shifts:
+        what = f"no stable equilibrium at shift {', '.join(shifts)}: no righting lever there"
+    else:
+        return []
+    looked = search(trial, seen, found.transverse)
+    # what all devices show together is the hull's own curve here, and no disturbance
+    alone = [s for s in looked.signs if s.where != "ship"] if looked is not None else []
+    check = "check the drafts, the masses of the weights and the readings"
+    return [
+        Defect(
+            Where("readings.csv"),
+            "equilibrium-none",
+            what,
+            "a ship with positive GM over the heels of the test",
+            f"{_said(alone[0]) if alone else check}; if the records are right the ship is unstable:"
+            " stop the test, land no more weight high up, and do not correct a loll by moving"
+            " weight to the high side",
+        )
     ]
 
 

@@ -53,11 +53,13 @@ def _method(outcome: Outcome, system: UnitSystem) -> list[str]:
     if exact is not None:
         off = kg["straight-line"] - exact
         way = "low, on the unsafe side" if off < 0.0 else "high"
-        said.append(
-            f"Integrated at its true waterlines, the hull puts the straight-line KG"
-            f" {_small(abs(off), system)} {way}, and that of the wall-sided formula"
-            f" {_small(kg['wall-sided'] - exact, system)} off."
-        )
+        text = f"the hull puts the straight-line KG {_small(abs(off), system)} {way}"
+        if "wall-sided" in kg:
+            text += (
+                ", and that of the wall-sided formula"
+                f" {_small(kg['wall-sided'] - exact, system)} off"
+            )
+        said.append(f"Integrated at its true waterlines, {text}.")
     elif heel.method == "straight-line":
         said.append(
             "A straight line through heel and moment puts KG low by about"

@@ -16,12 +16,14 @@ from simulate import Mass, Scene
 class HullScene(Scene):
     """A scene whose ``hull`` is a `Ship`, bent by ``deflection``.
 
-    ``rises`` are heights above their start of the weights moved at each shift after the first;
-    ``stations`` and ``arc_points`` say how finely the offsets are written.
+    ``rises`` and ``travels`` are how far above and forward of their start the weights moved at each
+    shift after the first then stand; ``stations`` and ``arc_points`` say how finely the offsets are
+    written.
     """
 
     deflection: float = 0.0
     rises: tuple[float, ...] = ()
+    travels: tuple[float, ...] = ()
     stations: int = 31
     arc_points: int = 48
 
@@ -34,15 +36,18 @@ class HullScene(Scene):
         return self.inclined()
 
     @cached_property
-    def _known(self) -> dict[tuple[float, float], Afloat]:
+    def _known(self) -> dict[tuple[float, float, float], Afloat]:
         return {}
 
-    def centre(self, moment: float = 0.0, lift: float = 0.0) -> Centre:
-        """G with its liquids as they lie, under moments of the test weights to starboard and up."""
+    def centre(self, moment: float = 0.0, lift: float = 0.0, ahead: float = 0.0) -> Centre:
+        """G with its liquids as they lie, under moments of the test weights.
+
+        These are to starboard, up and forward.
+        """
         whole = self._whole
 
         def at(t: float, tau: float) -> tuple[float, float, float]:
-            total = np.array([0.0, moment, lift])
+            total = np.array([ahead, moment, lift])
             for tank in self.tanks:
                 total += tank.mass * np.array(tank.moved(t, tau))
             x, y, z = (total / whole.mass + [whole.x, whole.y, whole.z]).tolist()
@@ -50,44 +55,60 @@ class HullScene(Scene):
 
         return at
 
-    def state(self, moment: float = 0.0, lift: float = 0.0) -> Afloat:
+    def state(self, moment: float = 0.0, lift: float = 0.0, ahead: float = 0.0) -> Afloat:
         """The floating ship under moments of the test weights."""
-        if (moment, lift) not in self._known:
+        if (moment, lift, ahead) not in self._known:
             start = min(
                 self._known.items(), key=lambda known: abs(known[0][0] - moment), default=None
             )
             guess = None if start is None else (start[1].mean, start[1].tau, start[1].t)
             volume = self._whole.mass / (self.density * (1.0 + self.allowance))
-            found = afloat(self.ship, volume, self.centre(moment, lift), self.deflection, guess)
-            self._known[moment, lift] = found
-        return self._known[moment, lift]
+            centre = self.centre(moment, lift, ahead)
+            self._known[moment, lift, ahead] = afloat(
+                self.ship, volume, centre, self.deflection, guess
+            )
+        return self._known[moment, lift, ahead]
 
     def equilibrium(self, moment: float = 0.0) -> tuple[float, float, float]:
         """Mean draft amidships, tangent of heel and tau."""
         found = self.state(moment)
         return found.mean, found.t, found.tau
 
-    def shift_lifts(self) -> list[float]:
-        """Moments of the test weights' rise, by shift."""
+    def _carried(self, ways: tuple[float, ...]) -> list[float]:
+        """Moments by shift of weights that go by ``ways`` from their start when they are moved."""
         mass = {w.name: w.mass for w in self.weights}
         at = dict.fromkeys(mass, 0.0)
         found = [0.0]
-        for moves, rise in zip(self.moves, self.rises or (0.0,) * len(self.moves), strict=True):
-            at.update((name, rise) for name, _ in moves)
+        for moves, way in zip(self.moves, ways or (0.0,) * len(self.moves), strict=True):
+            at.update((name, way) for name, _ in moves)
             found.append(sum(mass[n] * at[n] for n in at))
         return found
 
-    def heights(self) -> dict[tuple[int, str], float]:
-        z = {w.name: w.z for w in self.weights}
+    def shift_lifts(self) -> list[float]:
+        """Moments of the test weights' rise, by shift."""
+        return self._carried(self.rises)
+
+    def shift_trimmings(self) -> list[float]:
+        """Moments of the test weights' travel forward, by shift."""
+        return self._carried(self.travels)
+
+    def _stands(self, axis: str, ways: tuple[float, ...]) -> dict[tuple[int, str], float]:
+        start = {w.name: getattr(w, axis) for w in self.weights}
         return {
-            (n, name): z[name] + rise
-            for n, (moves, rise) in enumerate(zip(self.moves, self.rises, strict=False), start=1)
+            (n, name): start[name] + way
+            for n, (moves, way) in enumerate(zip(self.moves, ways, strict=False), start=1)
             for name, _ in moves
         }
 
+    def heights(self) -> dict[tuple[int, str], float]:
+        return self._stands("z", self.rises)
+
+    def lengthwise(self) -> dict[tuple[int, str], float]:
+        return self._stands("x", self.travels)
+
     def tangents(self) -> list[float]:
-        both = zip(self.shift_moments(), self.shift_lifts(), strict=True)
-        return [self.state(self.held(moment), lift).t for moment, lift in both]
+        every = zip(self.shift_moments(), self.shift_lifts(), self.shift_trimmings(), strict=True)
+        return [self.state(self.held(moment), *others).t for moment, *others in every]
 
     def mark_y(self, x: float) -> float:
         """Half the breadth of the hull where it leaves the water, upright."""

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
+from functools import cache
 from pathlib import Path
 
 import numpy as np
@@ -53,6 +54,7 @@ def hull_scene(
     list_tan: float = 0.004,
     vcg: float | None = None,
     rise: float = 0.0,
+    travel: float = 0.0,
     tanks: tuple[SlackTank, ...] = (),
     density: float = 1.025,
     allowance: float = 0.0,
@@ -62,7 +64,8 @@ def hull_scene(
     """A ship with two weights, a few things to deduct and add, heeled to ``degrees`` at each shift.
 
     Zero degrees are the weights back at their start, where the ship has its list; the other heels
-    are from upright. The weights stand ``rise`` higher [m] whenever they are away from their start.
+    are from upright. The weights stand ``rise`` higher and ``travel`` farther forward [m] whenever
+    they are away from their start.
     """
     vcg = ship.vcg if vcg is None else vcg
     mean = ship.draft if mean is None else mean
@@ -88,21 +91,24 @@ def hull_scene(
     )  # fmt: skip
     heels = [float(np.tan(np.radians(d))) for d in degrees]
     most = max(heels, key=abs)
-    (need,) = _levers(balanced(scene, mean, tau, list_tan, vcg), [most], 0.0)
+    (need,) = _levers(balanced(scene, mean, tau, list_tan, vcg), [most])
     # heavy enough to reach the largest heel at a third of the beam off the centreplane
     each = abs(need) / (0.67 * ship.beam) if most else 0.01 * mass
     scene = replace(scene, weights=tuple(replace(w, mass=each) for w in scene.weights))
     scene = balanced(scene, mean, tau, list_tan, vcg)
-    moments = _levers(scene, heels, 2.0 * each * rise)
+    moments = _levers(scene, heels, 2.0 * each * rise, 2.0 * each * travel)
     arms = [0.0 if h == 0.0 else m / (2.0 * each) for h, m in zip(heels, moments, strict=True)]
     return replace(
         scene,
         moves=tuple((("A", a), ("B", a)) for a in arms[1:]),
         rises=tuple(rise if h else 0.0 for h in heels[1:]) if rise else (),
+        travels=tuple(travel if h else 0.0 for h in heels[1:]) if travel else (),
     )
 
 
-def _levers(scene: HullScene, heels: list[float], lift: float) -> list[float]:
+def _levers(
+    scene: HullScene, heels: list[float], lift: float = 0.0, ahead: float = 0.0
+) -> list[float]:
     """The moments of the weights that hold a scene at tangents of heel."""
     mass = scene.inclined().mass
     start = scene.state()
@@ -111,7 +117,7 @@ def _levers(scene: HullScene, heels: list[float], lift: float) -> list[float]:
         if t == 0.0:
             found.append(0.0)
             continue
-        centre = scene.centre(0.0, lift)
+        centre = scene.centre(0.0, lift, ahead)
         at = afloat(
             scene.ship, start.buoyancy.volume, centre, scene.deflection,
             (start.mean, start.tau, t), t,
@@ -134,6 +140,19 @@ def truth_of(scene: HullScene) -> Truth:
     )  # fmt: skip
 
 
+@cache
+def _written(
+    ship: Ship, style: Style | None, more: str, scene: tuple[tuple[str, object], ...]
+) -> tuple[dict[str, str], Truth]:
+    """The files and the truth of a trial; the equilibria of one are found once."""
+    made = hull_scene(ship, **dict(scene))  # type: ignore[arg-type]
+    style = style or Style()
+    head = {**HEAD, "name": f"Test {ship.name}", "depth": str(ship.depth), "more": more}
+    places = tuple(ship.lpp * s for s in (0.08, 0.5, 0.9))
+    files = {"trial.toml": trial_toml(made, style, head), **trial_tables(made, style, places)}
+    return files, truth_of(made)
+
+
 def write_hull_trial(
     folder: Path, ship: Ship, *, style: Style | None = None, more: str = "", **scene: object
 ) -> Truth:
@@ -142,12 +161,8 @@ def write_hull_trial(
     ``scene`` as in `hull_scene`; ``more`` is added to trial.toml before the devices. Drafts are read
     at six marks, and figures are written in full unless the ``style`` rounds them.
     """
-    made = hull_scene(ship, **scene)  # type: ignore[arg-type]
-    style = style or Style()
-    head = {**HEAD, "name": f"Test {ship.name}", "depth": str(ship.depth), "more": more}
-    places = tuple(ship.lpp * s for s in (0.08, 0.5, 0.9))
-    files = {"trial.toml": trial_toml(made, style, head), **trial_tables(made, style, places)}
+    files, truth = _written(ship, style, more, tuple(sorted(scene.items())))
     folder.mkdir(parents=True, exist_ok=True)
     for file, text in files.items():
         (folder / file).write_text(text, encoding="utf-8", newline="\n")
-    return truth_of(made)
+    return truth

@@ -164,6 +164,10 @@ class Scene:
         """Heights of test weights that went up or down, by shift and weight; here none does."""
         return {}
 
+    def lengthwise(self) -> dict[tuple[int, str], float]:
+        """The same for the x of weights that went along the ship."""
+        return {}
+
     def offsets(self) -> list[tuple[object, ...]]:
         """Rows of the table of offsets: station, x, half-breadth, height, line, body; here none."""
         return []

@@ -27,7 +27,7 @@ UNITS: dict[str, dict[str, tuple[str, float]]] = {
 }  # fmt: skip
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Style:
     """How a person wrote the trial: units, separator, rounding (decimals by quantity), noise."""
 
@@ -150,10 +150,10 @@ def _shifts(scene: Scene, w: Writer) -> str:
         clock = f"{9 + (12 * n) // 60:02d}:{(12 * n) % 60:02d}"
         rows += [(n, clock, name, y) for name, y in moves]
     columns = [("shift", ""), ("time", ""), ("weight", ""), ("y", "length")]
-    heights = scene.heights()
-    if heights:
-        columns.append(("z", "length"))
-        rows = [(*row, heights.get((row[0], row[2]), "")) for row in rows]  # type: ignore[arg-type]
+    for axis, places in (("x", scene.lengthwise()), ("z", scene.heights())):
+        if places:
+            columns.append((axis, "length"))
+            rows = [(*row, places.get((row[0], row[2]), "")) for row in rows]  # type: ignore[arg-type]
     return w.table(columns, rows)
 
 
