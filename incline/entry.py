@@ -76,7 +76,7 @@ def shift_freeboards(plan: Plan, found: Yield) -> Floats:
     if not isinstance(plan.afloat, Integrated):
         raise TypeError("only a hull has a deck edge")
     hull = plan.afloat.hull
-    pose, _ = HeeledHull(hull, plan.placing.trimming).settled(
+    pose, _ = HeeledHull(hull, plan.placing.trimming, plan.placing.lifting).settled(
         found.heeling.heel, found.condition, found.vcg
     )
     return hull.freeboard(pose)
@@ -108,10 +108,10 @@ def lever_curve(plan: Plan, given: Inputs, found: Yield, hull: Hull | None) -> L
     ship, heel = found.condition, found.heeling.heel
     far = 1.15 * float(np.abs(heel).max())
     tangents = np.linspace(-far, far, _DRAWN)
-    b = ship.buoyancy
+    b, nothing = ship.buoyancy, 0.0 * tangents
     integrated: Floats = np.empty(0)
     if hull is not None:
-        integrated, _ = HeeledHull(hull, 0.0 * tangents).curve(ship)(tangents, found.vcg)
+        integrated, _ = HeeledHull(hull, nothing, nothing).curve(ship)(tangents, found.vcg)
     wall_sided, _ = WallSided().curve(ship)(tangents, found.vcg)
     straight = b.yb + (b.kb + b.bmt) * tangents
     start, balance = b.yb + (b.kb + b.bmt) * ship.start, b.yb + (b.kb + b.bmt) * heel

@@ -65,12 +65,13 @@ class WallSided:
 class HeeledHull:
     """N integrated from the hull at each heel.
 
-    ``trimming`` (n,) [t m] are the longitudinal moments of the test weights about their start.
+    ``trimming`` and ``lifting`` (n,) [t m] are the longitudinal and vertical moments of the test
+    weights about their start.
     """
 
-    def __init__(self, hull: Hull, trimming: Floats) -> None:
+    def __init__(self, hull: Hull, trimming: Floats, lifting: Floats) -> None:
         self.hull = hull
-        self.trimming = trimming
+        self.trimming, self.lifting = trimming, lifting
 
     def start(self, ship: Condition) -> Floats:
         """N at the listed waterline itself."""
@@ -91,6 +92,7 @@ class HeeledHull:
         b = ship.buoyancy
         like = 0.0 * tangent
         lcg = b.x + ship.tau * (vcg - b.z)
+        displacement = ship.displacement[..., None]
         pose = pose_of(
             ship.mean[..., None] + like,
             ship.tau[..., None] + like,
@@ -101,6 +103,6 @@ class HeeledHull:
             self.hull,
             pose,
             b.volume[..., None] + like,
-            vcg[..., None] + like,
-            lcg[..., None] + self.trimming / ship.displacement[..., None] + like,
+            vcg[..., None] + self.lifting / displacement + like,
+            lcg[..., None] + self.trimming / displacement + like,
         )

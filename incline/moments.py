@@ -23,9 +23,9 @@ class Placing:
     ``owner`` (W, K) is 1 where a weight has a place, ``y`` and ``z`` (K,) the places [m],
     ``change`` (K, n) is +1 where a place is taken at a shift and -1 where it was the start, so that
     (mass @ owner y) @ change is the moment about the start. ``start`` (K, W) is 1 at each weight's
-    first place, ``start_x`` (W,) its x there, and ``trimming`` (n,) the longitudinal moments about
-    the start [t m]. ``names`` (K,) says whose place it is and the shift
-    at which it is first taken.
+    first place, ``start_x`` (W,) its x there; ``trimming`` and ``lifting`` (n,) are the
+    longitudinal and vertical moments about the start [t m]. ``names`` (K,) says whose place it is
+    and the shift at which it is first taken.
     """
 
     owner: Floats
@@ -36,6 +36,7 @@ class Placing:
     start: Floats
     start_x: Floats
     trimming: Floats
+    lifting: Floats
 
     def about_start(self, mass: Floats, arm: Floats) -> Floats:
         """Moments about the start [t m], (..., n); mass (..., W) [t], arm (..., K) [m]."""
@@ -80,13 +81,16 @@ def place_weights(trial: Trial) -> Placing:
         owner[index[weight], place] = 1.0
     for weight, place in start.items():
         first[place, index[weight]] = 1.0
+    z = np.array([z for _, _, z in places])
+    mass = np.array([w.mass for w in trial.weights])
     return Placing(
         owner=owner,
         names=tuple(names),
         y=np.array([y for _, y, _ in places]),
-        z=np.array([z for _, _, z in places]),
+        z=z,
         change=change,
         start=first,
         start_x=np.array([start_x[w.id] for w in trial.weights]),
         trimming=np.array(trimming),
+        lifting=((mass @ owner) * z) @ change,
     )

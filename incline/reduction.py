@@ -179,7 +179,7 @@ def _by(
 
     Raises FieldDataError when the hull itself would not stand as it was read.
     """
-    lever = lever_of(method, hull, plan.placing.trimming)
+    lever = lever_of(method, hull, plan.placing)
     found = run(dataclasses.replace(plan, lever=lever), given)
     defects = [] if lever is None else balance_defects(trial, seen, found)
     if defects and method == "heeled-hull":

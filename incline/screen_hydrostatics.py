@@ -139,7 +139,19 @@ def _open(table: Tabulation, system: UnitSystem) -> list[str]:
         f"Every second station left out would change: {told(table.by_stations)}; the error left in"
         " the table is usually less than a third of that where the lines are smooth.",
         f"Points joined by arcs instead of straight lines would change: {told(table.by_points)}.",
+        *_rows_apart(table, system),
         "MCT is displacement x BM_L over length, the usual approximation of GM_L by BM_L.",
+    ]
+
+
+def _rows_apart(table: Tabulation, system: UnitSystem) -> list[str]:
+    if table.between is None:
+        return []
+    miss = system.show(table.between, LENGTH, system.reading, 1)
+    return [
+        f"KM read between these drafts with every second one left out would be up to {miss}"
+        f" {system.reading} off; with all of them, about a third of that where a chine comes near"
+        " the water, and far less elsewhere. Use smaller steps where that is too much."
     ]
 
 

@@ -24,6 +24,7 @@ if TYPE_CHECKING:
 
     from incline.buoyancy import Afloat
     from incline.levers import Lever
+    from incline.moments import Placing
     from incline.observations import Observations
     from incline.record import Method, Point, Sample, Trial
 
@@ -68,10 +69,10 @@ def methods_of(trial: Trial, hull: Hull | None) -> tuple[Method, ...]:
     return (first, *(m for m in able if m != first))
 
 
-def lever_of(method: Method, hull: Hull | None, trimming: Floats) -> Lever | None:
+def lever_of(method: Method, hull: Hull | None, placing: Placing) -> Lever | None:
     """The lever of buoyancy by a method; None for the straight line."""
     if method == "heeled-hull" and hull is not None:
-        return HeeledHull(hull, trimming)
+        return HeeledHull(hull, placing.trimming, placing.lifting)
     return WallSided() if method == "wall-sided" else None
 
 
@@ -88,7 +89,7 @@ def plan_of(trial: Trial, seen: Observations, hull: Hull | None) -> Plan:
         waterline=waterline,
         afloat=afloat,
         afloat_later=afloat,
-        lever=lever_of(methods_of(trial, hull)[0], hull, placing.trimming),
+        lever=lever_of(methods_of(trial, hull)[0], hull, placing),
         liquids=tank_liquids(trial.tanks),
         tells_lcg=tells_lcg,
         placing=placing,

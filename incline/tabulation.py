@@ -9,6 +9,8 @@ from typing import TYPE_CHECKING
 from incline.errors import Defect, FieldDataError, Where
 from incline.hull import Hull, Pose
 from incline.hull.spacing import spacing_misses
+from incline.hydrostatics import Curves
+from incline.record import HydrostaticTable
 
 if TYPE_CHECKING:
     from collections.abc import Sequence
@@ -56,7 +58,8 @@ class Tabulation:
     """Rows by trim, then draft, with what the spacing of the offsets may be worth.
 
     ``by_stations`` and ``by_points`` are shares of volume, and metres of KM and LCB, in the middle
-    row.
+    row. ``between`` [m] is the largest error of KM between rows when every second draft is left
+    out and the curves through the others are read; None with fewer than five drafts.
     """
 
     rows: tuple[HydrostaticRow, ...]
@@ -64,6 +67,7 @@ class Tabulation:
     deflection: float
     by_stations: Miss
     by_points: Miss
+    between: float | None
 
 
 def drafts_for(
@@ -157,7 +161,37 @@ def tabulate(
         deflection=deflection,
         by_stations=by_stations,
         by_points=by_points,
+        between=_between(rows, len(drafts), lpp),
     )
+
+
+_FEW_DRAFTS = 5
+
+
+def _between(rows: Sequence[HydrostaticRow], drafts: int, lpp: float) -> float | None:
+    """The largest error of KM at drafts left out."""
+    import numpy as np
+
+    if drafts < _FEW_DRAFTS:
+        return None
+    worst = 0.0
+    for first in range(0, len(rows), drafts):
+        every = rows[first : first + drafts]
+        kept = every[::2]
+
+        def column(name: str, some: Sequence[HydrostaticRow] = kept) -> tuple[tuple[float, ...]]:
+            return (tuple(float(getattr(r, name)) for r in some),)
+
+        table = HydrostaticTable(
+            drafts=column("draft")[0], trims=(every[0].trim,), volume=column("volume"),
+            lcb=column("lcb"), kb=column("kb"), bmt=column("bmt"), lcf=None, area=None, bml=None,
+            bml_basis="", where=Where("hydrostatics.csv"),
+        )  # fmt: skip
+        left = every[1 : 2 * len(kept) - 2 : 2]
+        at = np.array([r.draft for r in left])
+        b = Curves(table, lpp, "cubic").buoyancy(at, 0.0 * at + every[0].trim / lpp, None)
+        worst = max(worst, float(np.abs(b.kb + b.bmt - [r.kmt for r in left]).max()))
+    return worst
 
 
 def _refuse(hull: Hull, pose: Pose, draft: Floats, trim: Floats) -> None:

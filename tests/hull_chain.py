@@ -33,7 +33,7 @@ def worked(folder: Path, method: Method | None = None) -> Worked:
     trial = read_trial(folder)
     seen, hull = observe(trial), hull_of(trial)
     plan = plan_of(trial, seen, hull)
-    lever = lever_of(method or methods_of(trial, hull)[0], hull, plan.placing.trimming)
+    lever = lever_of(method or methods_of(trial, hull)[0], hull, plan.placing)
     plan = replace(plan, lever=lever)
     given = inputs_of(trial, plan, seen)
     return Worked(trial, run(plan, given), seen, plan, given)

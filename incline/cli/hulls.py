@@ -78,7 +78,10 @@ def hydrostatics(
     if csv is not None:
         write_whole(csv, hydrostatics_csv(hull, table).encode())
         skin = "extreme" if hull.offsets.allowance is None else "moulded"
-        print(f"\nTable written to {csv}; its volume is {skin}, as [offsets] says.")
+        print(
+            f"\nTable written to {csv}; its volume is {skin}: say so in [hydrostatics] of"
+            " trial.toml, with the allowance as in [offsets]."
+        )
 
 
 _MOST_HEEL = 90.0

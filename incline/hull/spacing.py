@@ -33,13 +33,20 @@ _KNUCKLE = math.radians(25.0)
 A setting of this program."""
 
 
+_TAKEN_IN = 0.75
+"""Share of a flat arc's segment that the triangle over its chord fills."""
+
+
 def spacing_misses(offsets: Offsets, hull: Hull, pose: Pose) -> tuple[Miss, Miss]:
-    """What every second station, and bulged edges, change at a waterline: one pose, no axis."""
-    first, second = (
+    """What every second station, and arcs for edges, change at a waterline: one pose, no axis.
+
+    An edge bulged at one point takes in three quarters of its arc; the rest is added.
+    """
+    first, bulge = (
         _apart(Hull(other, hull.lpp, hull.layers).displaced(pose), hull.displaced(pose))
         for other in (coarsened(offsets), bulged(offsets))
     )
-    return first, second
+    return first, (bulge[0] / _TAKEN_IN, bulge[1] / _TAKEN_IN, bulge[2] / _TAKEN_IN)
 
 
 def _apart(one: Displaced, other: Displaced) -> Miss:
