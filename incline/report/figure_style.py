@@ -12,6 +12,7 @@ from itertools import pairwise
 from typing import TYPE_CHECKING, Any
 
 import matplotlib as mpl
+from cycler import cycler
 from matplotlib.figure import Figure
 
 from incline.report.figure_text import width_of
@@ -35,6 +36,7 @@ _MACHINE = frozenset({"backend", "backend_fallback", "interactive", "toolbar", "
 _OWN: dict[str, Any] = {
     "font.family": "DejaVu Sans",
     "font.size": 7.0,
+    "axes.prop_cycle": cycler(color=["black"]),  # colours are always said
     "axes.titlesize": 7.5,
     "axes.titleweight": "bold",
     "axes.titlelocation": "left",
