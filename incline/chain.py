@@ -350,7 +350,7 @@ def _after_changes(plan: Plan, given: Inputs, before: Condition, stiffness: Floa
     if before.list_tan is None:
         return ship
     turning = stiffness - given.fsm.sum(axis=-1)
-    for _ in range(1 if plan.lever is None else 3):
+    for _ in range(1 if plan.lever is None else 6):
         vcg = _vcg_of(given, ship.buoyancy, stiffness, displacement)
         vcg_before = (vcg * displacement - lever_z) / before.displacement
         wanted = _tcg(plan, given, before, vcg_before) * before.displacement + lever_y

@@ -2,9 +2,11 @@
 
 from __future__ import annotations
 
+import itertools
 from typing import TYPE_CHECKING
 
-from incline.hull import Integrated, pose_of
+from incline.hull import Hull, Integrated, pose_of
+from incline.hull.overlap import overlaps
 from incline.hull.spacing import spacing_misses
 from incline.hydrostatics import Curves
 from incline.levers import HeeledHull, WallSided
@@ -14,14 +16,17 @@ if TYPE_CHECKING:
     import numpy as np
     from numpy.typing import NDArray
 
-    from incline.buoyancy import Condition
+    from incline.buoyancy import Buoyancy, Condition
     from incline.chain import Inputs, Plan, Yield
-    from incline.hull import Hull
+    from incline.hull.spacing import Miss
     from incline.record import Trial
 
     Floats = NDArray[np.float64]
 
-__all__ = ["hull_entry", "lever_curve", "shift_freeboards", "table_entry"]
+__all__ = [
+    "geometric_volume", "hull_entry", "lever_curve", "shift_freeboards", "table_apart",
+    "table_entry",
+]  # fmt: skip
 
 
 def table_entry(trial: Trial, plan: Plan, found: Yield) -> TableEntry | None:
@@ -47,7 +52,17 @@ def table_entry(trial: Trial, plan: Plan, found: Yield) -> TableEntry | None:
         linear_km=float(by_line.kb + by_line.bmt),
         table_drafts=curves.drafts,
         table_trims=curves.trims,
+        less_hull=_less_hull(trial, now),
     )
+
+
+def _less_hull(trial: Trial, ship: Condition) -> Miss | None:
+    """The table used less the offsets, which are not, at the same waterline."""
+    if trial.offsets is None:
+        return None
+    hull = Integrated(Hull(trial.offsets, trial.vessel.lpp))
+    b = hull.buoyancy(ship.mean, ship.tau, ship.deflection, ship.list_tan)
+    return table_apart(trial, ship, b)
 
 
 def hull_entry(trial: Trial, plan: Plan, found: Yield) -> HullEntry | None:
@@ -64,11 +79,30 @@ def hull_entry(trial: Trial, plan: Plan, found: Yield) -> HullEntry | None:
         stations=len(stations),
         points=sum(len(s.starboard) for s in stations),
         freeboard=float(shift_freeboards(plan, found).min()),
-        layers=hull.layers,
+        layers=_layers(trial, hull),
         by_stations=by_stations,
         by_points=by_points,
-        table=_table_apart(trial, now),
+        table=None if trial.table is None else table_apart(trial, now, now.buoyancy),
+        overlaps=overlaps(offsets),
     )
+
+
+def _layers(trial: Trial, hull: Hull) -> tuple[tuple[float, float], ...]:
+    """Depths of the tops of layers with their densities; empty in mixed water."""
+    if len(hull.layers) < 2:
+        return ()
+    mean = sum(s.share * s.density for s in trial.samples) / sum(s.share for s in trial.samples)
+    shares = itertools.accumulate(step for _, step in hull.layers)
+    return tuple((top, mean * share) for (top, _), share in zip(hull.layers, shares, strict=True))
+
+
+def geometric_volume(plan: Plan, found: Yield) -> float:
+    """Volume under the waterline of the shifts [m3], whatever the density of the water there."""
+    now = found.condition
+    if not isinstance(plan.afloat, Integrated) or len(plan.afloat.hull.layers) < 2:
+        return float(now.buoyancy.volume)
+    pose = pose_of(now.mean, now.tau, now.deflection, now.list_tan)
+    return float(plan.afloat.hull.unlayered().displaced(pose).volume)
 
 
 def shift_freeboards(plan: Plan, found: Yield) -> Floats:
@@ -82,12 +116,15 @@ def shift_freeboards(plan: Plan, found: Yield) -> Floats:
     return hull.freeboard(pose)
 
 
-def _table_apart(trial: Trial, ship: Condition) -> tuple[float, float, float] | None:
-    """The trial's table less the integration, its own allowance counted in its volume."""
+def table_apart(trial: Trial, ship: Condition, hull: Buoyancy) -> Miss | None:
+    """The trial's table less its integrated hull at a ship's waterline, allowances counted.
+
+    None without both, or where the table does not cover the waterline.
+    """
     if trial.table is None or trial.offsets is None:
         return None
     curves = Curves(trial.table, trial.vessel.lpp, trial.settings.interpolation)
-    b, hull = curves.buoyancy(ship.mean, ship.tau, ship.deflection), ship.buoyancy
+    b = curves.buoyancy(ship.mean, ship.tau, ship.deflection)
     if not curves.covers(float(b.entry), float(ship.tau) * trial.vessel.lpp):
         return None
     factor = (1.0 + (trial.settings.allowance or 0.0)) / (1.0 + (trial.offsets.allowance or 0.0))

@@ -90,8 +90,8 @@ def simulate(
 
     rng = np.random.default_rng(seed)
     kept: list[Floats] = []
-    heavy = any(s.shape == "t" and s.dof <= _HEAVY for s in sources)
-    settling = _Settling(budgets, heavy=heavy)
+    heavy = [_heavy(b) for b in budgets]
+    settling = _Settling(budgets, heavy)
     total, most = 0, draws or MOST
     settled = None if draws is not None else False
     while total < most:
@@ -110,16 +110,23 @@ def simulate(
 
 _HEAVY = 2.0
 """Degrees of freedom up to which Student's t has no standard deviation: its intervals count."""
+_NOTHING = 1e-4
+"""Share of a variance below which such an input does not count."""
+
+
+def _heavy(budget: Budget) -> bool:
+    """Whether a result has no standard deviation, for an input known by hardly any scatter."""
+    return any(x.shape == "t" and x.dof <= _HEAVY and x.share > _NOTHING for x in budget.lines)
 
 
 class _Settling:
     """Whether averages over blocks have settled to the numerical tolerance of every result.
 
-    With ``heavy`` tails only the ends of the intervals are asked to settle.
+    Of results with ``heavy`` tails only the ends of the intervals are asked to settle.
     """
 
-    def __init__(self, budgets: Sequence[Budget], *, heavy: bool) -> None:
-        self.first = 2 if heavy else 0
+    def __init__(self, budgets: Sequence[Budget], heavy: Sequence[bool]) -> None:
+        self.first = [2 if h else 0 for h in heavy]
         self.tolerance = [
             None
             if b.estimate.u is None
@@ -140,11 +147,11 @@ class _Settling:
     def _settled(self) -> bool:
         import numpy as np
 
-        blocks = np.array(self.seen)[:, :, self.first :]  # block, result, figure
+        blocks = np.array(self.seen)  # block, result, figure
         spread = 2.0 * blocks.std(axis=0, ddof=1) / math.sqrt(len(blocks))
         return all(
-            tolerance is None or bool(np.all(row < tolerance))
-            for row, tolerance in zip(spread, self.tolerance, strict=True)
+            tolerance is None or bool(np.all(row[first:] < tolerance))
+            for row, first, tolerance in zip(spread, self.first, self.tolerance, strict=True)
         )
 
 
@@ -184,7 +191,7 @@ def _describe(
     seed: int,
     settled: bool | None,
     kg_limit: float | None,
-    heavy: bool,
+    heavy: Sequence[bool],
 ) -> Simulation:
     import numpy as np
 
@@ -192,15 +199,16 @@ def _describe(
     low, high = np.quantile(kg, [0.001, 0.999])
     counts, edges = np.histogram(kg, bins=60, range=(low, high))
     covariance = np.atleast_2d(np.cov(values[:4]))
-    if heavy:
-        covariance = np.full_like(covariance, np.nan)
+    for i, without in enumerate(heavy[:4]):
+        if without:
+            covariance[i] = covariance[:, i] = np.nan
     return Simulation(
         draws=values.shape[1],
         seed=seed,
         settled=settled,
         results=tuple(
-            _simulated(budget.key, row, budget.estimate, heavy=heavy)
-            for row, budget in zip(values, budgets, strict=True)
+            _simulated(budget.key, row, budget.estimate, heavy=without)
+            for row, budget, without in zip(values, budgets, heavy, strict=True)
             if budget.estimate.value is not None
         ),
         covariance=tuple(

@@ -12,7 +12,7 @@ from incline.chain import run
 from incline.correlation import blocks_of
 from incline.criteria import judge
 from incline.diagnosis import search
-from incline.entry import hull_entry, lever_curve, table_entry
+from incline.entry import geometric_volume, hull_entry, lever_curve, table_entry
 from incline.errors import FieldDataError, InclineError
 from incline.findings import diagnosis_of
 from incline.flotation import describe_waterline
@@ -197,13 +197,13 @@ def _as_inclined(
     entry: HullEntry | None,
 ) -> AsInclined:
     now, b = found.condition, found.condition.buoyancy
-    half = trial.vessel.lpp / 2.0
+    half, volume = trial.vessel.lpp / 2.0, geometric_volume(plan, found)
     return AsInclined(
         waterline=waterline,
         entry=table_entry(trial, plan, found),
         hull=entry,
-        density=float(given.density),
-        volume=float(b.volume),
+        density=float(given.density) * float(b.volume) / volume,
+        volume=volume,
         displacement=float(now.displacement),
         lcb=float(b.x) if plan.tells_lcg else None,
         kb=float(b.kb),

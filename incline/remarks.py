@@ -52,20 +52,17 @@ def _method(outcome: Outcome, system: UnitSystem) -> list[str]:
     exact = kg.get("heeled-hull")
     if exact is not None:
         off = kg["straight-line"] - exact
-        way = "low, on the unsafe side" if off < 0.0 else "high"
-        text = f"the hull puts the straight-line KG {_small(abs(off), system)} {way}"
+        text = f"the hull puts the straight-line KG {_off(off, system)}"
         if "wall-sided" in kg:
-            text += (
-                ", and that of the wall-sided formula"
-                f" {_small(kg['wall-sided'] - exact, system)} off"
-            )
+            text += f", and that of the wall-sided formula {_off(kg['wall-sided'] - exact, system)}"
         said.append(f"Integrated at its true waterlines, {text}.")
     elif heel.method == "straight-line":
         said.append(
             "A straight line through heel and moment puts KG low by about"
-            f" {_small(heel.curvature_kg, system)} at these heels if the hull is wall-sided."
-            " KG is not corrected for it; its uncertainty includes it, and the probability of KG"
-            " being above a limit is low by as much."
+            f" {_small(heel.curvature_kg, system)} at these heels if the hull is wall-sided, by"
+            " several times as much where her sides slope or a chine is near the water. KG is not"
+            " corrected for it. Its uncertainty includes as much as for a wall-sided hull and no"
+            " more, and the probability of KG being above a limit is low by as much."
         )
     else:
         said.append(
@@ -91,6 +88,11 @@ def _method(outcome: Outcome, system: UnitSystem) -> list[str]:
         for name in heel.pocketing
     )
     return said
+
+
+def _off(length: float, system: UnitSystem) -> str:
+    """How far off a KG is: 9.9 mm low, on the unsafe side."""
+    return f"{_small(abs(length), system)} {'low, on the unsafe side' if length < 0.0 else 'high'}"
 
 
 def _small(length: float, system: UnitSystem) -> str:
@@ -141,6 +143,9 @@ def _table(trial: Trial, outcome: Outcome, system: UnitSystem) -> list[str]:
         said.extend(_hull(outcome, ship.hull, system))
     if entry is None:
         return said
+    if entry.less_hull is not None:
+        apart = _apart(entry.less_hull, system)
+        said.append(f"The offsets are not used. Against them the table has{apart}.")
     more = abs(ship.trim - entry.table_trims[0]) / trial.vessel.lpp
     if entry.table_trims[0] == entry.table_trims[1] and more > _TRIMMED:
         said.append(
@@ -157,24 +162,40 @@ def _table(trial: Trial, outcome: Outcome, system: UnitSystem) -> list[str]:
     return said
 
 
+_TWICE = 2e-4  # share of the volume in two bodies from which it is worth a warning
+
+
 def _hull(outcome: Outcome, hull: HullEntry, system: UnitSystem) -> list[str]:
     """What the integration leaves open, and how far the trial's table is from it."""
     said = []
     if outcome.as_inclined.list_tan is None and outcome.heel.method == "heeled-hull":
         said.append("The drafts do not show the list: the heels are taken from the upright.")
     if hull.table is not None:
-        volume, km, lcb = hull.table
         said.append(
-            f"The hydrostatic table is not used. Against the integrated hull it has"
-            f" {100.0 * volume:+.2f} % volume, {_signed(km, system)} KM and"
-            f" {_signed(lcb, system)} LCB at this waterline."
+            "The hydrostatic table is not used. Against the integrated hull it has"
+            f"{_apart(hull.table, system)}."
         )
-    if len(hull.layers) > 1:
+    if hull.layers:
         said.append(
             f"The water is taken as {len(hull.layers)} layers by the depths of the samples; the"
-            " volume is that of water of mean density with the same mass."
+            " density is the mean of the water displaced."
         )
+    for one, other, volume in hull.overlaps:
+        twice = volume / outcome.as_inclined.volume
+        if twice > _TWICE:
+            said.append(
+                f"The bodies {one} and {other} stand in one another: about {100.0 * twice:.2g} % of"
+                " the volume is counted twice. End an appendage at the shell."
+            )
     return said
+
+
+def _apart(miss: tuple[float, float, float], system: UnitSystem) -> str:
+    volume, km, lcb = miss
+    return (
+        f" {100.0 * volume:+.2f} % volume, {_signed(km, system)} KM and {_signed(lcb, system)} LCB"
+        " at this waterline"
+    )
 
 
 def _signed(length: float, system: UnitSystem) -> str:

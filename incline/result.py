@@ -86,6 +86,9 @@ class TableEntry:
     linear_km: float
     table_drafts: tuple[float, float]
     table_trims: tuple[float, float]
+    less_hull: tuple[float, float, float] | None = None
+    """The table less the integration of the trial's offsets, where it has them too: share of
+    volume, KM [m], LCB [m]."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -96,7 +99,9 @@ class HullEntry:
     the deck edge above the waterline at any shift. ``by_stations`` and ``by_points`` estimate what
     the spacing of stations and of points may be worth: share of volume, KM [m], LCB [m].
     ``table`` is the trial's own hydrostatic table less the integration, likewise, and None without
-    a table that covers the waterline. ``surface`` is the largest miss of the response surface that
+    a table that covers the waterline. ``layers`` are depths of the tops of layers [m] with their
+    density [t/m3], empty in mixed water; ``overlaps`` names bodies that stand in one another with
+    the volume counted twice [m3]. ``surface`` is the largest miss of the response surface that
     uncertainties go through: lightship displacement [t], KG, LCG, TCG, GM [m]; NaN where there is
     no such result.
     """
@@ -108,6 +113,7 @@ class HullEntry:
     by_stations: tuple[float, float, float]
     by_points: tuple[float, float, float]
     table: tuple[float, float, float] | None
+    overlaps: tuple[tuple[str, str, float], ...] = ()
     surface: tuple[float, ...] = ()
 
 
@@ -116,7 +122,9 @@ class AsInclined:
     """The ship as inclined, test weights at their start [m, t, m3]. kmt = kb + bmt.
 
     ``entry`` says how the table was entered, ``hull`` how the hull was integrated: one of them is
-    there. KB, BM and KM are those of the upright ship at these drafts, LCB that of the listed ship.
+    there. ``density`` is that of the displaced water: the mean of the samples unless the water is
+    in layers. KB, BM and KM are those of the upright ship at these drafts, LCB that of the listed
+    ship.
 
     ``vcg`` is solid (free surface taken out). ``lcg`` is None when the table cannot give it for a
     trimmed ship, ``tcg`` when the drafts cannot give the list. Drafts, ``trim`` and ``list_tan``

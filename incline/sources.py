@@ -7,6 +7,7 @@ than was stated.
 
 from __future__ import annotations
 
+import itertools
 import math
 from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING, Literal
@@ -91,7 +92,11 @@ def list_sources(
         *_lines(trial),
         *_changes(trial),
     ]
-    return tuple(s for s in sources if s.u > 0.0)
+    return tuple(s for s in sources if s.u > _ROUNDING)
+
+
+_ROUNDING = 1e-13
+"""A smaller uncertainty is rounding of the arithmetic, in any of the inside units."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -173,7 +178,33 @@ def _density(trial: Trial, given: Inputs) -> Iterator[Source]:
         u=sum(w * r.u for w, r in zip(share, read, strict=True)),
         basis=next((r.basis for r in read if r.basis != STATED), STATED),
     )  # fmt: skip
+    if trial.settings.layers:
+        yield from _within_layers(trial)
+        return
     yield from _water_spread(trial, float(given.density), share)
+
+
+def _within_layers(trial: Trial) -> Iterator[Source]:
+    """In layers, samples of one depth may differ, and each boundary may lie between two depths."""
+    by_depth: dict[float, list[float]] = {}
+    for s in trial.samples:
+        by_depth.setdefault(s.depth or 0.0, []).append(s.density)
+    reach = max(max(d) - min(d) for d in by_depth.values())
+    depths = sorted(by_depth)
+    means = [sum(by_depth[d]) / len(by_depth[d]) for d in depths]
+    draft = sum(d.draft for d in trial.drafts) / len(trial.drafts)
+    # A boundary half-way may be off by half the gap: that share of the draft has another density.
+    moved = max(
+        abs(b - a) * min(0.5 * (deep - high), draft) / draft
+        for (high, deep), (a, b) in zip(
+            itertools.pairwise(depths), itertools.pairwise(means), strict=True
+        )
+    )
+    for name, width in (("samples of one depth", reach), ("where the layers meet", 2.0 * moved)):
+        yield Source(
+            name=f"density of the water, {name}", field="density", item=None,
+            u=width / math.sqrt(12.0), quantity=DENSITY, basis=SEEN, shape="rectangular",
+        )  # fmt: skip
 
 
 _MANY_SAMPLES = 4

@@ -54,8 +54,12 @@ def hydrostatics(
 
     if csv is not None:
         refuse_existing(csv, force=force)
-        if heel:
-            raise typer.BadParameter("a trial's table is for the upright ship", param_hint="--csv")
+        if heel or deflection is not None:
+            raise typer.BadParameter(
+                "a trial's table is for the upright ship without deflection: the trial allows for"
+                " the measured deflection itself",
+                param_hint="--csv",
+            )
     water = amount(density, DENSITY, "--density")
     if not (abs(heel) < _MOST_HEEL and water > 0.0):
         raise typer.BadParameter(f"a heel under {_MOST_HEEL:g} degrees and a density above zero")

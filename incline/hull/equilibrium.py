@@ -15,6 +15,8 @@ if TYPE_CHECKING:
 __all__ = ["lever_slope", "settle"]
 
 _STEPS = 12
+_LOST = 1e-6
+"""Last step of the mean draft, as a share of the length, above which no waterline was found."""
 _SETTLED = 1e-10
 """Share of the volume, and of volume times length, below which a waterline counts as found."""
 
@@ -66,6 +68,10 @@ def settle(
             break
         mean, tau = _Rates(pose, found, hull.lpp, vcg).back(heavy, ahead)
         pose = pose.moved(pose.mean + mean, pose.tau + tau)
+        found = hull.displaced(pose)
+    else:  # a step that is still large, or none
+        lost = ~(np.abs(mean) < _LOST * hull.lpp)
+        pose = pose.moved(np.where(lost, np.nan, pose.mean), pose.tau)
         found = hull.displaced(pose)
     return pose, found
 

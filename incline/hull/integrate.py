@@ -7,6 +7,7 @@ the rule is moved onto the wet part.
 
 from __future__ import annotations
 
+import copy
 import dataclasses
 from dataclasses import dataclass
 from functools import cache
@@ -147,7 +148,7 @@ class Hull:
         layers: Sequence[tuple[float, float]] = ((0.0, 1.0),),
     ) -> None:
         self.lpp = lpp
-        self.layers = tuple(layers)
+        self.layers: tuple[tuple[float, float], ...] = tuple(layers)
         self._runs = [run for body in offsets.bodies for run in runs_of(body)]
         self._laid = _lay(self._runs)
 
@@ -155,6 +156,12 @@ class Hull:
     def reach(self) -> tuple[float, float]:
         """Lowest and highest point of the hull [m]."""
         return float(self._laid.z.min()), float(self._laid.z.max())
+
+    def unlayered(self) -> Hull:
+        """The same hull in mixed water."""
+        plain = copy.copy(self)
+        plain.layers = ((0.0, 1.0),)
+        return plain
 
     def displaced(self, pose: Pose) -> Displaced:
         """Integrals below the waterline, for poses of any shape."""

@@ -26,7 +26,7 @@ _READINGS = 10
 _EITHER_WAY = ("wind or current changed once", "slow drift")
 """Disturbances without a sign of their own."""
 _INTRO = (
-    "The readings less the common line are held against a list of disturbances, each with the "
+    "The readings less the common fit are held against a list of disturbances, each with the "
     "shape it would leave. One is named only where it fits better than chance would let it in 19 "
     "of 20 undisturbed trials. A finding is something to look into: nothing has been dropped or "
     "corrected because of it."

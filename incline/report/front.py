@@ -29,7 +29,11 @@ if TYPE_CHECKING:
 
 __all__ = ["METHODS", "history", "result", "title_block"]
 
-METHODS = {"straight-line": "straight line of tangent on moment"}
+METHODS = {
+    "straight-line": "straight line of tangent on moment",
+    "wall-sided": "wall-sided formula at each shift",
+    "heeled-hull": "hull integrated at each shift",
+}
 
 
 def title_block(sheet: Sheet) -> list[Any]:
@@ -133,7 +137,7 @@ def _notes(sheet: Sheet) -> list[str]:
     heel = sheet.reduction.outcome.heel
     said = [
         f"GM is that of the ship as inclined, test weights aboard and slack liquids free to move "
-        f"({METHODS.get(heel.method, heel.method)}).",
+        f"({METHODS[heel.method]}).",
         "u: standard uncertainty; U = k u: expanded uncertainty for a coverage of 95 %; dof: "
         "effective degrees of freedom. They count the scatter of the readings and of the water "
         "samples, and errors of drafts, density, test weights and their places, devices, "

@@ -132,9 +132,20 @@ def conventions(sheet: Sheet) -> list[Any]:
         "fluid when slack liquids are free to move. FSM: free-surface moment, density times the "
         "second moment of area of the liquid surface about its own centreline. τ: trim over "
         "length between perpendiculars.",
-        "Method: a straight line of tangent on moment by least squares, because the reading is "
-        "uncertain and the moment nearly exact. All devices share one slope b, each has a zero "
-        "offset of its own; counted readings have equal weights unless every device states the "
-        "resolution of its readings. GM = 1 / (b Δ).",
+        f"Method: {_method(sheet)} All devices share one ship, each has a zero offset of its own; "
+        "counted readings have equal weights unless every device states the resolution of its "
+        "readings.",
     )
     return [bullet(line) for line in lines]
+
+
+_LEAST = "by least squares of the tangents: the reading is uncertain, the moment nearly exact."
+_METHODS = {
+    "straight-line": f"a straight line of tangent on moment {_LEAST} GM = 1 / (b Δ), b its slope.",
+    "wall-sided": f"the equilibrium at each shift with KM t + BM t³/2 for the hull {_LEAST}",
+    "heeled-hull": f"the equilibrium of the integrated hull at each shift {_LEAST}",
+}
+
+
+def _method(sheet: Sheet) -> str:
+    return _METHODS[sheet.reduction.outcome.heel.method]

@@ -114,7 +114,11 @@ def _density(sheet: Sheet) -> Chapter:
     among = [s.density for s in trial.samples]
     samples = [u.recorded("density", s.density, "ρ_i", "ρ", among) for s in trial.samples]
     mean = u.of("density", sheet.reduction.outcome.as_inclined.density, "ρ", "ρ", 5)
-    if len({s.share for s in trial.samples}) == 1:
+    hull = sheet.reduction.outcome.as_inclined.hull
+    if hull is not None and hull.layers:
+        how = "layers weighted by the volume in each, integrated"
+        step = Lay("Density of the water displaced", mean, how=how)
+    elif len({s.share for s in trial.samples}) == 1:
         total = Sum(tuple(samples), "Σ ρ<sub>i</sub>")
         step = Lay("Density of the water, mean of the samples", mean, total / len(samples))
     else:
