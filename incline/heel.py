@@ -32,10 +32,11 @@ def describe_heel(
     found: Yield,
     method: Method,
     aside: Sequence[MethodResult] = (),
+    by_offsets: float | None = None,
 ) -> HeelFit:
     """The fit of record with every reading placed against it.
 
-    ``aside`` are the results by the other methods.
+    ``aside`` are the results by the other methods; ``by_offsets`` as in `HeelFit`.
     """
     import numpy as np
 
@@ -89,7 +90,8 @@ def describe_heel(
         ),
         max_heel_port=max(0.0, -math.atan(min(heels))),
         max_heel_starboard=max(0.0, math.atan(max(heels))),
-        curvature_kg=_left_out(method, aside, heels, found),
+        by_offsets=by_offsets,
+        curvature_kg=_left_out(method, aside, heels, found) if by_offsets is None else -by_offsets,
         others=tuple(aside),
         pocketing=pocketing_tanks(trial.tanks, heels),
     )

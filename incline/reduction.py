@@ -119,7 +119,8 @@ def work_out(trial: Trial, seen: Observations) -> Stage:
         refuse(trial, plan, seen, found)
         method, *others = methods_of(trial, hull)
         aside = [r for m in others for r in _by(m, trial, seen, plan, given, hull)]
-    heel = describe_heel(trial, seen, found, method, aside)
+        off = None if hull is not None else _by_offsets(trial, seen, given, method)
+    heel = describe_heel(trial, seen, found, method, aside, off)
     heel = dataclasses.replace(heel, levers=lever_curve(plan, given, found, hull))
     waterline = describe_waterline(plan.waterline, trial.drafts, trial.vessel.lpp)
     straight, line = seen.straightened(found.heeling.bend), found.heeling.regressor
@@ -188,6 +189,23 @@ def _by(
     return [] if defects else [result]
 
 
+def _by_offsets(trial: Trial, seen: Observations, given: Inputs, method: Method) -> float | None:
+    """KG [m] by a method less that by the heeled hull, on offsets that are there but not used.
+
+    None where there are no offsets, or the hull would not stand as it was read.
+    """
+    if trial.offsets is None:
+        return None
+    use = dataclasses.replace(trial.settings, use="offsets", method="heeled-hull")
+    other = dataclasses.replace(trial, settings=use)
+    hull = hull_of(other)
+    plan = plan_of(other, seen, hull)
+    exact = run(plan, given)
+    quick = run(dataclasses.replace(plan, lever=lever_of(method, hull, plan.placing)), given)
+    off = float(quick.vcg) - float(exact.vcg)
+    return None if balance_defects(other, seen, exact) or not math.isfinite(off) else off
+
+
 def _as_inclined(
     trial: Trial,
     plan: Plan,
@@ -207,6 +225,7 @@ def _as_inclined(
         displacement=float(now.displacement),
         lcb=float(b.x) if plan.tells_lcg else None,
         kb=float(b.kb),
+        zb=None if entry is None else float(b.z),
         bmt=float(b.bmt),
         kmt=float(found.km),
         vcg=float(found.vcg),

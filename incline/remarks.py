@@ -56,6 +56,12 @@ def _method(outcome: Outcome, system: UnitSystem) -> list[str]:
         if "wall-sided" in kg:
             text += f", and that of the wall-sided formula {_off(kg['wall-sided'] - exact, system)}"
         said.append(f"Integrated at its true waterlines, {text}.")
+    elif heel.by_offsets is not None:
+        said.append(
+            f"By the trial's offsets, which are not used, the {heel.method} method puts KG"
+            f" {_off(heel.by_offsets, system)}. KG is not corrected for it; its uncertainty"
+            " includes as much."
+        )
     elif heel.method == "straight-line":
         said.append(
             "A straight line through heel and moment puts KG low by about"
@@ -144,8 +150,8 @@ def _table(trial: Trial, outcome: Outcome, system: UnitSystem) -> list[str]:
     if entry is None:
         return said
     if entry.less_hull is not None:
-        apart = _apart(entry.less_hull, system)
-        said.append(f"The offsets are not used. Against them the table has{apart}.")
+        against = _apart(entry.less_hull, system)
+        said.append(f"The offsets are not used. Against them the table has{against}.")
     more = abs(ship.trim - entry.table_trims[0]) / trial.vessel.lpp
     if entry.table_trims[0] == entry.table_trims[1] and more > _TRIMMED:
         said.append(
@@ -162,6 +168,7 @@ def _table(trial: Trial, outcome: Outcome, system: UnitSystem) -> list[str]:
     return said
 
 
+_COARSE_OFFSETS = 0.25  # share of the variance of KG from which the offsets call for more points
 _TWICE = 2e-4  # share of the volume in two bodies from which it is worth a warning
 
 
@@ -169,11 +176,18 @@ def _hull(outcome: Outcome, hull: HullEntry, system: UnitSystem) -> list[str]:
     """What the integration leaves open, and how far the trial's table is from it."""
     said = []
     if outcome.as_inclined.list_tan is None and outcome.heel.method == "heeled-hull":
-        said.append("The drafts do not show the list: the heels are taken from the upright.")
+        said.append("The list being unknown, the heels are taken from the upright.")
     if hull.table is not None:
         said.append(
             "The hydrostatic table is not used. Against the integrated hull it has"
             f"{_apart(hull.table, system)}."
+        )
+    kg = next((b for b in outcome.budgets if b.key == "vcg"), None)
+    open_ = 0.0 if kg is None else sum(x.share for x in kg.lines if x.name.startswith("spacing of"))
+    if open_ > _COARSE_OFFSETS:
+        said.append(
+            f"{100.0 * open_:.0f} % of the variance of KG is that the offsets have few stations or"
+            " points: more of them, or named lines at knuckles, would lessen it."
         )
     if hull.layers:
         said.append(

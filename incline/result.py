@@ -149,6 +149,8 @@ class AsInclined:
     trim: float
     list_tan: float | None
     hull: HullEntry | None = None
+    zb: float | None = None
+    """Height of B at the listed waterline [m], which LCG goes by; None where it is KB."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -255,7 +257,10 @@ class HeelFit:
     shifts: tuple[ShiftMoment, ...]
     max_heel_port: float
     max_heel_starboard: float
-    curvature_kg: float
+    by_offsets: float | None = None
+    """KG [m] by this method less that by the heeled hull, both on offsets that the trial has but
+    does not use."""
+    curvature_kg: float = 0.0
     """What KG may be off by [m] for curvature that the method leaves out: by a straight line
     without a hull, what it is low by on a wall-sided one, half of BM times cov(t, t^3) / var(t) or
     sum(t^4) / sum(t^2) about the upright; with a hull, the difference from the heeled-hull method;

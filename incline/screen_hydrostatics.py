@@ -6,6 +6,7 @@ import math
 import textwrap
 from typing import TYPE_CHECKING
 
+from incline.defaults import DEFAULTS
 from incline.units import AREA, LENGTH, MASS, MASS_PER_LENGTH, MOMENT_PER_LENGTH, SYSTEMS, VOLUME
 
 if TYPE_CHECKING:
@@ -18,7 +19,7 @@ if TYPE_CHECKING:
 
     _Column = tuple[str, str, int, Callable[[HydrostaticRow], str]]
 
-__all__ = ["hydrostatics_csv", "show_hydrostatics"]
+__all__ = ["hydrostatics_csv", "show_hydrostatics", "stated_lines"]
 
 _UNITS = {
     "metric": {"area": "m2", "tpc": "t/cm", "mct": "t m/cm"},
@@ -152,6 +153,29 @@ def _rows_apart(table: Tabulation, system: UnitSystem) -> list[str]:
         f"KM read between these drafts with every second one left out would be up to {miss}"
         f" {system.reading} off; with all of them, about a third of that where a chine comes near"
         " the water, and far less elsewhere. Use smaller steps where that is too much."
+    ]
+
+
+def stated_lines(hull: HullRecord, table: Tabulation) -> list[str]:
+    """Lines for ``[hydrostatics]`` of trial.toml: uncertainties of a table made from offsets.
+
+    The defaults for a hull as built, with a third of what every second station changes, what arcs
+    for edges change, and a third of what every second draft left out does to KM.
+    """
+    system = SYSTEMS[hull.units]
+    defaults = ("hull_volume", "hull_km", "hull_lcb")
+    between = (0.0, (table.between or 0.0) / 3.0, 0.0)
+    volume, km, lcb = (
+        math.hypot(DEFAULTS[name].value, stations / 3.0, points, rows)
+        for name, stations, points, rows in zip(
+            defaults, table.by_stations, table.by_points, between, strict=True
+        )
+    )
+    shown = [system.show(v, LENGTH, system.reading, 2) for v in (km, lcb)]
+    return [
+        f'u_volume = "{100.0 * volume:.2f} %"',
+        f'u_km = "{shown[0]} {system.reading}"',
+        f'u_lcb = "{shown[1]} {system.reading}"',
     ]
 
 

@@ -324,7 +324,7 @@ def _curvature(heel: HeelFit) -> Source:
     an uncertainty and not as a correction. With a hull it is the difference from integrating it.
     """
     gm_low = abs(heel.curvature_kg) / heel.gm_fluid
-    known = any(m.method == "heeled-hull" for m in heel.others)
+    known = heel.by_offsets is not None or any(m.method == "heeled-hull" for m in heel.others)
     basis = "difference from the heeled hull" if known else "estimated as for a wall-sided hull"
     return Source(
         name=f"curvature that the {heel.method} method leaves out", field="slope_shift", item=None,

@@ -197,7 +197,8 @@ def test_every_method_is_told(patrol):
         in remark
     )
     wall_sided = 1000.0 * (other["wall-sided"]["vcg_m"] - result.outcome.lightship.vcg.value)
-    assert f"wall-sided formula {wall_sided:.1f} mm off" in remark
+    side = "low, on the unsafe side" if wall_sided < 0.0 else "high"
+    assert f"wall-sided formula {abs(wall_sided):.1f} mm {side}" in remark
     assert " ".join(remark.split()) in " ".join(show(result).split())
 
 

@@ -48,7 +48,7 @@ def hydrostatics(
     """
     from incline.files import refuse_existing, write_whole
     from incline.reading import read_offsets
-    from incline.screen_hydrostatics import hydrostatics_csv, show_hydrostatics
+    from incline.screen_hydrostatics import hydrostatics_csv, show_hydrostatics, stated_lines
     from incline.tabulation import drafts_between, drafts_for, tabulate
     from incline.units import DENSITY, LENGTH
 
@@ -84,8 +84,10 @@ def hydrostatics(
         skin = "extreme" if hull.offsets.allowance is None else "moulded"
         print(
             f"\nTable written to {csv}; its volume is {skin}: say so in [hydrostatics] of"
-            " trial.toml, with the allowance as in [offsets]."
+            " trial.toml, with the allowance as in [offsets]. What the spacing of the offsets and"
+            " of these drafts leaves open goes there too:"
         )
+        print("\n".join(stated_lines(hull, table)))
 
 
 _MOST_HEEL = 90.0

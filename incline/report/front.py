@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from typing import TYPE_CHECKING, Any
 
 from reportlab.platypus import Paragraph
@@ -102,7 +103,35 @@ def result(sheet: Sheet) -> list[Any]:
         *missing,
         *(paragraph(text) for text in said if text),
         *limit(sheet),
+        *part("The ship as inclined, and the test"),
+        facts(_as_tested(sheet), sheet.width, abreast=2),
         *(note(text) for text in _notes(sheet)),
+    ]
+
+
+def _as_tested(sheet: Sheet) -> list[tuple[str, str]]:
+    """What a reader checks first: how she floated, how far she was heeled, by whom."""
+    trial, outcome, show = sheet.reduction.trial, sheet.reduction.outcome, sheet.show
+    ship, heel = outcome.as_inclined, outcome.heel
+    ends = "by the stern" if ship.trim > 0.0 else "by the head"
+    listed = NOT_DETERMINED
+    if ship.list_tan is not None:
+        side = "starboard" if ship.list_tan > 0.0 else "port"
+        listed = f"{show.degrees(abs(math.atan(ship.list_tan)))}° to {side}"
+    excluded = sum(1 for r in trial.readings if r.excluded)
+    left = f", {excluded} excluded" if excluded else ""
+    heels = ((heel.max_heel_port, "port"), (heel.max_heel_starboard, "starboard"))
+    return [
+        ("Draft at AP", show.full(ship.draft_ap, "length")),
+        ("Draft at FP", show.full(ship.draft_fp, "length")),
+        ("Trim", f"{show.full(abs(ship.trim), 'length')} {ends}"),
+        ("List", listed),
+        ("Density of the water", show.full(ship.density, "density")),
+        ("Displacement", sheet.full(ship.displacement, "mass")),
+        ("KM", sheet.full(ship.kmt, "length")),
+        ("Greatest heel", ", ".join(f"{show.degrees(h)}° to {side}" for h, side in heels)),
+        ("Shifts; devices", f"{len(trial.shifts)}; {len(heel.devices)}"),
+        ("Readings", f"{len(trial.readings)}{left}"),
     ]
 
 

@@ -81,6 +81,10 @@ def _gravity(sheet: Sheet) -> Chapter:
     if state.lcg is not None and state.lcb is not None:
         *_, tau = shifts_draft(sheet)
         lcb, lcg = (u.of("length", v, s, s) for v, s in ((state.lcb, "LCB"), (state.lcg, "LCG")))
+        if state.zb is not None:  # the hull's own B, at the listed waterline
+            kb = u.of("length", state.zb, "z_B", "z<sub>B</sub>")
+            how = "integrated from the offsets, as LCB"
+            steps.append(Lay("Height of B at the listed waterline", kb, how=how))
         steps.append(Lay("Longitudinal centre of gravity", lcg, lcb + tau * (kg - kb)))
     if state.tcg is not None and state.list_tan is not None:
         place = "λ" if sheet.reduction.trial.changes else "list read"
