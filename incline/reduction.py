@@ -83,7 +83,9 @@ def reduce(
     remarks.extend(remarks_on_rolling(trial, rolling))
     diagnosis = None
     if stage.search is not None:
-        diagnosis = diagnosis_of(stage.search, stage.model, trial.settings.evidence, stage.bend)
+        diagnosis = diagnosis_of(
+            stage.search, stage.model, _evidence(trial, stage.outcome), stage.bend
+        )
     return Reduction(
         trial=trial,
         outcome=stage.outcome,
@@ -94,6 +96,18 @@ def reduce(
         rolling=rolling,
         remarks=tuple(remarks),
     )
+
+
+def _evidence(trial: Trial, outcome: Outcome) -> dict[str, str]:
+    """What speaks against hidden disturbances: the trial's own words, and what its tanks tell."""
+    known = dict(trial.settings.evidence)
+    slack = [t for t in trial.tanks if t.fsm]
+    if not known.get("liquids") and trial.tanks and not outcome.heel.pocketing:
+        if not slack:
+            known["liquids"] = "no tank is slack"
+        elif all(t.box for t in slack):
+            known["liquids"] = "every slack tank is a box, its surface clear of bottom and top"
+    return known
 
 
 @dataclass(frozen=True, slots=True, eq=False)
