@@ -64,7 +64,7 @@ def settle(
         heavy = found.volume - volume
         ahead = found.of_x - lcg * volume + pose.tau * (vcg * volume - found.of_z)
         off = np.maximum(np.abs(heavy), np.abs(ahead) / hull.lpp) / volume
-        if not np.any(off > _SETTLED):
+        if np.all(off <= _SETTLED):
             break
         mean, tau = _Rates(pose, found, hull.lpp, vcg).back(heavy, ahead)
         pose = pose.moved(pose.mean + mean, pose.tau + tau)
