@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, TypeVar
 
 from incline.errors import FieldDataError
 from incline.reading.collect import Collector, folded
+from incline.reading.extent import mark_remarks
 from incline.reading.hydrostatics import read_hydrostatics
 from incline.reading.ledger import check_names, check_no_test_weights, read_changes, read_items
 from incline.reading.oddities import shift_remarks, weight_remarks
@@ -110,6 +111,7 @@ class _Reader:
         tanks, partial = self._pairs("tanks.csv", read_tanks)
         table, rough = self._table()
         offsets, shape = self._offsets()
+        marked = self.sheets["drafts.csv"], self.sheets[OFFSETS]
         return Trial(
             folder=folder,
             digest=digest_of(self.files),
@@ -141,6 +143,7 @@ class _Reader:
                 *partial,
                 *rough,
                 *shape,
+                *mark_remarks(drafts, offsets, marked, head.frame.hull),
                 *(said for name, said in _ABSENT.items() if name not in self.files),
             ),
         )

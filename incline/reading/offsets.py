@@ -9,6 +9,8 @@ from typing import TYPE_CHECKING
 from incline.errors import Where
 from incline.reading.bodies import ONE_HULL
 from incline.reading.collect import nearest, quoted
+from incline.reading.extent import extent_remarks
+from incline.reading.fairness import fairness_remarks
 from incline.reading.hull_size import check_size
 from incline.reading.lengthwise import check_lines, check_order, joined
 from incline.reading.stations import OFFSET_COLUMNS, Drawn, read_station
@@ -42,7 +44,11 @@ def read_bodies(sheet: Sheet, plan: HullPlan, hull: Hull) -> tuple[Offsets, list
     drawn = [(body, stations.get(body.name.casefold(), [])) for body in plan.bodies]
     check_size(sheet, drawn, hull)
     offsets = Offsets(bodies=tuple(bodies), allowance=plan.allowance, stated=plan.stated)
-    return offsets, [_alone(body) for body in bodies if abs(body.y) > 0.0 and not body.mirrored]
+    remarks = [_alone(body) for body in bodies if abs(body.y) > 0.0 and not body.mirrored]
+    if not sheet.collector.defects:
+        remarks += extent_remarks(sheet, drawn, hull)
+        remarks += [r for body, mine in drawn if mine for r in fairness_remarks(body, mine, hull)]
+    return offsets, remarks
 
 
 def _alone(body: Body) -> str:

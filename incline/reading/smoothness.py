@@ -13,6 +13,7 @@ import statistics
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
+from incline.reading.curves import off_curve
 from incline.units import factor
 
 if TYPE_CHECKING:
@@ -22,16 +23,10 @@ if TYPE_CHECKING:
 
 __all__ = ["Figure", "Station", "smoothness_remarks"]
 
-_ODD = 5.0
-"""Times the median distance of the other rows from their curves."""
-_ALONE = 3.0
-"""Times the largest distance of a row nearby, without the one at fault."""
 _VOLUME, _KM, _LCB = 0.003, 0.01, 0.005
 """Distances worth a remark: shares of the volume, of KM, and of the length."""
 _AREA = 0.03
 """Disagreement of area x step of draft with the step of volume, a share of the step."""
-_LEAST = 5
-"""Rows below which one off its curve cannot be told from its neighbours."""
 
 
 @dataclass(frozen=True, slots=True, kw_only=True)
@@ -92,54 +87,8 @@ def _off_curve(
     group: Sequence[Station], values: Sequence[float], least: Sequence[float]
 ) -> list[tuple[Station, float]]:
     """Rows whose values are off the curve of the others, and the curve there."""
-    x = [s.draft for s in group]
-    left = list(range(len(group)))
-    found: list[tuple[Station, float]] = []
-    while len(left) >= _LEAST and len(found) < len(group) // 4:
-        apart = zip(left[1:-1], _distances(x, values, left), strict=True)
-        ratios = [d / least[i] if least[i] > 0.0 else 0.0 for i, d in apart]
-        worst = sorted(range(len(ratios)), key=ratios.__getitem__, reverse=True)
-        suspects = (_culprit(x, values, left, k + 1) for k in worst if ratios[k] > 1.0)
-        at = next((k for k in suspects if k is not None), None)
-        if at is None:
-            break
-        found.append((group[left[at]], _curve(x, values, left, at)))
-        del left[at]
+    found = [(group[k], v) for k, v in off_curve([s.draft for s in group], values, least)]
     return sorted(found, key=lambda f: f[0].row.number)
-
-
-def _culprit(x: Sequence[float], y: Sequence[float], rows: Sequence[int], worst: int) -> int | None:
-    """Which of ``rows`` puts the one at ``worst`` off the curve; None where no single one does.
-
-    One figure off its curve pulls its neighbours off theirs: it is the one without which those
-    nearby lie best. At a chine or a transom they lie no better without any one row, and the row at
-    an end cannot be told from a hull that bends there.
-    """
-    rests = {
-        k: _distances(x, y, [*rows[:k], *rows[k + 1 :]])
-        for k in range(max(0, worst - 2), min(len(rows), worst + 3))
-    }
-    nearby = {k: max(d[max(0, k - 4) : k + 3], default=0.0) for k, d in rests.items()}
-    at = min(nearby, key=nearby.__getitem__)
-    if at in (0, len(rows) - 1):
-        return None
-    distance = abs(y[rows[at]] - _curve(x, y, rows, at))
-    bound = max(_ODD * statistics.median(rests[at]), _ALONE * nearby[at])
-    return at if distance > bound else None
-
-
-def _distances(x: Sequence[float], y: Sequence[float], rows: Sequence[int]) -> list[float]:
-    """Distance of each row but the first and the last from the curve of its neighbours."""
-    return [abs(y[rows[k]] - _curve(x, y, rows, k)) for k in range(1, len(rows) - 1)]
-
-
-def _curve(x: Sequence[float], y: Sequence[float], rows: Sequence[int], at: int) -> float:
-    """The polynomial through two neighbours on each side, as far as there are (Lagrange)."""
-    nodes = [rows[k] for k in range(max(0, at - 2), min(len(rows), at + 3)) if k != at]
-    place = x[rows[at]]
-    return sum(
-        y[i] * math.prod((place - x[j]) / (x[i] - x[j]) for j in nodes if j != i) for i in nodes
-    )
 
 
 def _sentence(station: Station, figure: Figure, value: float) -> str:

@@ -20,7 +20,7 @@ if TYPE_CHECKING:
     from incline.reading.cells import Row
     from incline.reading.sections import Place
 
-__all__ = ["OFFSET_COLUMNS", "Drawn", "Side", "read_station"]
+__all__ = ["OFFSET_COLUMNS", "Drawn", "Side", "is_line", "read_station"]
 
 OFFSET_COLUMNS = (
     Column("station", required=True),
@@ -147,7 +147,7 @@ def _check(drawn: Drawn) -> None:
         found = f"{drawn.title} with its sides starting at different heights"
         row.fault("height", "station-open", found, "both sides starting at one point, the keel")
         return
-    if not all(starts) or _is_line(drawn):
+    if not all(starts) or is_line(drawn):
         return
     distinct = [_is_distinct(drawn, side) for side in drawn.sides]
     if all(distinct):
@@ -172,7 +172,7 @@ def _check_start(drawn: Drawn, side: Side) -> bool:
     return True
 
 
-def _is_line(drawn: Drawn) -> bool:
+def is_line(drawn: Drawn) -> bool:
     """Whether a station encloses nothing: all on the centreplane, or all at one height."""
     places = [place for side in drawn.sides for place in side.places]
     level = places[0][1]
