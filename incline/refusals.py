@@ -10,6 +10,7 @@ from incline.entry import shift_freeboards
 from incline.errors import Defect, FieldDataError, Where
 from incline.hull import Integrated, pose_of
 from incline.hydrostatics import LEVEL, Curves
+from incline.ledger import lines_of
 from incline.observations import distinct
 
 if TYPE_CHECKING:
@@ -38,18 +39,39 @@ def refuse(trial: Trial, plan: Plan, seen: Observations, found: Yield) -> None:
         defects = _steep_defects(seen, found) or _shift_defects(trial, plan, seen, found)
     light = float(found.light_displacement)
     if not light > 0.0 and not any(d.code in _WRONG_WATERLINE for d in defects):
-        defects.append(
-            Defect(
-                Where("ledger.csv"),
-                "lightship-none",
-                f"{light:.3f} t left after the ledger",
-                "a lightship displacement above zero",
-            )
-        )
+        defects.append(_nothing_left(trial, float(found.condition.displacement), light))
     if defects:
         raise FieldDataError(defects)
 
 
+def _nothing_left(trial: Trial, displacement: float, light: float) -> Defect:
+    """A ledger that takes off all there is, with the line that takes off most."""
+    deducted = [
+        *((w.mass, w.id, "weights.csv") for w in trial.weights),
+        *(
+            (line.mass, line.name, _FILES[line.source])
+            for line in lines_of(trial)
+            if line.action == "deduct"
+        ),
+    ]
+    hint = "check the units of the drafts"
+    if deducted:
+        mass, name, file = max(deducted)
+        hint = (
+            f'the largest deduction is "{name}" of {mass:.3f} t in {file}: check the unit of its'
+            f" mass, and {hint.removeprefix('check ')}"
+        )
+    return Defect(
+        Where("trial"),
+        "lightship-none",
+        f"{light:.3f} t left of {displacement:.3f} t by the drafts, after the ledger",
+        "a lightship displacement above zero",
+        hint,
+    )
+
+
+_FILES = {"tanks": "tanks.csv", "people": "trial.toml", "ledger": "ledger.csv"}
+"""Where the lines of the ledger come from."""
 _WRONG_WATERLINE = frozenset(
     {"waterline-outside-table", "waterline-below-hull", "deck-edge-immersed"}
 )

@@ -159,11 +159,11 @@ def _table(trial: Trial, outcome: Outcome, system: UnitSystem) -> list[str]:
             " the length: how her waterplane changes with trim is not in it, and KM may be off by"
             " more than shown where her ends are flared. Use a table for the actual trim."
         )
-    apart = entry.linear_km - ship.kmt
-    if abs(apart) > _COARSE:
+    straight = entry.linear_km - ship.kmt
+    if abs(straight) > _COARSE:
         said.append(
             "The rows of the hydrostatic table are far apart: straight lines between them would"
-            f" give a KM that differs by {_small(apart, system)}."
+            f" give a KM that differs by {_small(straight, system)}."
         )
     return said
 

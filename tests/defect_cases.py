@@ -33,7 +33,17 @@ def key(old: str, new: str) -> Files:
     return {**changed("trial.toml", old, new, STATED)}
 
 
+def repeated(p1: list[str], i1: list[str]) -> Files:
+    """The small trial with four values of each device at every shift, as they stand in the rows."""
+    lines = ["shift,device,kind,reading,reading 2,reading 3,reading 4,unit"]
+    for n, (p, i) in enumerate(zip(p1, i1, strict=True)):
+        lines += [f"{n},P1,repeats,{p},mm", f"{n},I1,repeats,{i},deg"]
+    return {**SMALL, "readings.csv": "\n".join(lines) + "\n"}
+
+
 TOML = "trial.toml"
+SMOOTH = ["0,0,0,0", "1.59,1.60,1.59,1.58", "0,0.01,0,0", "-1.59,-1.6,-1.59,-1.59"]
+CALM = ["300,301,300,302", "411,412,410,411", "301,300,300,300", "189,190,188,189"]
 GRID = "draft [m],trim [m],volume [m3],lcb [m],kb [m],km [m]\n"
 CASES: list[tuple[Files, list[Found]]] = [
     # files
@@ -237,6 +247,31 @@ CASES: list[tuple[Files, list[Found]]] = [
     (row("readings.csv", 1, "shift,device,kind,reading [mm],reading 2,reading 3,unit,note,exclude"), [
         ("unit-unwanted", "readings.csv", 1, "reading"),
     ]),
+    # decimals behind a comma
+    (repeated(CALM, SMOOTH), []),
+    (repeated(["300,5,301,2", "411,2,411,4", "300,3,300,4", "189,4,189,5"], SMOOTH), [
+        ("readings-split", "readings.csv", n, "reading") for n in (2, 4, 6, 8)
+    ]),
+    (repeated(CALM, ["0,012,0,010", "1,592,1,588", "0,04,0,05", "-1,592,-1,590"]), [
+        ("readings-split", "readings.csv", n, "reading") for n in (3, 5, 7, 9)
+    ]),
+    (repeated([*CALM[:2], "300,5,301,2", CALM[3]], SMOOTH), [
+        ("readings-apart", "readings.csv", 6, "reading"),
+    ]),
+    (row("readings.csv", 8, "3,P1,repeats,111,112,300,mm,,"), [
+        ("readings-apart", "readings.csv", 8, "reading"),
+    ]),
+    (row("readings.csv", 8, "3,P1,repeats,111,112,300,mm,,a boat passed\n3,P1,,111 P,,,mm,,"), []),
+    (row("readings.csv", 8, "3,P1,,111 P,,,mm,7,"), [("value-wrong", "readings.csv", 8, "note")]),
+    (row("readings.csv", 8, "3,P1,,111 P,,,mm,,2.5"), [("value-wrong", "readings.csv", 8, "exclude")]),
+    (row("drafts.csv", 2, "1.5,P,3,002,,6"), [("value-wrong", "drafts.csv", 2, "freeboard")]),
+    (row("shifts.csv", 4, "0,,B,3,95,5.5"), [("outside-vessel", "shifts.csv", 4, "x"),
+                                             ("weight-in-two-places", "shifts.csv", 4, "x")]),
+    # where the weights start
+    (row("shifts.csv", 3, "0,9:00,A,4.00 P,29.5,5.5"), []),
+    (row("shifts.csv", 3, "0,9:00,A,4.00 P,30,"), [("weight-in-two-places", "shifts.csv", 3, "x")]),
+    (row("shifts.csv", 3, "0,9:00,A,4.00 P,,5.6"), [("weight-in-two-places", "shifts.csv", 3, "z")]),
+    (row("shifts.csv", 6, "2,09:20,A,-4,20,5.6"), []),
     # water
     (
         {**SMALL, "drafts.csv": "x [m],side,draft [m]\n30,C,3\n30.5,C,3\n"},

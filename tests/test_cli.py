@@ -37,6 +37,16 @@ def test_wrong_usage_exits_2():
     assert incline("start", "x", "--units", "furlongs").returncode == 2
 
 
+def test_words_of_options_may_be_in_capitals(tmp_path):
+    run = incline("start", "mine", "--units", "Metric", cwd=tmp_path)
+    assert run.returncode == 0, run.stderr
+    for paper in ("A4", "Letter"):
+        run = incline(
+            "sheets", "--blank", "--units", "US", "--paper", paper, "-o", paper, cwd=tmp_path
+        )
+        assert run.returncode == 0, run.stderr
+
+
 @pytest.mark.parametrize("units", ["metric", "us"])
 def test_start_makes_a_trial_that_check_explains(tmp_path, units):
     run = incline("start", "mine", "--units", units, cwd=tmp_path)

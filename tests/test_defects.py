@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 import pytest
-from defect_cases import CASES, TOML, Files, Found, key, row, text, without
+from defect_cases import CASES, SMOOTH, TOML, Files, Found, key, repeated, row, text, without
 from hull_cases import HULLS
 from slip_cases import SLIPS
 from small_trial import SMALL, write
@@ -48,6 +48,8 @@ CODES = [
     "shift-unknown",
     "device-without-readings",
     "reading-twice",
+    "readings-split",
+    "readings-apart",
     "readings-no-kind",
     "moments-too-few",
     "moments-equal",
@@ -196,12 +198,24 @@ def test_what_was_found_is_quoted_and_cut(tmp_path: Path) -> None:
         (row("shifts.csv", 7, "3,09:30,b,-4,,"), 'did you mean "B"?'),
         (row("changes.csv", 2, "aboard,mat,1,5,30,0,5"), "decimals have a point"),
         (row("changes.csv", 2, 'aboard,mat,"1,5",30,0,5'), "decimals have a point"),
+        (row("drafts.csv", 2, "1.5,P,3,002,,6"), "write 3.002; decimals have a point"),
+        (row("shifts.csv", 4, "0,,B,4,25,5.5"), "write 4.25; decimals have a point"),
+        (row("readings.csv", 8, "3,P1,,111 P,,,mm,7,"), "decimals have a point"),
+        (repeated(["300,5,301,2"] * 4, SMOOTH), "write, for example, 300.5; decimals have a point"),
         (row("changes.csv", 1, "change,item,mass [tons],x [m],y [m],z [m]"), "LT for long tons"),
         (key('check = "initial-list"', 'check = "intial-list"'), 'did you mean "initial-list"?'),
     ],
 )
 def test_hints(tmp_path: Path, files: Files, hint: str) -> None:
     assert any(hint in d.hint for d in defects_of(tmp_path, files))
+
+
+def test_a_start_told_in_two_places_names_both(tmp_path: Path) -> None:
+    (defect,) = defects_of(tmp_path, row("shifts.csv", 3, "0,9:00,A,4.00 P,30,"))
+    assert defect.where.file == "shifts.csv"
+    assert defect.found == '"30"'
+    assert '"29.5 m" as in weights.csv, row 2' in defect.expected
+    assert defect.hint == ""
 
 
 def test_decimal_points_in_a_file_with_semicolons(tmp_path: Path) -> None:

@@ -180,6 +180,14 @@ CASES = {
     ("\nnumber = 2\nauthor", "\nnumber = 3\nauthor"): [("value-wrong", "report.number")],
     ("\nnumber = 2\nauthor", "\nnumber = 2.5\nauthor"): [("value-wrong", "report.number")],
     ('date = "2026-03-01"', 'date = "1 March"'): [("value-wrong", "revisions[2].date")],
+    ("date = 2026-02-10", "date = 2026-02-02"): [("value-wrong", "revisions[1].date")],
+    ("date = 2026-02-10", "date = 2026-02-03"): [],
+    ('date = "2026-03-01"', "date = 2026-02-09"): [("value-wrong", "revisions[2].date")],
+    ("\nnumber = 1\ndate", "\nnumber = 2\ndate"): [("value-wrong", "revisions[2].number")],
+    ("\nnumber = 1\ndate", "\nnumber = 3\ndate"): [("value-wrong", "revisions[2].number")],
+    ("\nnumber = 1\ndate", "\nnumber = 0\ndate"): [("value-wrong", "revisions[1].number")],
+    ("\nnumber = 1\ndate", '\nnumber = "A"\ndate'): [],
+    ('status = "issued"', ""): [],
     ("date = 2026-02-10", ""): [("key-missing", "revisions[1].date")],
     ('description = "first issue"', ""): [("key-missing", "revisions[1].description")],
     ('title = "Lines plan"', 'name = "Lines plan"'): [
@@ -198,7 +206,7 @@ CASES = {
     ('x_origin = "amidships"', ""): [("key-missing", "compare[1].x_origin")],
     ('kg = "4.10 m"', 'kg = "4.10 m"\nfile = "old.json"'): [
         ("value-wrong", f"compare[1].{key}") for key in ("displacement", "kg", "lcg", "x_origin", "lpp")
-    ] + [("key-unknown", "compare[1].u_displacement"), ("file-missing", "old.json")],
+    ] + [("key-unknown", "compare[1].u_displacement"), ("file-missing", "compare[1].file")],
     ("[condition]", "[condition]\nhull = 3"): [("key-unknown", "condition.hull")],
     ('state = "complete"', "state = 3"): [("value-wrong", "condition.state")],
 }  # fmt: skip
@@ -208,7 +216,23 @@ CASES = {
 def test_each_defect_and_no_other(
     tmp_path: Path, change: tuple[str, str], expected: list[tuple[str, str]]
 ) -> None:
-    assert sorted(places(tmp_path, with_papers(*change))) == sorted(expected)
+    files = with_papers(*change)
+    if expected:
+        assert sorted(places(tmp_path, files)) == sorted(expected)
+    else:
+        assert read_trial(write(tmp_path, files)).papers.revisions
+
+
+def test_a_lightship_file_or_situation_that_is_not_there_is_told_where_it_is_named(
+    tmp_path: Path,
+) -> None:
+    section = '\n[[compare]]\nkind = "earlier"\nfile = "old.json"\nsituation = "passenger"\n'
+    with pytest.raises(FieldDataError, match="found") as caught:
+        read_trial(write(tmp_path, {**SMALL, TOML: SMALL[TOML] + section}))
+    missing, situation = map(str, caught.value.defects)
+    assert missing.startswith('trial.toml, compare[1].file: found no file "old.json"')
+    assert 'found "passenger"; expected one of the situations ' in situation
+    assert "passenger-survey" in situation
 
 
 def test_an_issue_without_history_is_a_defect(tmp_path: Path) -> None:

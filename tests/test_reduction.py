@@ -93,6 +93,27 @@ def test_a_ledger_that_leaves_no_ship(workboat):
     assert codes(t) == ["lightship-none"]
 
 
+def test_the_largest_deduction_is_named_when_no_ship_is_left(workboat):
+    """A mass in kg under [t] is a thousand times too large, and no item of the ledger."""
+    first, *others = workboat.weights
+    heavy = dataclasses.replace(first, mass=1000.0 * first.mass)
+    for t, named in (
+        (
+            dataclasses.replace(workboat, weights=(heavy, *others)),
+            f'"{heavy.id}" of {heavy.mass:.3f} t in weights.csv',
+        ),
+        (
+            dataclasses.replace(workboat, items=(item("deduct", 4000.0, 3.0),)),
+            "of 4000.000 t in ledger.csv",
+        ),
+    ):
+        with pytest.raises(FieldDataError, match="left of") as caught:
+            reduce(t)
+        (defect,) = [d for d in caught.value.defects if d.code == "lightship-none"]
+        assert named in defect.hint
+        assert "check the unit of its mass" in defect.hint
+
+
 def test_all_that_is_wrong_comes_at_once(workboat):
     t = turned(workboat, {"P2"})
     t = dataclasses.replace(

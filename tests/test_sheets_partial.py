@@ -10,6 +10,7 @@ from test_sheets import WORKBOAT, planned, printed, sheet, texts
 from incline.errors import FieldDataError
 from incline.reading import read_trial
 from incline.reading.partial import read_partial
+from incline.sheets.sequence import rows_of
 
 
 @pytest.mark.parametrize("name", ["workboat-metric", "supply-vessel-us", "disturbed-metric"])
@@ -49,6 +50,40 @@ def test_a_wrong_cell_is_told_and_left_blank_and_the_rest_is_used(write_folder, 
     assert bad.name in found
     assert f"{bad.contents} 0.8500" in found
     assert "pressed full" in found
+
+
+@pytest.mark.parametrize("row", ["A,1,152,CAL A-26,12.000,4.600", "A,1.15z,CAL A-26,12.000,4.600"])
+def test_a_row_of_a_weight_with_a_bad_cell_is_left_blank_but_for_its_name(
+    write_folder, tmp_path, row
+):
+    folder = planned(write_folder)
+    whole = (folder / "weights.csv").read_text(encoding="utf-8")
+    old = "A,1.152,CAL A-26,12.000,4.600"
+    assert old in whole
+    (folder / "weights.csv").write_text(whole.replace(old, row), encoding="utf-8")
+    partial = read_partial(folder)
+    (bad, *others) = partial.trial.weights
+    assert bad.id == "A"
+    assert math.isnan(bad.mass + bad.x + bad.z)
+    assert all(math.isfinite(w.mass + w.x + w.z) for w in others)
+    found = sheet(texts(printed(tmp_path, partial)), "Test weights")
+    assert "A B CAL B-26 1.1480 14.000 4.600 solid" in found
+    assert all(r.moment is None for r in rows_of(partial) if r.places["A"].y != -3.4)
+
+
+def test_an_arrow_stands_only_where_a_weight_is_known_to_have_moved(write_folder):
+    """Every place is listed at every shift; the start of D is left out, and shift 2 wholly."""
+    head = "shift,weight,y [m]\n"
+    places = {0: "PPS", 1: "SPSS", 3: "SSSS", 4: "SSSP", 5: "SSSP"}
+    rows = [
+        f"{n},{w},{'-' if at == 'P' else ''}3.4\n"
+        for n, sides in places.items()
+        for w, at in zip("ABCD", sides, strict=False)
+    ]
+    folder = planned(write_folder)
+    (folder / "shifts.csv").write_text(head + "".join(rows), encoding="utf-8")
+    moved = {r.number: set(r.moved) for r in rows_of(read_partial(folder))}
+    assert moved == {0: set(), 1: {"A"}, 3: {"B"}, 4: {"D"}, 5: set()}
 
 
 def test_marks_without_drafts_are_places_to_read(write_folder, tmp_path):
@@ -125,7 +160,9 @@ def test_blank_sheets_twice_are_the_same_to_the_byte(tmp_path):
 @pytest.mark.parametrize(
     "arguments",
     [[], ["--blank", WORKBOAT], ["--blank", "--gm", "1"], ["--blank", "--displacement", "-3 t"],
-     ["--blank", "--paper", "a3"]],
+     ["--blank", "--paper", "a3"], ["--blank", "--gm", "100 m"],
+     ["--blank", "--displacement", "2000000 t"], [WORKBOAT, "--gm", "50 m"],
+     [WORKBOAT, "--displacement", "0.3 t"], [WORKBOAT, "--displacement", "310000 t"]],
 )  # fmt: skip
 def test_wrong_usage_exits_2(arguments, tmp_path):
     run = incline("sheets", *arguments, cwd=tmp_path)

@@ -38,7 +38,7 @@ def compare(
         list[str] | None,
         typer.Option(metavar="MASS", help="A weight added, or removed (-0.4 t); once for each."),
     ] = None,
-    units: Annotated[Units | None, typer.Option(help="Units shown.")] = None,
+    units: Annotated[Units | None, typer.Option(case_sensitive=False, help="Units shown.")] = None,
     json: Annotated[
         str | None, typer.Option(metavar="FILE|-", help="Write JSON (- : to the screen).")
     ] = None,

@@ -21,7 +21,7 @@ from incline.cli.parts import (
 )
 
 if TYPE_CHECKING:
-    from incline.record import Trial
+    from incline.record import Trial, Vessel
 
 
 @app.command()
@@ -32,10 +32,16 @@ def report(
     ] = None,
     units: Annotated[
         Shown | None,
-        typer.Option(help="Units, in place of the trial's; both: metric with US beside it."),
+        typer.Option(
+            case_sensitive=False,
+            help="Units, in place of the trial's; both: metric with US beside it.",
+        ),
     ] = None,
     paper: Annotated[
-        Paper | None, typer.Option(help="Paper, in place of the one that goes with the units.")
+        Paper | None,
+        typer.Option(
+            case_sensitive=False, help="Paper, in place of the one that goes with the units."
+        ),
     ] = None,
     tables: Annotated[
         Path | None,
@@ -96,8 +102,12 @@ def sheets(
     output: Annotated[
         Path | None, typer.Option("--output", "-o", metavar="FILE", help="Name of the PDF.")
     ] = None,
-    paper: Annotated[Paper | None, typer.Option(help="Paper, if not that of the units.")] = None,
-    units: Annotated[Units, typer.Option(help="Units, where no trial says.")] = Units.metric,
+    paper: Annotated[
+        Paper | None, typer.Option(case_sensitive=False, help="Paper, if not that of the units.")
+    ] = None,
+    units: Annotated[
+        Units, typer.Option(case_sensitive=False, help="Units, where no trial says.")
+    ] = Units.metric,
     devices: Annotated[
         int, typer.Option(min=1, max=24, help="Devices, where no trial lists them.")
     ] = 3,
@@ -127,12 +137,17 @@ def sheets(
 
     if (trial is None) != blank:
         raise typer.BadParameter("a folder of a trial, or --blank, one of them")
-    expected = above_zero(gm, LENGTH, "--gm"), above_zero(displacement, MASS, "--displacement")
+    expected = (
+        above_zero(gm, LENGTH, "--gm", _MOST_GM),
+        above_zero(displacement, MASS, "--displacement", _MOST_MASS),
+    )
     partial = read_partial(trial or templates_folder() / units.value)
+    vessel = partial.trial.vessel
+    _check_expected(expected, vessel)
     stem = "field"
     if trial is not None:
         day = partial.date.isoformat() if partial.date else "undated"
-        stem = file_stem(partial.trial.vessel.name, day)
+        stem = file_stem(vessel.name, day)
     target = output or Path(f"{stem}-sheets.pdf")
     refuse_existing(target, force=force)
     with Step("Writing the sheets"):
@@ -150,3 +165,26 @@ def sheets(
     print(f"Sheets written to {target}")
     if partial.wrong:
         tell("left blank, because it cannot be used", list(map(str, partial.told)))
+
+
+_MOST_GM = 60.0, "60 m, more than any ship has"
+_MOST_MASS = 1e6, "1 000 000 t, more than any ship has"
+
+
+def _check_expected(expected: tuple[float | None, float | None], vessel: Vessel) -> None:
+    """Wrong usage where no ship of these dimensions has the GM or the displacement [m, t].
+
+    Of hulls of one beam and volume a box has the largest BM, B^2 / (12 T), and drafts at a test are
+    above a thirtieth of the beam; salt water in a box as deep as the ship weighs most.
+    """
+    gm, displacement = expected
+    if gm is not None and gm > 2.5 * vessel.beam:
+        text = f"expected a GM that a ship of {vessel.beam:.2f} m beam can have"
+        raise typer.BadParameter(text, param_hint="--gm")
+    most = 1.03 * vessel.lpp * vessel.beam * vessel.depth * 1.2  # a hull is longer than lpp
+    if displacement is not None and (displacement > most or displacement < 0.003 * most):
+        text = (
+            f"expected a displacement that a ship of {vessel.lpp:.2f} m x {vessel.beam:.2f} m x"
+            f" {vessel.depth:.2f} m can have"
+        )
+        raise typer.BadParameter(text, param_hint="--displacement")

@@ -98,13 +98,20 @@ def amount(text: str, quantity: Quantity, option: str) -> float:
         raise typer.BadParameter(f"expected {error.expected}", param_hint=option) from error
 
 
-def above_zero(text: str | None, quantity: Quantity, option: str) -> float | None:
-    """What an option gives in inside units; wrong usage when it is not above zero."""
+def above_zero(
+    text: str | None, quantity: Quantity, option: str, most: tuple[float, str]
+) -> float | None:
+    """What an option gives in inside units; wrong usage when it is not above zero.
+
+    Nor may it be above ``most``, which is given in inside units and in words.
+    """
     if text is None:
         return None
     value = amount(text, quantity, option)
     if value <= 0.0:
         raise typer.BadParameter(f"expected a {quantity.name} above zero", param_hint=option)
+    if value > most[0]:
+        raise typer.BadParameter(f"expected no more than {most[1]}", param_hint=option)
     return value
 
 

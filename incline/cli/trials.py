@@ -20,7 +20,9 @@ from incline.cli.parts import (
 @app.command()
 def start(
     folder: Annotated[Path, typer.Argument(metavar="DIR", help="New folder for the trial.")],
-    units: Annotated[Units, typer.Option(help="Units of the blank tables.")] = Units.metric,
+    units: Annotated[
+        Units, typer.Option(case_sensitive=False, help="Units of the blank tables.")
+    ] = Units.metric,
 ) -> None:
     """Make a new trial folder with blank tables to fill in.
 

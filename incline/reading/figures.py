@@ -27,21 +27,26 @@ FILES = "a .json file of incline reduce, or a .toml file"
 
 
 def lightship_of_file(
-    path: Path, file: str, expected: str, collector: Collector
+    path: Path, file: str, expected: str, collector: Collector, named: Where | None = None
 ) -> OtherLightship | None:
     """The lightship of a .json or .toml file; None after a defect.
 
-    ``file`` is its name as the user knows it, ``expected`` what may stand there, for the defects.
+    ``file`` is its name as the user knows it, ``expected`` what may stand there, for the defects;
+    ``named`` the place where another file names it, which is at fault when it cannot be opened.
     """
-    kind, where = path.suffix.lower(), Where(file)
+    kind, where = path.suffix.lower(), named or Where(file)
     try:
         data = path.read_bytes()
     except FileNotFoundError:
         missing = "no such file" if expected == FILES else "no such file or folder"
+        if named:
+            missing = f"no file {quoted(file)} there, counted from the trial's folder"
         collector.add(where, "file-missing", missing, expected)
         return None
     except OSError as error:
         found = error.strerror or "an error"
+        if named:
+            found = f"{quoted(file)}: {found}"
         collector.add(where, "file-unreadable", found, "a file that can be read")
         return None
     if path.name.lower() == "trial.toml" or kind not in (".json", ".toml"):

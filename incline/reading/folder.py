@@ -16,6 +16,7 @@ from incline.reading.offsets import read_bodies
 from incline.reading.readings import check_devices, check_shifts, read_readings
 from incline.reading.rolls import read_rolls
 from incline.reading.settings import read_head
+from incline.reading.starts import check_starts
 from incline.reading.tables import (
     OFFSETS,
     TABLE,
@@ -174,11 +175,13 @@ class _Reader:
             if weights:
                 check_moves(sheet, weights, table.shifts)
             check_moments(sheet, weights, table.shifts)
+        of_weights = self.sheets["weights.csv"]
+        if of_weights:
+            check_starts(sheet, of_weights, weights, table.shifts)
         remark = (
             "The moments of the test weights were recorded as such: no test weight comes into the"
             " ledger by itself."
         )
-        of_weights = self.sheets["weights.csv"]
         return weights, table, [
             *([remark] if table.by_moment else []),
             *(weight_remarks(of_weights, weights) if of_weights else []),

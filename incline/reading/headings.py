@@ -9,6 +9,7 @@ from typing import TYPE_CHECKING
 
 from incline.reading.cells import Column, Placed, Sheet
 from incline.reading.collect import nearest, quoted
+from incline.reading.splits import is_split, split_hint
 from incline.reading.uncertainty import PERCENT, uncertainty_columns
 from incline.units import FRACTION, QuantityError, factor
 
@@ -101,14 +102,12 @@ def _split_number(row: Row, width: int) -> str:
     pairs = [
         f"{a}.{b}"
         for i, (a, b) in enumerate(itertools.pairwise(row.cells))
-        if i in numeric and re.fullmatch(r"[+-]?[0-9]+", a) and re.fullmatch(r"[0-9]+", b)
+        if i in numeric and is_split(a, b)
     ]
     if len(row.cells) != width + 1 or not pairs:
         return plain
     row.sheet.shifted.add(row.number)
-    which = "the" if len(pairs) == 1 else "a"
-    such = "write" if len(pairs) == 1 else "write, for example,"
-    return f"a decimal comma splits {which} number: {such} {pairs[0]}; decimals have a point"
+    return split_hint(pairs)
 
 
 def _place(sheet: Sheet, index: int, heading: str, known: Mapping[str, Column]) -> None:

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import datetime
+import itertools
 from dataclasses import replace
 from typing import TYPE_CHECKING
 
@@ -17,10 +18,10 @@ from incline.papers import (
     Revision,
     Signature,
 )
-from incline.reading.collect import NOTHING, Sign, quoted
+from incline.reading.collect import NOTHING, Sign, nearest, quoted
 from incline.reading.figures import FILES, lightship_of_file, lightship_of_section
 from incline.reading.occasion import read_date
-from incline.situations import situation_named
+from incline.situations import situation_named, situations
 from incline.units import ANGLE, LENGTH
 
 if TYPE_CHECKING:
@@ -41,15 +42,21 @@ _STATED = ("displacement", "kg", "vcg", "lcg", "tcg", "x_origin", "lpp")
 """Keys that give a lightship's figures in the section itself."""
 
 
-def read_papers(file: TomlFile, folder: Path, lpp: float) -> Papers:
-    """All of them; every section may be absent. ``lpp`` [m] serves another lightship's LCG."""
+def read_papers(file: TomlFile, folder: Path, lpp: float, held: datetime.date) -> Papers:
+    """All of them; every section may be absent.
+
+    ``lpp`` [m] serves another lightship's LCG; ``held`` is the day of the test, `datetime.date.min`
+    where it is not known.
+    """
     head = file.section("report")
     status: Literal["draft", "issued"] = head.choice("status", ("draft", "issued"), "draft")
     number = _number(head, "number")
     author, submitted_to = head.text("author"), head.text("submitted_to")
-    revisions = tuple(_revision(s) for s in file.sections("revisions"))
+    history = file.sections("revisions")
+    revisions = tuple(_revision(s) for s in history)
     if status == "issued":
         _check_issue(head, number, revisions)
+        _check_history(history, revisions, held)
     head.close()
     return Papers(
         status=status,
@@ -87,6 +94,36 @@ def _check_issue(head: Section, number: str, revisions: Sequence[Revision]) -> N
     elif revisions[-1].number != number and revisions[-1].number:
         expected = f"the number of the last of [[revisions]], {quoted(revisions[-1].number)}"
         head.fault("number", "value-wrong", quoted(number), expected)
+
+
+def _check_history(
+    history: Sequence[Section], revisions: Sequence[Revision], held: datetime.date
+) -> None:
+    """Issues follow the test and one another, each with a number of its own, from 1 upwards."""
+    for section, revision in zip(history, revisions, strict=True):
+        if revision.number.isdecimal() and int(revision.number) == 0:
+            section.fault(
+                "number", "value-wrong", quoted(revision.number), "a number from 1 upwards"
+            )
+        if datetime.date.min < revision.date < held:
+            expected = f"a day not before that of the test, {held.isoformat()}"
+            section.fault("date", "value-wrong", quoted(revision.date.isoformat()), expected)
+    pairs = zip(history[1:], itertools.pairwise(revisions), strict=False)
+    for n, (section, (before, after)) in enumerate(pairs, start=1):
+        if datetime.date.min < after.date < before.date:
+            expected = f"a day not before that of the revision above, {before.date.isoformat()}"
+            section.fault("date", "value-wrong", quoted(after.date.isoformat()), expected)
+        if not after.number:
+            continue
+        earlier = [r.number.casefold() for r in revisions[:n]]
+        falls = (
+            before.number.isdecimal()
+            and after.number.isdecimal()
+            and int(after.number) <= int(before.number)
+        )
+        if after.number.casefold() in earlier or falls:
+            expected = f"a number of its own, after {quoted(before.number)} of the revision above"
+            section.fault("number", "value-wrong", quoted(after.number), expected)
 
 
 def _revision(section: Section) -> Revision:
@@ -189,7 +226,8 @@ def _of_file(section: Section, folder: Path, file: str) -> OtherLightship | None
     for key in _STATED:
         if section.value(key) is not None:
             section.fault(key, "value-wrong", quoted(file), "figures here or a file, not both")
-    return lightship_of_file(folder / file, file, FILES, section.collector)
+    place = section.where("file")
+    return lightship_of_file(folder / file, file, FILES, section.collector, place)
 
 
 def _situation(section: Section) -> str:
@@ -199,6 +237,8 @@ def _situation(section: Section) -> str:
         return ""
     try:
         return situation_named(name).id
-    except InclineError as error:
-        section.fault("situation", "value-wrong", quoted(name), str(error))
+    except InclineError:
+        known = [s.id for s in situations()]
+        expected = "one of the situations " + ", ".join(known)
+        section.fault("situation", "value-wrong", quoted(name), expected, nearest(name, known))
         return ""

@@ -7,7 +7,7 @@ from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
 from incline.errors import Where
-from incline.reading.collect import Collector, folded
+from incline.reading.collect import BAD, Collector, folded
 from incline.reading.folder import read_records
 from incline.reading.tomlfile import FILE
 
@@ -15,7 +15,7 @@ if TYPE_CHECKING:
     import os
 
     from incline.errors import Defect
-    from incline.record import Trial
+    from incline.record import Trial, Weight
 
 __all__ = ["Partial", "read_partial"]
 
@@ -24,6 +24,8 @@ _NOT_YET = frozenset({
     "moments-equal", "moments-too-few", "table-empty", "weight-nowhere",
 })  # fmt: skip
 """Defects that say only that something is not there yet."""
+_SHIFTING = frozenset({"cells-too-many", "file-quoting"})
+"""Defects of a row that leave its cells under headings which need not be their own."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -66,6 +68,7 @@ class Partial:
             place = replace(where, column=f"{where.column}.{column}")
         return not any(
             d.where == place
+            or (d.code in _SHIFTING and d.where.row and d.where == replace(where, column=""))
             or (d.where.file == where.file and _covers(d, column, in_table=where.row > 0))
             for d in (*self.wrong, *self.missing)
         )
@@ -87,11 +90,16 @@ def read_partial(folder: str | os.PathLike[str]) -> Partial:
     """
     collector = Collector()
     trial = read_records(folder, collector)
-    return Partial(
-        trial,
-        tuple(d for d in collector.defects if not _is_missing(d)),
-        tuple(d for d in collector.defects if _is_missing(d)),
-    )
+    wrong = tuple(d for d in collector.defects if not _is_missing(d))
+    bad = {d.where.row for d in wrong if d.where.file == "weights.csv"}
+    weights = tuple(_blanked(w) if w.where.row in bad else w for w in trial.weights)
+    missing = tuple(d for d in collector.defects if _is_missing(d))
+    return Partial(replace(trial, weights=weights), wrong, missing)
+
+
+def _blanked(weight: Weight) -> Weight:
+    """A test weight of a row with a bad cell: its name alone, as the rest may be out of place."""
+    return replace(weight, mass=BAD, certificate="", x=BAD, z=BAD, stated={})
 
 
 def _is_missing(defect: Defect) -> bool:

@@ -11,6 +11,7 @@ from incline.errors import Where
 from incline.reading.aboard import LENGTH_KEYS
 from incline.reading.cells import Column
 from incline.reading.collect import nearest, quoted
+from incline.reading.splits import check_apart, check_split, check_words
 from incline.reading.tomlfile import FILE
 from incline.reading.weights import shift_number
 from incline.record import Reading
@@ -68,11 +69,14 @@ def read_readings(sheet: Sheet) -> tuple[tuple[Reading, ...], bool]:
         number = shift_number(row)
         device = row.text("device", required=True)
         reading = _reading(row, columns, number or 0, device)
+        check_words(row)
         if number is None or not device:
             whole = False
         else:
             readings.append(reading)
     _check_twice(sheet, readings)
+    check_split(sheet, readings)
+    check_apart(sheet, readings)
     return tuple(readings), whole
 
 

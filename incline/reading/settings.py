@@ -115,13 +115,14 @@ def read_head(data: bytes | None, files: HullFiles, collector: Collector, folder
     people = tuple(read_person(s, frame.hull) for s in document.sections("people"))
     check_ids([d.id for d in devices], "devices", "id", collector)
     check_ids([p.name for p in people], "people", "name", collector)
+    occasion = read_occasion(document.section("test"))
     head = Head(
         vessel=vessel,
-        occasion=read_occasion(document.section("test")),
+        occasion=occasion,
         environment=read_environment(document.section("environment")),
         hydrometer=read_hydrometer(document.section("instruments")),
         condition=read_condition(document.section("condition")),
-        papers=read_papers(document, folder, vessel.lpp),
+        papers=read_papers(document, folder, vessel.lpp, occasion.date),
         settings=settings,
         devices=devices,
         people=people,

@@ -10,6 +10,7 @@ from incline.errors import Where
 from incline.reading.cells import Column
 from incline.reading.collect import BAD, NOTHING, Sign, quoted
 from incline.reading.plausible import WATER, check, temperature_remark
+from incline.reading.splits import is_split, split_hint
 from incline.reading.uncertainty import combined, of_row, written
 from incline.record import DraftReading, Sample
 from incline.units import DENSITY, FRACTION, LENGTH, TEMPERATURE
@@ -150,7 +151,10 @@ def _draft(row: Row, frame: Frame) -> tuple[float, float | None]:
     """Draft above the baseline and the freeboard it came from [m]."""
     if row.raw("draft") and row.raw("freeboard"):
         expected = "a draft or a freeboard, not both"
-        row.fault("freeboard", "value-wrong", quoted(row.raw("freeboard")), expected)
+        pair = row.raw("draft"), row.raw("freeboard")
+        split = is_split(*pair) and not row.sheet.decimal_comma
+        hint = split_hint([".".join(pair)]) if split else ""
+        row.fault("freeboard", "value-wrong", quoted(pair[1]), expected, hint)
         return BAD, None
     freeboard = row.maybe("freeboard")
     if freeboard is None:

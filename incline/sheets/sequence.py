@@ -61,13 +61,25 @@ def standard_rows() -> tuple[ShiftRow, ...]:
     return tuple(rows)
 
 
+def _is_same(before: Place, now: Place) -> bool:
+    """Whether a weight is known to stand where it stood: x and z need not be known for it."""
+    along = ((before.x, now.x), (before.z, now.z))
+    return before.y == now.y and all(a == b or math.isnan(a + b) for a, b in along)
+
+
 def rows_of(partial: Partial) -> tuple[ShiftRow, ...]:
-    """The shifts that a trial records, every weight's place carried on until it moves."""
+    """The shifts that a trial records, every weight's place carried on until it moves.
+
+    A weight whose first place is told at a later shift, as when the first was left out, is not
+    known to have moved there.
+    """
     trial = partial.trial
     moments = moments_by_shift(trial.weights, trial.shifts)
     at = {w.id: Place(w.x, math.nan, w.z) for w in trial.weights}
     rows: list[ShiftRow] = []
+    placed: set[str] = set()
     for shift, moment in zip(trial.shifts, moments, strict=True):
+        stood = dict(at)
         for move in shift.moves:
             before = at.get(move.weight, Place())
             at[move.weight] = Place(
@@ -75,7 +87,9 @@ def rows_of(partial: Partial) -> tuple[ShiftRow, ...]:
                 move.y if partial.knows(move.where, "y") else math.nan,
                 before.z if move.z is None else move.z,
             )
-        moved = frozenset(m.weight for m in shift.moves) if rows else frozenset()
+        named = {m.weight for m in shift.moves}
+        moved = frozenset(n for n in named & placed if not _is_same(stood[n], at[n]))
+        placed |= named
         rows.append(
             ShiftRow(
                 number=shift.number,

@@ -76,7 +76,7 @@ def _weight(book: Book, weight: Weight) -> tuple[str, ...]:
         book.number(where, "mass", weight.mass, "mass", 4),
         book.along(where, "x", weight.x),
         book.number(where, "z", weight.z, "length"),
-        book.word(where, "kind", weight.kind),
+        book.word(where, "kind", weight.kind) if math.isfinite(weight.mass + weight.z) else "",
         "",
     )
 
