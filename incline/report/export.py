@@ -49,8 +49,14 @@ def tables_of(flow: Iterable[Any]) -> dict[str, bytes]:
             files[_name(section, caption or title or "report", files)] = _csv(flowable)
             caption = ""
         elif isinstance(flowable, Paragraph) and flowable.style.name == "caption":
-            caption = f"{section} {flowable.getPlainText()}"
+            caption = _captioned(section, title, flowable.getPlainText())
     return files
+
+
+def _captioned(section: str, title: str, caption: str) -> str:
+    """What the table under a caption is named by; where a device begins it, by heading too."""
+    device, colon, _ = caption.partition(": ")
+    return f"{section} {device} {title.removeprefix(section)}" if colon else f"{section} {caption}"
 
 
 def _name(section: str, title: str, taken: dict[str, bytes]) -> str:
@@ -78,8 +84,9 @@ def _csv(table: Listed) -> bytes:
 def cell_of(text: str) -> str:
     """A cell as a spreadsheet should take it.
 
-    A number stays one, with a decimal point and a plain minus, a unit after it or not. A text that would be taken for a
-    formula, or a number in parentheses for a negative one, begins with an apostrophe.
+    A number stays one, with a decimal point and a plain minus, a unit after it or not. A text that
+    would be taken for a formula, or a number in parentheses for a negative one, begins with an
+    apostrophe.
     """
     plain = clean(text).replace("\N{NO-BREAK SPACE}", " ")
     if plain == MISSING:
