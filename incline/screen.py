@@ -240,7 +240,7 @@ def _monte_carlo(simulation: Simulation, system: UnitSystem) -> list[str]:
         places = 2 if r.key == "displacement" else 4
         low, high = (system.show(v, kind, unit, places) for v in r.symmetric)
         verdict = "agrees with first order" if r.agrees else "first order NOT validated: use this"
-        lines.append(f"  {NAMES[r.key]:<14}{low:>10} to {high:>10} {unit:<4} {verdict}")
+        lines.append(f"  {NAMES[r.key]:<13}{low:>9} to {high:>9} {unit:<4} {verdict}")
     return lines
 
 

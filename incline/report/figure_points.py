@@ -18,7 +18,7 @@ if TYPE_CHECKING:
 
 __all__ = ["crossed", "entries_of", "keys", "named_by", "tell", "tell_shifts"]
 
-_SIZE, _REACH = 6.0, 3.5
+_SIZE, _REACH = 6.0, 4.5
 """Size of a word beside a point, and half the size of the point [pt]."""
 _NEAR = 4.0
 """Points as near as this are told together [pt]."""
