@@ -124,7 +124,7 @@ def _heel(outcome: Outcome, system: UnitSystem) -> list[str]:
     heel, free, ship = outcome.heel, outcome.free_surface, outcome.as_inclined
     port, starboard = (math.degrees(a) for a in (heel.max_heel_port, heel.max_heel_starboard))
     lines = [
-        f"Heel: {heel.method}, {sum(not p.excluded for p in heel.points)} readings,"
+        f"Heel: {heel.method} method, {sum(not p.excluded for p in heel.points)} readings,"
         f" {port:.2f} deg port to {starboard:.2f} deg starboard",
         f"  {'device':<12}{'readings':>9}{f'GM alone [{system.length}]':>15}"
         f"{f'std. error [{system.length}]':>18}{'R squared':>12}",

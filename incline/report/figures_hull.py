@@ -105,7 +105,7 @@ def _lines(offsets: Offsets) -> Iterator[tuple[_Line, bool]]:
             if not _whole(body):
                 yield (port if aft else starboard), False
                 continue
-            line = [*reversed(port), *starboard]
+            line = [*reversed(port), *starboard[1:]]
             yield line, aft
             if body.mirrored:
                 yield [(-y, z) for y, z in line], aft
