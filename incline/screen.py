@@ -14,12 +14,15 @@ from incline.units import DENSITY, LENGTH, MASS, MOMENT, SYSTEMS, VOLUME
 if TYPE_CHECKING:
     from collections.abc import Sequence
 
+    from incline.record import Trial
     from incline.result import Estimate, Outcome, Reduction, Rolling, Simulation
     from incline.units import UnitSystem
 
 __all__ = ["show", "summary"]
 
 _RULE = "-" * 72
+_NAME = 12
+"""Most characters of a device's name in the table."""
 
 
 def summary(reduction: Reduction) -> str:
@@ -28,7 +31,7 @@ def summary(reduction: Reduction) -> str:
     excluded = sum(1 for r in trial.readings if r.excluded)
     wrap = partial(textwrap.fill, width=80, initial_indent="  - ", subsequent_indent="    ")
     lines = [
-        f"{trial.vessel.name}, {trial.occasion.date.isoformat()}, {trial.occasion.place}",
+        _title(trial),
         f"  test weights {len(trial.weights)}, shifts {len(trial.shifts)},"
         f" devices {len(trial.devices)}, readings {len(trial.readings)} ({excluded} excluded)",
         f"  draft readings {len(trial.drafts)}, water samples {len(trial.samples)},"
@@ -45,7 +48,7 @@ def show(reduction: Reduction) -> str:
     trial, outcome = reduction.trial, reduction.outcome
     system = SYSTEMS[trial.settings.units]
     parts = [
-        f"{trial.vessel.name}, {trial.occasion.date.isoformat()}, {trial.occasion.place}",
+        _title(trial),
         _RULE,
         *_as_inclined(outcome, system),
         "",
@@ -75,6 +78,11 @@ def show(reduction: Reduction) -> str:
         "Acceptance rests with the flag administration or its recognised organisation.",
     ]
     return "\n".join(parts)
+
+
+def _title(trial: Trial) -> str:
+    words = f"{trial.vessel.name}, {trial.occasion.date.isoformat()}, {trial.occasion.place}"
+    return textwrap.fill(words, width=80, subsequent_indent="  ")
 
 
 def _row(label: str, value: str, unit: str, note: str = "") -> str:
@@ -116,15 +124,15 @@ def _heel(outcome: Outcome, system: UnitSystem) -> list[str]:
     heel, free, ship = outcome.heel, outcome.free_surface, outcome.as_inclined
     port, starboard = (math.degrees(a) for a in (heel.max_heel_port, heel.max_heel_starboard))
     lines = [
-        f"Heel: {heel.method} method, {len([p for p in heel.points if not p.excluded])} readings,"
-        f" to {port:.2f} deg port and {starboard:.2f} deg starboard",
+        f"Heel: {heel.method} method, {sum(not p.excluded for p in heel.points)} readings,"
+        f" {port:.2f} deg port to {starboard:.2f} deg starboard",
         f"  {'device':<12}{'readings':>9}{f'GM alone [{system.length}]':>15}"
         f"{f'std. error [{system.length}]':>18}{'R squared':>12}",
     ]
     for d in heel.devices:
         r2 = "-" if d.r_squared is None else f"{d.r_squared:.6f}"
         lines.append(
-            f"  {d.id:<12}{d.readings:>9}{_length(system, d.gm, 4):>15}"
+            f"  {_short(d.id):<12}{d.readings:>9}{_length(system, d.gm, 4):>15}"
             f"{_length(system, d.u_gm, 4):>18}{r2:>12}"
         )
     moment = system.show(free.moment, MOMENT, system.moment, 2)
@@ -138,6 +146,11 @@ def _heel(outcome: Outcome, system: UnitSystem) -> list[str]:
         _row("LCG as inclined", _length(system, ship.lcg), system.length),
         _row("TCG as inclined", _length(system, ship.tcg), system.length),
     ]
+
+
+def _short(name: str) -> str:
+    """A device's name in its column."""
+    return name if len(name) <= _NAME else f"{name[: _NAME - 3]}..."
 
 
 def _rolling(rolling: Rolling | None, system: UnitSystem) -> list[str]:
@@ -227,7 +240,7 @@ def _monte_carlo(simulation: Simulation, system: UnitSystem) -> list[str]:
         places = 2 if r.key == "displacement" else 4
         low, high = (system.show(v, kind, unit, places) for v in r.symmetric)
         verdict = "agrees with first order" if r.agrees else "first order NOT validated: use this"
-        lines.append(f"  {NAMES[r.key]:<14}{low:>10} to {high:>10} {unit:<4} {verdict}")
+        lines.append(f"  {NAMES[r.key]:<13}{low:>9} to {high:>9} {unit:<4} {verdict}")
     return lines
 
 

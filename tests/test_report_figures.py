@@ -13,8 +13,11 @@ from pypdf.generic import ContentStream
 from read_report import pages
 from reportlab.pdfgen.canvas import Canvas
 
+from incline.errors import Where
+from incline.record import Body, OffsetPoint, Offsets, Station
 from incline.report.canvas_backend import FigureFlowable
 from incline.report.figure_style import add_panel, blank_figure, drawing_style
+from incline.report.figures_hull import section_plot
 from incline.report.figures_residuals import residual_plot
 from incline.report.figures_waterline import waterline_plot
 from incline.report.fonts import register_fonts
@@ -143,3 +146,20 @@ def test_readings_print_the_decimals_that_were_written():
     feet, sixteenth = Show(SYSTEMS["us"]), replace(reading, values=(20.5625 * 0.0254,))
     assert feet.raw_decimals([sixteenth])["length"] == 4
     assert feet.raw_decimals([fine])["length"] == 3
+
+
+def test_mirrored_demihull_shows_both_sides_of_both_hulls():
+    """A demihull 0.5 m wide on each side of y = 3 m reaches from 2.5 m to 3.5 m, and mirrored."""
+    points = (OffsetPoint(y=0.0, z=0.0), OffsetPoint(y=0.5, z=2.0))
+    where = Where(file="offsets.csv")
+    some = tuple(
+        Station(name=str(x), x=x, starboard=points, port=points, where=where) for x in (0.0, 9.0)
+    )
+    bodies = (Body(name="demihull", y=3.0, mirrored=True, stations=some),)
+    ship = made.made_reduction().outcome.as_inclined
+    figure = section_plot(
+        Offsets(bodies=bodies, allowance=None), ship, Show(SYSTEMS["metric"]), 487.0
+    )
+    drawn = [line.get_xydata() for line in figure.axes[0].lines if len(line.get_xydata()) == 3]
+    ends = sorted({(float(d[:, 0].min()), float(d[:, 0].max())) for d in drawn})
+    assert ends == [(-3.5, -2.5), (2.5, 3.5)]

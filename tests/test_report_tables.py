@@ -76,7 +76,8 @@ def test_a_relocated_mass_is_not_taken_for_a_negative_one(tables):
         ("−0.640", "-0.640"), ("1.5e−06", "1.5e-06"), ("+2", "2"), ("–", ""), ("12", "12"),
         ('=HYPERLINK("http://a.example")', '\'=HYPERLINK("http://a.example")'),
         ("+1 deg, heeled", "'+1 deg, heeled"), ("-3 and so on", "'-3 and so on"), ("@SUM(A1)", "'@SUM(A1)"),
-        ("\t=1", "'=1"), ("\r=1", "'=1"), ("(0.870)", "'(0.870)"), ("0.870 t", "0.870 t"), ("a=b", "a=b"),
+        ("\t=1", "'=1"), ("\r=1", "'=1"), ("(0.870)", "'(0.870)"), ("0.870 t", "0.870 t"),
+        ("−0.870 t", "-0.870 t"), ("−3.1\N{NO-BREAK SPACE}LT\N{NO-BREAK SPACE}ft", "-3.1 LT ft"), ("-1 A1", "'-1 A1"), ("a=b", "a=b"),
     ],
 )  # fmt: skip
 def test_cells(text, cell):
@@ -88,9 +89,10 @@ def test_cells(text, cell):
     | st.builds("".join, st.tuples(st.sampled_from(RISKY), st.text(max_size=8)))
 )
 def test_no_cell_is_a_formula(text):
-    """A cell is a plain number, or does not begin as a formula does."""
+    """A cell is a plain number, perhaps with a unit, or does not begin as a formula does."""
     cell = cell_of(text)
-    assert not cell.startswith(RISKY) or re.fullmatch(r"-[0-9.]+(e-?[0-9]+)?", cell)
+    number = r"-[0-9.]+(e-?[0-9]+)?( (m|t|mm|in|ft|LT|%|deg))?"
+    assert not cell.startswith(RISKY) or re.fullmatch(number, cell)
 
 
 # --- the command --------------------------------------------------------------------------------

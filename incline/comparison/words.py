@@ -28,7 +28,8 @@ _NAMES = {
     "weight changes": "sum of weight changes",
 }  # fmt: skip
 _OF = {"displacement": "", "vcg": "", "lcg": " of L", "weight changes": " of displacement"}
-_RULE = "-" * 84
+_WIDTH = 80
+_RULE = "-" * _WIDTH
 _ACCEPTANCE = "Acceptance rests with the flag administration or its recognised organisation."
 _VERIFY = "verify against the current edition"
 
@@ -37,11 +38,11 @@ def list_situations() -> str:
     """Every situation with its limits, what follows, source and evidence."""
     lines = ["Situations for incline compare OLD NEW --situation ID"]
     for s in situations():
-        lines += ["", f"{s.id} ({s.rule_set})", f"  {s.title}"]
+        lines += ["", f"{s.id} ({s.rule_set})", *_wrapped(s.title, "  ")]
         for x in s.limits:
             said = f"{_NAMES[x.quantity]} {_in_words(x)}, else {x.follows} [{credit(x)}]"
             lines += _wrapped(said, "  - ")
-        lines += [f"  {s.note}"] if s.note else []
+        lines += _wrapped(s.note, "  ") if s.note else []
     return "\n".join(lines)
 
 
@@ -64,10 +65,11 @@ def show_comparison(comparison: Comparison, units: str | None = None) -> str:
     """The whole comparison; ``units`` are those of the new or the old trial unless given."""
     c = comparison
     system = SYSTEMS[units or c.new.units or c.old.units or "metric"]
-    lines = [f"Old: {c.old.name} ({c.old.path})", f"New: {c.new.name} ({c.new.path})", _RULE]
-    lines.append(f"  {'':<16}{'old':>11}{'new':>11}{'difference':>13}{'in %':>10}{'U (95 %)':>11}")
+    lines = [f"Old: {c.old.name} ({c.old.path})", f"New: {c.new.name} ({c.new.path})"]
+    lines = [*(row for line in lines for row in _wrapped(line)), _RULE]
+    lines.append(f"{'':<16}{'old':>10}{'new':>10}{'change':>10}{'in %':>8}{'U (95 %)':>9}")
     lines += [_difference(d, system) for d in c.differences]
-    lines.append("  In % of the old value, LCG in % of L; LCG from the after perpendicular.")
+    lines.append("In % of the old value, LCG in % of L; LCG from the after perpendicular.")
     if c.situation is not None:
         lines += ["", *_judged(c, c.situation, system)]
     notes = [*c.remarks, *([c.situation.note] if c.situation and c.situation.note else [])]
@@ -87,14 +89,18 @@ def _judged(c: Comparison, situation: Situation, system: UnitSystem) -> list[str
     else:
         shown = system.show(c.length, LENGTH, system.length, 2)
         more = "" if c.length_from == GIVEN else " (--length where the rules define it otherwise)"
-        lines.append(f"  L = {shown} {system.length}, {c.length_from}{more}")
+        lines += _wrapped(f"L = {shown} {system.length}, {c.length_from}{more}", "  ")
     for judgement in c.judgements:
         lines += _judgement(judgement, system)
     return [*lines, "", *_verdict(c), *_wrapped(recommendation(c, system))]
 
 
 def _wrapped(text: str, first: str = "") -> list[str]:
-    return textwrap.wrap(text, 92, initial_indent=first, subsequent_indent=" " * len(first))
+    """Lines no wider than the screen, broken between words only."""
+    return textwrap.wrap(
+        text, _WIDTH, initial_indent=first, subsequent_indent=" " * len(first),
+        break_long_words=False, break_on_hyphens=False,
+    )  # fmt: skip
 
 
 def _difference(d: Difference, system: UnitSystem) -> str:
@@ -105,12 +111,12 @@ def _difference(d: Difference, system: UnitSystem) -> str:
         return "-" if value is None else system.show(value, kind, unit, places)
 
     percent = "-" if d.percent is None else f"{d.percent:+.2f}"
-    unknown = "" if d.change is None else "u not stated by both"
+    unknown = "" if d.change is None else "u not stated"
     said = {None: unknown, True: "significant", False: "not significant"}[d.significant]
     label = f"{_NAMES[d.quantity]}, {unit}"
     return (
-        f"  {label:<16}{number(d.old.value):>11}{number(d.new.value):>11}"
-        f"{number(d.change):>13}{percent:>10}{number(d.U):>11}  {said}"
+        f"{label:<16}{number(d.old.value):>10}{number(d.new.value):>10}"
+        f"{number(d.change):>10}{percent:>8}{number(d.U):>9}  {said}"
     ).rstrip()
 
 
@@ -123,11 +129,11 @@ def _judgement(j: Judgement, system: UnitSystem) -> list[str]:
         allowed += f" ({system.show(j.amount, kind, unit, places)} {unit})"
     status = {"beyond": "BEYOND", "not judged": "NOT JUDGED"}.get(j.status, j.status)
     found = "" if j.found is None else f"{j.found:.4g} % against "
-    lines = [f"  {name}: {found}{allowed}: {status}"]
+    lines = _wrapped(f"{name}: {found}{allowed}: {status}", "  ")
     if j.status == "beyond":
-        lines.append(f"    what follows: {j.limit.follows}")
+        lines += _wrapped(f"what follows: {j.limit.follows}", "    ")
     if j.why:
-        lines.append(f"    {j.why}")
+        lines += _wrapped(j.why, "    ")
     if j.open:
         lines.append("    the limit lies within the uncertainty (95 %) of the difference")
     return [*lines, *_wrapped(credit(j.limit), "    ")]
@@ -138,7 +144,7 @@ def _verdict(c: Comparison) -> list[str]:
         return ["Within every limit of this situation."]
     lines = []
     if c.verdict == "beyond":
-        lines.append(f"BEYOND the limits of this situation: {'; '.join(c.follows)}.")
+        lines += _wrapped(f"BEYOND the limits of this situation: {'; '.join(c.follows)}.")
     if any(j.status == "not judged" for j in c.judgements):
         lines.append("NOT EVERY LIMIT COULD BE JUDGED: see what is missing above.")
     return lines

@@ -13,6 +13,9 @@ if TYPE_CHECKING:
 
 __all__ = ["CONDITION"]
 
+_NAMED = 3
+"""Tanks named where many lack the same figures."""
+
 
 def _list(s: Subject) -> Answer:
     tangent = s.outcome.as_inclined.list_tan
@@ -148,23 +151,37 @@ def _few(tanks: list[Tank]) -> bool:
 def _slack_level(s: Subject) -> Answer:
     if not _slack(s):
         return Inapplicable("no tank is slack")
-    parts, names, missing = [], [], []
+    parts: list[tuple[float, str]] = []
+    names: list[str] = []
+    missing: list[Tank] = []
     for tank in _slack(s):
         if tank.level is None or tank.depth is None:
-            missing.append(_lacking(tank, "level", "depth"))
+            missing.append(tank)
             continue
         filled = 100.0 * tank.level / tank.depth
         parts.append((filled, tank.type or "deep"))
-        names.append(f"{filled:.0f}")
+        names.append(f"{filled:.0f} %")
     deep = [t.name for t in _slack(s) if t.level is not None and t.depth and not t.type]
     note = f"Taken as deep tanks, no type recorded: {', '.join(deep)}." if deep else ""
-    return Found(tuple(parts), ", ".join(names), note, "; ".join(missing))
+    return Found(tuple(parts), ", ".join(names), note, _lacking(missing, "level", "depth"))
 
 
-def _lacking(tank: Tank, *names: str) -> str:
-    """Which of the tank's figures are not recorded."""
-    lost = " and ".join(n for n in names if getattr(tank, n) is None)
-    return f"{lost} of tank {tank.name}"
+def _lacking(tanks: list[Tank], *names: str) -> str:
+    """Which of the tanks' figures are not recorded, tanks that lack the same named together."""
+    alike: dict[str, list[str]] = {}
+    for tank in tanks:
+        lost = " and ".join(n for n in names if getattr(tank, n) is None)
+        alike.setdefault(lost, []).append(tank.name)
+    return "; ".join(f"{lost} of {_named(some)}" for lost, some in alike.items())
+
+
+def _named(tanks: list[str]) -> str:
+    """Tanks by name, of many the first ones."""
+    if len(tanks) == 1:
+        return f"tank {tanks[0]}"
+    if len(tanks) <= _NAMED + 1:
+        return f"tanks {', '.join(tanks[:-1])} and {tanks[-1]}"
+    return f"tanks {', '.join(tanks[:_NAMED])} and {len(tanks) - _NAMED} more"
 
 
 def _pressed_full(s: Subject) -> Answer:
@@ -183,19 +200,21 @@ def _pocketing(s: Subject) -> Answer:
         return Inapplicable("no tank is slack")
     heel = s.outcome.heel
     tangent = math.tan(max(heel.max_heel_port, heel.max_heel_starboard))
-    shares, missing = [], []
+    shares: list[tuple[float, str]] = []
+    missing: list[Tank] = []
     for tank in _slack(s):
         if tank.level is None or tank.depth is None or tank.breadth is None:
-            missing.append(_lacking(tank, "level", "depth", "breadth"))
+            missing.append(tank)
             continue
         room = 2.0 * min(tank.level, tank.depth - tank.level) / tank.breadth
         shares.append((100.0 * tangent / room if room > 0.0 else math.inf, tank.name))
+    lacking = _lacking(missing, "level", "depth", "breadth")
     if not shares:
-        return Unrecorded("; ".join(missing))
+        return Unrecorded(lacking)
     most, name = max(shares)
     if math.isinf(most):
         return Words(f"{name} at its top or bottom", ok=False)
-    return Found(((most, ""),), note=f"Closest in {name}.", missing="; ".join(missing))
+    return Found(((most, ""),), note=f"Closest in {name}.", missing=lacking)
 
 
 CONDITION: dict[str, Measure] = {

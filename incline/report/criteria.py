@@ -49,6 +49,7 @@ def criteria(sheet: Sheet) -> list[Any]:
     )
     return [
         *_sums(checks),
+        *part("All criteria"),
         grid(columns, [row for c in checks for row in _rows(sheet, c)], sheet.width, whole=True),
         note(
             "✓ met, ✗ not met, ○ not recorded, – does not judge this trial and is shown for "
@@ -75,10 +76,7 @@ def _sums(checks: tuple[Check, ...]) -> list[Any]:
     if failed:
         flow += [
             *part("Not met"),
-            *(
-                bullet(f"{c.title}: found {signed(found_text(c))}; limit {limit_text(c)}.")
-                for c in failed
-            ),
+            *(bullet(f"{c.title}: found {_printed(c)}; limit {limit_text(c)}.") for c in failed),
         ]
     said = (
         "A criterion that is not met is something to explain; one that is met does not show that "
@@ -109,11 +107,17 @@ def _short(text: str, most: int) -> str:
     return text if len(text) <= most else elide(text, most)
 
 
+def _printed(check: Check) -> str:
+    """What was found; words stay as they are, hyphens and all."""
+    text = found_text(check)
+    return text if isinstance(check.found, str) else signed(text)
+
+
 def _found(sheet: Sheet, check: Check) -> str:
     """What was found, lengths in the trial's units as well."""
     if check.found is None:
         return MISSING
-    text, kind = signed(found_text(check)), _LENGTHS.get(check.unit)
+    text, kind = _printed(check), _LENGTHS.get(check.unit)
     if isinstance(check.found, str) or kind is None or sheet.show.system.name == "metric":
         return text
     own = sheet.show.full(check.found * factor(check.unit, LENGTH), kind)

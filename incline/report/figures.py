@@ -6,7 +6,7 @@ import statistics
 from functools import partial
 from typing import TYPE_CHECKING
 
-from incline.report.figure_points import crossed, entries_of, keys
+from incline.report.figure_points import crossed, entries_of, keys, tell_shifts
 from incline.report.figure_style import (
     GREY,
     INK,
@@ -66,6 +66,7 @@ def _common(heel: HeelFit, show: Show, named: frozenset[int], figure: Figure) ->
     some = [heel.points[i] for i in sorted(named)]
     ring(axes, [p.moment / unit for p in some], [p.tangent - zero[p.device] for p in some])
     _origin(axes)
+    tell_shifts(axes, [(p.moment / unit, p.tangent - zero[p.device], p) for p in heel.points])
     axes.set_title("All devices: tangent less the device's zero offset")
     axes.set_xlabel(f"moment to starboard [{show.unit('moment')}]")
     axes.set_ylabel("tangent of heel")
@@ -131,21 +132,18 @@ def _device_panel(axes: Axes, heel: HeelFit, index: int, device: DeviceFit, show
             axes.plot([m / unit for m in ends], heights, color=ink, linestyle=dash, linewidth=0.9)
     _origin(axes)
     axes.locator_params(nbins=5)
+    tell_shifts(axes, [(p.moment / unit, p.tangent, p) for p in some])
 
 
 def _scatter(
     axes: Axes, points: Sequence[HeelPoint], heights: Sequence[float], look: Mark, unit: float
 ) -> None:
-    """Points at their moments; excluded ones crossed, with their shift."""
+    """Points at their moments; excluded ones crossed."""
     pairs = list(zip(points, heights, strict=True))
     kept = [(p.moment / unit, h) for p, h in pairs if not p.excluded]
     dots(axes, [m for m, _ in kept], [h for _, h in kept], look)
     out = [(p.moment / unit, h) for p, h in pairs if p.excluded]
     crossed(axes, [m for m, _ in out], [h for _, h in out], look)
-    for (x, y), p in zip(out, (p for p, _ in pairs if p.excluded), strict=True):
-        axes.annotate(
-            f"shift {p.shift}", (x, y), xytext=(6, -8), textcoords="offset points", fontsize=6
-        )
 
 
 def _origin(axes: Axes) -> None:

@@ -5,75 +5,118 @@ from __future__ import annotations
 import math
 from typing import TYPE_CHECKING
 
-from incline.report.figure_style import GREY, add_panel, blank_figure, drawing_style
+from incline.report.figure_style import (
+    GREY,
+    INK,
+    add_panel,
+    blank_figure,
+    drawing_style,
+    legend,
+    legend_height,
+)
 
 if TYPE_CHECKING:
-    from collections.abc import Sequence
+    from collections.abc import Iterator
 
-    from matplotlib.axes import Axes
     from matplotlib.figure import Figure
 
-    from incline.record import Offsets, Station
+    from incline.record import Body, Offsets, Station
     from incline.report.show import Show
     from incline.result import AsInclined, HeelFit
 
-__all__ = ["lever_plot", "section_plot"]
+__all__ = ["drawn_stations", "lever_plot", "section_plot"]
 
 _MOST = 24
-"""Sections drawn; of more, some are left out."""
+"""Sections drawn of a body; of more, some are left out."""
+_ABAFT = "0.45"
+"""Ink of the after sections of a body that is drawn whole."""
+_AFT_KEY = "sections abaft the middle, of bodies drawn whole"
+
+_Line = list[tuple[float, float]]
+"""Places across the ship, positive to starboard, and heights [m]."""
 
 
 def section_plot(offsets: Offsets, ship: AsInclined, show: Show, width: float) -> Figure:
-    """Sections seen from aft: those abaft the middle to port, the others to starboard.
+    """Sections seen from aft, with the waterline of the drafts at the ends and amidships.
 
-    The waterline is that of the drafts, drawn at the ends and amidships.
+    Of a body on the centreline the sections abaft the middle stand to port, the others to
+    starboard. A body beside it is drawn whole where it lies, and its mirror image if it has one.
     """
     scale = show.scale("length")
-    stations = [(b.y, s) for b in offsets.bodies for s in b.stations]
-    middle = 0.5 * (min(s.x for _, s in stations) + max(s.x for _, s in stations))
-    step = max(1, math.ceil(len(stations) / _MOST))
+    lines = list(_lines(offsets))
+    across = [y for line, _ in lines for y, _ in line]
+    heights = [z for line, _ in lines for _, z in line]
+    edges = (min(0.0, *across), max(0.0, *across))
+    levels = (
+        ("waterline at AP", ship.draft_ap, (0, (5.0, 2.0))),
+        ("amidships", ship.draft_mid, (0, ())),
+        ("at FP", ship.draft_fp, (0, (1.5, 1.5))),
+    )
+    names = [name for name, *_ in levels]
+    names += [_AFT_KEY] if any(aft for _, aft in lines) else []
+    room = width - 120.0
+    high = min(230.0, max(90.0, room * (max(heights) - min(heights)) / (edges[1] - edges[0])))
     with drawing_style():
-        broad, high = _extent(stations)
-        room = width - 120.0
-        height = min(230.0, max(90.0, room * high / (2.0 * broad)))
-        figure = blank_figure(width, height + 44.0)
-        axes = add_panel(figure, 60.0, 28.0, room, height)
-        for y, station in [*stations[::step], *stations[-1:]]:
-            _draw_section(axes, y, station, scale, aft=station.x <= middle)
-        across = [-broad / scale, broad / scale]
-        levels = (
-            ("at AP", ship.draft_ap, (0, (5.0, 2.0))),
-            ("amidships", ship.draft_mid, (0, ())),
-            ("at FP", ship.draft_fp, (0, (1.5, 1.5))),
-        )
+        figure = blank_figure(width, high + 44.0 + legend_height(names, width))
+        axes = add_panel(figure, 60.0, 28.0, room, high)
+        for line, aft in lines:
+            ink, order = (_ABAFT, 1.9) if aft else (INK, 2.0)
+            points = [(y / scale, z / scale) for y, z in line]
+            axes.plot(*zip(*points, strict=True), color=ink, linewidth=0.6, zorder=order)
         tilt = ship.list_tan or 0.0
         for name, draft, dash in levels:
-            edge = [(draft + tilt * a * scale) / scale for a in across]
-            axes.plot(across, edge, color="#0B3C6F", linestyle=dash, linewidth=0.9, label=name)
+            surface = [(draft + tilt * y) / scale for y in edges]
+            axes.plot(
+                [y / scale for y in edges], surface, color="#0B3C6F", linestyle=dash,
+                linewidth=0.9, label=name,
+            )  # fmt: skip
+        if _AFT_KEY in names:
+            axes.plot([], [], color=_ABAFT, linewidth=0.6, label=_AFT_KEY)
         axes.axvline(0.0, color=GREY, linewidth=0.5)
         axes.set_aspect("equal", adjustable="datalim")
-        axes.set_title("Sections from aft: after body to port, fore body to starboard; waterline")
-        axes.set_xlabel(f"half-breadth [{show.unit('length')}]")
+        axes.set_title(_title(offsets))
+        axes.set_xlabel(f"port (−), starboard (+) [{show.unit('length')}]")
         axes.set_ylabel(f"height [{show.unit('length')}]")
-        axes.legend(loc="lower right")
+        legend(figure, *axes.get_legend_handles_labels())
     return figure
 
 
-def _extent(stations: Sequence[tuple[float, Station]]) -> tuple[float, float]:
-    """Half the breadth and the height of all sections [m]."""
-    sides = [(y, p) for y, s in stations for p in (*s.starboard, *s.port)]
-    heights = [p.z for _, p in sides]
-    return max(abs(y) + p.y for y, p in sides), max(heights) - min(heights)
+def drawn_stations(body: Body) -> tuple[int, list[Station]]:
+    """Every n-th station of a body and the last one, with n."""
+    step = max(1, math.ceil(len(body.stations) / _MOST))
+    some = list(body.stations[::step])
+    return step, some if some[-1] is body.stations[-1] else [*some, body.stations[-1]]
 
 
-def _draw_section(axes: Axes, y: float, station: Station, scale: float, *, aft: bool) -> None:
-    side, sign = (station.port, -1.0) if aft else (station.starboard, 1.0)
-    axes.plot(
-        [(sign * abs(y) + sign * p.y) / scale for p in side],
-        [p.z / scale for p in side],
-        color="black",
-        linewidth=0.6,
-    )
+def _whole(body: Body) -> bool:
+    """Whether both sides of every section are drawn: the body is not on the centreline."""
+    return body.y != 0.0 or body.mirrored
+
+
+def _lines(offsets: Offsets) -> Iterator[tuple[_Line, bool]]:
+    """Lines to draw, and whether each is an after section among those of a whole body."""
+    places = [s.x for b in offsets.bodies for s in b.stations]
+    middle = 0.5 * (min(places) + max(places))
+    for body in offsets.bodies:
+        for station in drawn_stations(body)[1]:
+            aft = station.x <= middle
+            port = [(body.y - p.y, p.z) for p in station.port]
+            starboard = [(body.y + p.y, p.z) for p in station.starboard]
+            if not _whole(body):
+                yield (port if aft else starboard), False
+                continue
+            line = [*reversed(port), *starboard[1:]]
+            yield line, aft
+            if body.mirrored:
+                yield [(-y, z) for y, z in line], aft
+
+
+def _title(offsets: Offsets) -> str:
+    whole = [_whole(b) for b in offsets.bodies]
+    if all(whole):
+        return "Sections from aft, drawn whole where the bodies lie; waterline"
+    more = "; bodies beside the centreline whole" if any(whole) else "; waterline"
+    return f"Sections from aft: after body to port, fore body to starboard{more}"
 
 
 def lever_plot(heel: HeelFit, show: Show, width: float) -> Figure:

@@ -46,9 +46,10 @@ def weight_labels(trial: Trial) -> dict[str, str]:
     return {w.id: w.id if short else f"W{n}" for n, w in enumerate(trial.weights, start=1)}
 
 
-def numbered_tanks(trial: Trial) -> tuple[tuple[int, Tank], ...]:
-    """Tanks with a place, numbered as in the plan."""
-    return tuple(enumerate((t for t in trial.tanks if t.centre is not None), start=1))
+def numbered_tanks(trial: Trial) -> tuple[tuple[str, Tank], ...]:
+    """Tanks with a place, with T and a number as in the plan."""
+    placed = (t for t in trial.tanks if t.centre is not None)
+    return tuple((f"T{n}", t) for n, t in enumerate(placed, start=1))
 
 
 @dataclass(frozen=True, slots=True)
@@ -208,9 +209,9 @@ def _tanks(axes: Axes, trial: Trial, show: Show, taken: list[Box]) -> None:
             markersize=4.5, markeredgewidth=0.8, linestyle="none", zorder=3,
         )  # fmt: skip
         taken.append(_around(_points(axes, show, tank.centre.x, tank.centre.y), 3.0))
-    for number, tank in numbered:
+    for label, tank in numbered:
         assert tank.centre is not None  # noqa: S101
-        _write(axes, show, str(number), (tank.centre.x, tank.centre.y), taken)
+        _write(axes, show, label, (tank.centre.x, tank.centre.y), taken)
 
 
 def _shifts(axes: Axes, trial: Trial, show: Show, row: Sequence[int]) -> None:

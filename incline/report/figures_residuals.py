@@ -5,7 +5,7 @@ from __future__ import annotations
 from functools import partial
 from typing import TYPE_CHECKING
 
-from incline.report.figure_points import crossed, entries_of, keys
+from incline.report.figure_points import crossed, entries_of, keys, tell
 from incline.report.figure_style import (
     INK,
     Plot,
@@ -16,6 +16,7 @@ from incline.report.figure_style import (
     mark,
     ring,
 )
+from incline.report.show import signed
 
 if TYPE_CHECKING:
     from matplotlib.axes import Axes
@@ -48,8 +49,11 @@ def _both(heel: HeelFit, show: Show, named: frozenset[int], figure: Figure) -> N
     unit, shifts = show.scale("moment"), sorted({p.shift for p in heel.points})
     right.set_xlim(shifts[0] - 0.6, shifts[-1] + 0.6)
     names = [d.id for d in heel.devices]
-    for index in range(len(names)):
-        _residuals((left, right), heel, index, limit, unit)
+    told = [
+        label
+        for index in range(len(names))
+        for label in _residuals((left, right), heel, index, limit, unit)
+    ]
     some = [heel.points[i] for i in sorted(named)]
     heights = [p.residual * _THOUSANDTHS for p in some]
     ring(left, [p.moment / unit for p in some], heights)
@@ -66,6 +70,7 @@ def _both(heel: HeelFit, show: Show, named: frozenset[int], figure: Figure) -> N
     for axes in (left, right):
         axes.axhline(0.0, color=INK, linewidth=0.6, zorder=1)
         axes.set_ylim(-limit, limit)
+    tell(right, told)
     keys(left, entries_of(heel, named))
     legend(figure, *left.get_legend_handles_labels())
 
@@ -77,33 +82,20 @@ def _beside(point: HeelPoint, index: int, of: int) -> float:
 
 def _residuals(
     panels: tuple[Axes, Axes], heel: HeelFit, index: int, limit: float, unit: float
-) -> None:
-    """The residuals of one device in both panels."""
+) -> list[tuple[float, float, str]]:
+    """The residuals of one device in both panels; values to tell beside excluded ones."""
     (left, right), look, of = panels, mark(index), len(heel.devices)
     some = [p for p in heel.points if p.device == heel.devices[index].id]
     kept = [p for p in some if not p.excluded]
     heights = [p.residual * _THOUSANDTHS for p in kept]
     dots(left, [p.moment / unit for p in kept], heights, look)
     dots(right, [_beside(p, index, of) for p in kept], heights, look)
+    told = []
     for p in some:
         if p.excluded:
             value = p.residual * _THOUSANDTHS
             height = max(-0.93 * limit, min(0.93 * limit, value))
             crossed(left, [p.moment / unit], [height], look)
             crossed(right, [_beside(p, index, of)], [height], look)
-            told = f"{value:+.2f}".replace("-", "−")
-            _tell(right, (_beside(p, index, of), height), told)
-
-
-def _tell(axes: Axes, at: tuple[float, float], text: str) -> None:
-    """A word beside a point, on the side where there is room and towards the middle."""
-    low, high = axes.get_xlim()
-    last = at[0] > (low + high) / 2.0
-    axes.annotate(
-        text,
-        at,
-        xytext=(-6 if last else 6, -7 if at[1] > 0.0 else 3),
-        textcoords="offset points",
-        ha="right" if last else "left",
-        fontsize=6,
-    )
+            told.append((_beside(p, index, of), height, signed(f"{value:+.2f}")))
+    return told

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING, Any
 from incline.report.canvas_backend import FigureFlowable
 from incline.report.document import Sheet, note, paragraph, part
 from incline.report.figures_hull import lever_plot, section_plot
+from incline.report.hull_tables import bodies, layers, thinned
 from incline.report.show import MISSING, signed
 from incline.report.tables import Column, Row, grid
 
@@ -27,15 +28,18 @@ def hull_entry(sheet: Sheet) -> list[Any]:
         *part("Hull integrated from its offsets", sections.height + 40.0),
         paragraph(_how(sheet, ship.hull)),
         sections,
+        *thinned(trial.offsets),
+        *bodies(sheet, trial.offsets),
+        *layers(sheet, ship.hull),
         *_misses(sheet, ship.hull),
     ]
 
 
 def _how(sheet: Sheet, hull: HullEntry) -> str:
     trial, show = sheet.reduction.trial, sheet.show
-    bodies = len(trial.offsets.bodies) if trial.offsets else 0
-    whole = "one body" if bodies == 1 else f"{bodies} bodies"
-    layers = (
+    count = len(trial.offsets.bodies) if trial.offsets else 0
+    whole = "one body" if count == 1 else f"{count} bodies"
+    water = (
         f" The water is taken as {len(hull.layers)} layers of density." if hull.layers[1:] else ""
     )
     return (
@@ -43,8 +47,19 @@ def _how(sheet: Sheet, hull: HullEntry) -> str:
         " and integrated: sections exactly between their points, lengthwise along smooth lines"
         " through the stations. KB, BM and KM are those of the upright ship at these drafts."
         f" The deck edge stays {show.full(hull.freeboard, 'length')} clear of the water at every"
-        f" shift.{layers}"
+        f" shift.{water}{_overlap(sheet, hull)}"
     )
+
+
+def _overlap(sheet: Sheet, hull: HullEntry) -> str:
+    """Bodies that stand in one another, in a sentence with the volume counted twice."""
+    if not hull.overlaps:
+        return ""
+    said = "; ".join(
+        f"{one} and {other}, {sheet.show.full(volume, 'volume', 3)}"
+        for one, other, volume in hull.overlaps
+    )
+    return f" Bodies stand in one another, and that volume counts twice: {said}."
 
 
 def _misses(sheet: Sheet, hull: HullEntry) -> list[Any]:

@@ -41,7 +41,7 @@ def to_lightship(sheet: Sheet) -> list[Any]:
 def _headed(sheet: Sheet, board: Board) -> Board:
     """The ledger with both units in its headings where both are printed."""
     heads = [
-        replace(head, markup=f"{name} [{sheet.units(kind)}]")
+        replace(head, markup=f"{name}<br/>[{sheet.units(kind)}]")
         for head, (name, kind) in zip(board.heads[1:], _NAMES.items(), strict=True)
     ]
     return replace(board, heads=(board.heads[0], *heads))

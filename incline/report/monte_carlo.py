@@ -47,10 +47,21 @@ def monte_carlo(sheet: Sheet) -> list[Any]:
         note(
             "Verdict by JCGM 101, clause 8: the first-order interval is validated when both its "
             "ends are within the tolerance of the symmetric simulated interval; the tolerance is "
-            "half a unit in the first significant digit of u."
+            "half a unit in the first significant digit of u." + _without_spread(run)
         ),
         *_shape(sheet, run),
     ]
+
+
+def _without_spread(run: Simulation) -> str:
+    """Why a result has no mean or standard deviation; empty where all have them."""
+    if all(r.mean is not None and r.u is not None for r in run.results):
+        return ""
+    return (
+        " A dash: an input of that result is known by so few degrees of freedom, two or fewer, that"
+        " its distribution leaves the result without a mean or standard deviation; the intervals"
+        " are sound."
+    )
 
 
 def _told(run: Simulation) -> str:

@@ -142,10 +142,10 @@ def ledger_board(sheet: Sheet) -> Board:
     outcome, u = sheet.reduction.outcome, Units(sheet.show)
     length, moment = show.unit("length"), show.unit("moment")
     heads = (
-        Head("item", 0.25, left=True),
-        Head(f"mass [{show.unit('mass')}]", 0.11),
-        *(Head(f"{a} [{length}]", 0.09) for a in _AXES),
-        *(Head(f"mass × {a} [{moment}]", 0.125) for a in _AXES),
+        Head("item", 0.20, left=True),
+        Head(f"mass [{show.unit('mass')}]", 0.115),
+        *(Head(f"{a} [{length}]", 0.105) for a in _AXES),
+        *(Head(f"mass × {a} [{moment}]", 0.123) for a in _AXES),
     )
     state, light = outcome.as_inclined, outcome.lightship
     start = [

@@ -24,7 +24,8 @@ if TYPE_CHECKING:
 __all__ = ["board_table", "calculation"]
 
 _SHARES = (0.05, 0.32, 0.41, 0.22)
-_DIGIT = "\N{NO-BREAK SPACE}\N{NO-BREAK SPACE}"
+_NBSP = "\N{NO-BREAK SPACE}"
+_DIGIT = 2 * _NBSP
 """As wide as a digit of the typeface."""
 _SUB = '<sub rise="1.3" size="5.2">'
 """A subscript that stays clear of the line below."""
@@ -235,7 +236,7 @@ def _cell(cell: Cell, digits: Digits, deepest: int) -> str:
         return cell
     if isinstance(cell, Travel):
         start = cell.start.bare(digits)
-        return f"({start})" if cell.end is None else f"{start}<br/>→ {cell.end.bare(digits)}"
+        return f"({start})" if cell.end is None else f"{start}<br/>→{_NBSP}{cell.end.bare(digits)}"
     if not isinstance(cell, Value):
         return cell.text(digits)
     room = max(0, deepest - digits[cell.place])

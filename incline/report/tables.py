@@ -9,6 +9,7 @@ from reportlab.lib.colors import Color
 from reportlab.platypus import Paragraph, Table
 
 from incline.report.fonts import REGULAR
+from incline.report.headings import stays_whole
 from incline.report.styles import INK, RULE, STYLES
 from incline.report.text import markup
 
@@ -54,7 +55,12 @@ class Listed(Table):  # type: ignore[misc]
     splitInRow: int  # noqa: N815 - the name of the library
 
     def split(self, width: float, height: float) -> list[Table]:
-        """Parts for this page and the next; a row splits only when no page could hold it."""
+        """Parts for this page and the next; a row splits only when no page could hold it.
+
+        None for a small table: it goes to the next page whole.
+        """
+        if stays_whole(self):
+            return []
         allowed, self.splitInRow = self.splitInRow, 0
         parts: list[Table] = super().split(width, height)
         if not parts and allowed and height > _ENOUGH:

@@ -95,7 +95,7 @@ def _positions(sheet: Sheet, weights: Sequence[Weight]) -> Any:  # noqa: ANN401
 def _place(sheet: Sheet, standing: str, move: Move | None) -> str:
     if move is None:
         return standing
-    lines = [f"→ {standing}"]
+    lines = [f"→\N{NO-BREAK SPACE}{standing}"]
     for axis, value in (("x", move.x), ("z", move.z)):
         if value is not None:
             lines.append(f"{axis} {sheet.show.number(value, 'length')}")
