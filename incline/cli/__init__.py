@@ -24,7 +24,7 @@ def main() -> None:
     # The sums are small: threads of the linear algebra wait for one another longer than they work.
     os.environ.setdefault("OPENBLAS_NUM_THREADS", "1")
     # A command makes many small objects, keeps most and ends: looking for rings of them is wasted.
-    gc.set_threshold(200_000, 50, 50)
+    gc.disable()
     for stream in (sys.stdout, sys.stderr):
         if hasattr(stream, "reconfigure"):
             stream.reconfigure(errors="backslashreplace")
@@ -34,6 +34,8 @@ def main() -> None:
         complain(list(map(str, error.defects)))
     except InclineError as error:
         complain([str(error)])
+    finally:
+        gc.enable()
 
 
 @app.callback(invoke_without_command=True)
