@@ -7,6 +7,7 @@ from typing import TYPE_CHECKING
 from incline.files import write_whole
 from incline.report.document import Options, Sheet, render
 from incline.report.export import tables_of
+from incline.report.figure_style import drawing_style
 from incline.report.fonts import register_fonts
 from incline.report.order import story
 from incline.report.show import Show
@@ -36,9 +37,10 @@ def write_pdf(
     """
     register_fonts()
     sheet = Sheet(reduction, Show.of(reduction), report_date, version, options or Options())
-    flow = story(sheet)
-    files = {} if tables is None else {tables / n: data for n, data in tables_of(flow).items()}
-    files = {path: render(sheet, flow), **files}
+    with drawing_style():
+        flow = story(sheet)
+        files = {} if tables is None else {tables / n: data for n, data in tables_of(flow).items()}
+        files = {path: render(sheet, flow), **files}
     for place, data in files.items():
         write_whole(place, data)
     return list(files)

@@ -7,6 +7,7 @@ reader who does not see colours lose nothing.
 from __future__ import annotations
 
 from contextlib import contextmanager
+from contextvars import ContextVar
 from dataclasses import dataclass
 from itertools import pairwise
 from typing import TYPE_CHECKING, Any
@@ -65,12 +66,22 @@ _OWN: dict[str, Any] = {
 }
 
 
+_STYLED: ContextVar[bool] = ContextVar("styled", default=False)
+
+
 @contextmanager
 def drawing_style() -> Iterator[None]:
-    """The report's own style, whatever the user's own settings are."""
+    """The report's own style, whatever the user's own settings are; set once, however nested."""
+    if _STYLED.get():
+        yield
+        return
     plain: dict[Any, Any] = {k: v for k, v in mpl.rcParamsDefault.items() if k not in _MACHINE}
     with mpl.rc_context(plain | _OWN):
-        yield
+        token = _STYLED.set(True)
+        try:
+            yield
+        finally:
+            _STYLED.reset(token)
 
 
 @dataclass(frozen=True, slots=True)
