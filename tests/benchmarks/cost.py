@@ -30,14 +30,17 @@ REPORT = (
     "from incline.cli import main; main()"
 )
 
-DRAWS = f"""
+
+def draws(trial) -> str:
+    """A program that prints CPU seconds of drawing a million times, of the whole run, and MB."""
+    return f"""
 import time, resource
 import numpy as np
 from incline import read_trial
 from incline.observations import observe
 from incline.reduction import work_out
 from incline.montecarlo import BLOCK, draw, simulate
-trial = read_trial({DEMO!r})
+trial = read_trial({str(trial)!r})
 stage = work_out(trial, observe(trial))
 sources, blocks, budgets = stage.model.sources, stage.blocks, stage.outcome.budgets
 rng = np.random.default_rng(1)
@@ -52,6 +55,7 @@ whole = time.process_time() - began
 peak = resource.getrusage(resource.RUSAGE_SELF).ru_maxrss / 1024
 print(drawing, whole, peak)
 """
+
 
 FIRST_ORDER = f"""
 import time
@@ -107,7 +111,7 @@ def main() -> None:
     imports, report = (statistics.median(p[i] for p in pairs) for i in (0, 1))
     ratio = statistics.median(r / i for i, r in pairs)
     print(f"report {report:.2f} s, its imports alone {imports:.2f} s: {ratio:.2f} times")
-    drawing, whole, peak = said(DRAWS)
+    drawing, whole, peak = said(draws(DEMO))
     print(
         f"a million draws {whole:.2f} s, drawing the numbers alone {drawing:.2f} s:"
         f" {whole / drawing:.2f} times, peak memory {peak:.0f} MB"

@@ -16,7 +16,7 @@ from pathlib import Path
 
 import numpy as np
 import trimesh
-from cost import ROOT, cpu, said
+from cost import ROOT, cpu, draws, said
 
 sys.path.insert(0, str(ROOT / "tests"))
 
@@ -37,29 +37,6 @@ Places = list[tuple[float, np.ndarray]]
 
 DEMO = ROOT / "demo_trials" / "chine-metric"
 BATCH = 2_000
-
-DRAWS = """
-import time, resource
-import numpy as np
-from incline import read_trial
-from incline.observations import observe
-from incline.reduction import work_out
-from incline.montecarlo import BLOCK, draw, simulate
-trial = read_trial({!r})
-stage = work_out(trial, observe(trial))
-sources, blocks, budgets = stage.model.sources, stage.blocks, stage.outcome.budgets
-rng = np.random.default_rng(1)
-draw(sources, blocks, BLOCK, rng)
-began = time.process_time()
-for _ in range(1_000_000 // BLOCK):
-    draw(sources, blocks, BLOCK, rng)
-drawing = time.process_time() - began
-began = time.process_time()
-simulate(stage.model, sources, blocks, budgets, seed=1, draws=1_000_000)
-whole = time.process_time() - began
-peak = resource.getrusage(resource.RUSAGE_SELF).ru_maxrss / 1024
-print(drawing, whole, peak)
-"""
 
 
 def reducing(folder: Path) -> str:
@@ -181,7 +158,7 @@ def main() -> None:
     straight, hull = (statistics.median(p[i] for p in pairs) for i in (0, 1))
     ratio = statistics.median(h / s for s, h in pairs)
     print(f"reduce {hull:.2f} s, by the straight line {straight:.2f} s: {ratio:.2f} times")
-    drawing, whole, peak = said(DRAWS.format(str(DEMO)))
+    drawing, whole, peak = said(draws(DEMO))
     print(
         f"a million draws {whole:.2f} s, drawing the numbers alone {drawing:.2f} s:"
         f" {whole / drawing:.2f} times, peak memory {peak:.0f} MB"
